@@ -1,0 +1,79 @@
+/** Every URL of the product, in one place. Arguments are ids; nothing here checks access. */
+export const paths = {
+  home: '/',
+  method: '/method',
+  verify: '/verify',
+  privacy: '/method#what-is-kept',
+
+  signUp: '/sign-up',
+  signIn: '/sign-in',
+  checkMail: '/check-mail',
+  confirmEmail: (token: string) => `/confirm-email/${token}`,
+  forgotPassword: '/forgot-password',
+  resetPassword: (token: string) => `/reset-password/${token}`,
+  account: '/account',
+
+  /** Sends a rider to the bench of their first machine, or to set one up. */
+  start: '/start',
+  newMachine: '/machines/new',
+  bench: (machine: string) => `/machines/${machine}`,
+  record: (machine: string) => `/machines/${machine}/record`,
+  entry: (machine: string, seq: number) => `/machines/${machine}/record/${seq}`,
+  inviteShop: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/countersign`,
+  schedule: (machine: string) => `/machines/${machine}/schedule`,
+  specSheet: (machine: string) => `/machines/${machine}/spec-sheet`,
+  machineSettings: (machine: string) => `/machines/${machine}/settings`,
+  proof: (machine: string) => `/machines/${machine}/proof`,
+  atTheDesk: (machine: string) => `/machines/${machine}/at-the-desk`,
+  /** One rider's shelf (a household may have one). */
+  shelf: (shelf: string) => `/shelves/${shelf}`,
+  shelfEntry: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}`,
+
+  /** The offline shell: one public static page; what it shows is chosen by the hash. */
+  garage: '/garage',
+  worksheet: (worksheet: string) => `/garage#worksheet/${worksheet}`,
+  newWorksheet: (machine: string) => `/garage#new-worksheet/${machine}`,
+  receipt: (receipt: string) => `/garage#receipt/${receipt}`,
+  newReceipt: '/garage#new-receipt',
+  /** The review before sealing needs the server. */
+  review: (worksheet: string) => `/worksheets/${worksheet}/review`,
+
+  /** A shop's answer to an invitation. The token is swapped for a cookie at the first visit. */
+  invitation: (token: string) => `/countersign/${token}`,
+  invitationAnswer: (invitation: string) => `/countersign/answer/${invitation}`,
+  shop: (shop: string) => `/shops/${shop}`,
+
+  /** What a viewing link's reader sees. */
+  viewingLink: (token: string) => `/v/${token}`,
+  viewing: (link: string) => `/view/${link}`,
+  viewingEntry: (link: string, seq: number) => `/view/${link}/entries/${seq}`,
+
+  steward: '/steward',
+  stewardMail: '/steward/mail',
+  stewardMailMessage: (name: string) => `/steward/mail/${name}`,
+  stewardShops: '/steward/shops',
+
+  api: {
+    uploads: '/api/uploads',
+    /** `kind`: thumb | plate (re-encoded copies) or original (as an attachment). */
+    file: (sha256: string, kind: 'thumb' | 'plate' | 'copy' | 'original', machineOrShelf: string) =>
+      `/api/files/${sha256}/${kind}?for=${machineOrShelf}`,
+    viewingFile: (link: string, sha256: string, kind: 'thumb' | 'plate' | 'copy') =>
+      `/api/view/${link}/files/${sha256}/${kind}`,
+    viewingPacket: (link: string) => `/api/view/${link}/packet`,
+    viewingBundle: (link: string) => `/api/view/${link}/record.json`,
+    garage: '/api/garage',
+    drafts: '/api/drafts',
+    draft: (draft: string) => `/api/drafts/${draft}`,
+    confirmReceipt: (draft: string) => `/api/drafts/${draft}/confirm-receipt`,
+    packets: (machine: string) => `/api/machines/${machine}/packets`,
+    packet: (packet: string) => `/api/packets/${packet}`,
+    packetFile: (packet: string) => `/api/packets/${packet}/file`,
+    record: (machine: string) => `/api/machines/${machine}/record.json`,
+    logKeys: '/api/log-keys',
+    checkpoint: (log: string) => `/api/logs/${log}/checkpoint`,
+    timeStamp: '/api/time-stamp',
+    timeStampRoot: '/api/time-stamp/root.pem',
+    health: '/api/health',
+  },
+} as const;

@@ -1,0 +1,104 @@
+import type {
+  Attachment,
+  AuthorPart,
+  CountersignatureBody,
+  EntryKind,
+  IdentityPart,
+  OpeningBody,
+  PartName,
+  PricesPart,
+  PurchaseBody,
+  Reference,
+  ServiceBody,
+  ShelfOpeningBody,
+  SupplierPart,
+  TermsBody,
+} from '@/lib/evidence/format';
+
+/** What pages, viewing links and the packet read: one shape, made from the leaves and from nothing else. */
+export interface RecordView {
+  machine: { id: string; name: string; make: string; model: string; modelYear?: string; kind: string };
+  /** Null when the identity part is withheld. */
+  identity: IdentityPart | null;
+  opening: OpeningBody;
+  /** Newest sealed terms, and every terms entry by its seq. */
+  terms: TermsBody | null;
+  termsBySeq: Map<number, TermsBody>;
+  log: LogView;
+  /** Ascending by seq. */
+  entries: EntryView[];
+  /** The shelf logs this machine's entries draw from, and the purchases drawn, ascending. */
+  shelves: { log: LogView; purchases: PurchaseView[]; size: number }[];
+}
+
+export interface LogView {
+  id: string;
+  origin: string;
+  keyName: string;
+  timesInjected: boolean;
+  size: number;
+  /** Base64 root and the newest signed note. */
+  root: string;
+  checkpoint: string;
+  verifierKey: string;
+  fingerprint: string;
+}
+
+/** A body by its kind; null when the body is withheld. */
+export type BodyOf =
+  | { kind: 'opening'; body: OpeningBody | null }
+  | { kind: 'terms'; body: TermsBody | null }
+  | { kind: 'service'; body: ServiceBody | null }
+  | { kind: 'countersignature'; body: CountersignatureBody | null }
+  | { kind: Exclude<EntryKind, 'opening' | 'terms' | 'service' | 'countersignature'>; body: unknown };
+
+export type EntryView = BodyOf & {
+  seq: number;
+  /** The words a ledger line shows: what was done. */
+  title: string;
+  sealedAt: string;
+  leafHash: string;
+  previous: string | null;
+  refersTo: Reference | null;
+  author: AuthorPart | null;
+  attachments: Attachment[];
+  notes: string | null;
+  withheld: PartName[];
+  tokens: TokenView[];
+  countersignatures: { seq: number; sealedAt: string; author: AuthorPart | null; body: CountersignatureBody }[];
+  struckBy: { seq: number; sealedAt: string; reason: string } | null;
+  addenda: number[];
+  state: 'sealed' | 'countersigned' | 'waiting' | 'struck';
+};
+
+export interface TokenView {
+  authority: string;
+  genTime: string;
+  isOwnAuthority: boolean;
+  sha256: string;
+}
+
+export interface PurchaseView {
+  log: string;
+  seq: number;
+  leafHash: string;
+  sealedAt: string;
+  body: PurchaseBody;
+  supplier: SupplierPart | null;
+  prices: PricesPart | null;
+  author: AuthorPart | null;
+  attachments: Attachment[];
+  tokens: TokenView[];
+  /** Seqs of this machine's entries that draw from it. */
+  usedBy: number[];
+}
+
+export interface ShelfEntryView {
+  log: string;
+  seq: number;
+  kind: EntryKind;
+  sealedAt: string;
+  leafHash: string;
+  opening?: ShelfOpeningBody;
+  purchase?: PurchaseView;
+}
