@@ -63,11 +63,8 @@ export class Table<Row extends object> {
   }
 
   async insertMany(rows: Row[], options: In = {}): Promise<void> {
-    if (rows.length > 0)
-      await this.modelNow().bulkCreate(
-        rows.map((row) => ({ ...row })),
-        options,
-      );
+    const copies = rows.map((row) => ({ ...row }) as Record<string, unknown>);
+    if (copies.length > 0) await this.modelNow().bulkCreate(copies, options);
   }
 
   /** Returns how many rows were changed. */
