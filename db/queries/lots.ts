@@ -1,0 +1,38 @@
+import 'server-only';
+import type { Transaction } from '../index';
+import { draws, entries, entryParts, logs, type DrawRow, type EntryRow, type LogRow } from '../models/logs';
+
+/** One line of a shelf's log with its sealed parts, as they are stored. */
+export interface ShelfLine {
+  entry: EntryRow;
+  /** Disclosures by part name. */
+  parts: Map<string, string>;
+}
+
+const inside = (transaction?: Transaction) => (transaction ? { transaction } : {});
+
+export function logOf(subjectId: string, transaction?: Transaction): Promise<LogRow | null> {
+  return logs.find({ subjectId }, inside(transaction));
+}
+
+/** All lines of a log in order. */
+export async function linesOf(logId: string, transaction?: Transaction): Promise<ShelfLine[]> {
+  const rows = await entries.all({ logId }, { order: [['seq', 'ASC']], ...inside(transaction) });
+  const parts = await entryParts.all({ logId }, inside(transaction));
+  const bySeq = new Map<number, Map<string, string>>();
+  for (const part of parts) {
+    const own = bySeq.get(part.seq) ?? new Map<string, string>();
+    own.set(part.name, part.disclosure);
+    bySeq.set(part.seq, own);
+  }
+  return rows.map((entry) => ({ entry, parts: bySeq.get(entry.seq) ?? new Map<string, string>() }));
+}
+
+/** What was drawn from a shelf, over all machines, in the order it was sealed. */
+export function drawsFrom(shelfLog: string, transaction?: Transaction): Promise<DrawRow[]> {
+  return draws.all({ shelfLog }, inside(transaction));
+}
+
+export function insertDraws(rows: DrawRow[], transaction: Transaction): Promise<void> {
+  return draws.insertMany(rows, { transaction });
+}

@@ -1,0 +1,106 @@
+import 'server-only';
+import { z } from 'zod';
+import { write } from '@/db/index';
+import { changesOf, countChanges, draftById, insertChanges, knownChangeIds } from '@/db/queries/drafts';
+import type { DraftChangeRow } from '@/db/models/drafts';
+import type { PersonRow } from '@/db/models/people';
+import { EvidenceError } from '@/lib/evidence/evidence-error';
+import { normaliseText } from '@/lib/evidence/text';
+import { WitnessmarkError, notFound } from '@/lib/errors';
+import { now } from '@/lib/ports/clock';
+import { demandDraft, refuseClosed } from './draft-access';
+import { changeView, type ChangeView } from './read-draft';
+import { deviceId } from './start-draft';
+
+export const mostChangesAtOnce = 500;
+export const mostChangesOfADraft = 20_000;
+export const longestFieldPath = 200;
+export const longestValue = 8_000;
+
+/** Steps of letters, digits, hyphens and underscores parted by `/`: `tasks/<id>/fills/<id>/product`. */
+const fieldForm = /^[A-Za-z0-9][A-Za-z0-9_-]{0,63}(?:\/[A-Za-z0-9][A-Za-z0-9_-]{0,63}){0,9}$/;
+
+export const appendChangesInput = z.object({
+  changes: z
+    .array(
+      z.object({
+        id: deviceId,
+        field: z.string().max(2_000),
+        value: z.string().max(200_000).nullable(),
+        deviceAt: z.iso.datetime({ precision: 3 }),
+      }),
+    )
+    .max(mostChangesAtOnce, `Send at most ${mostChangesAtOnce} changes at once.`),
+  /** The `at` of the last answer; changes that arrived since come back. */
+  since: z.iso.datetime({ precision: 3 }).optional(),
+});
+
+export interface AppendedChanges {
+  accepted: string[];
+  /** A refused change stays on the device with the sentence; the others go on. */
+  refused: { id: string; field: string; sentence: string }[];
+  /** What arrived since `since` from anywhere, without what was just sent. */
+  changes: ChangeView[];
+  /** Server time to give as `since` next time. */
+  at: string;
+}
+
+type Change = z.infer<typeof appendChangesInput>['changes'][number];
+
+function judge(change: Change): { value: string | null } | { sentence: string } {
+  if (change.field.length > longestFieldPath || !fieldForm.test(change.field)) {
+    return { sentence: 'This field has a name no worksheet or receipt knows. Please reload the page.' };
+  }
+  if (change.value === null) return { value: null };
+  if (change.value.length > longestValue) {
+    return { sentence: `This text has ${change.value.length} characters; at most ${longestValue} can be kept.` };
+  }
+  try {
+    return { value: normaliseText(change.value) };
+  } catch (error) {
+    if (error instanceof EvidenceError) return { sentence: error.message };
+    throw error;
+  }
+}
+
+/** Adds changes to an open draft. Repeating a call adds nothing and is answered in the same way. */
+export async function appendDraftChanges(options: {
+  person: PersonRow;
+  draftId: string;
+  input: z.infer<typeof appendChangesInput>;
+}): Promise<AppendedChanges> {
+  const { person, draftId, input } = options;
+  await demandDraft({ person, draftId });
+  return write(async (transaction) => {
+    const draft = await draftById(draftId, transaction);
+    if (draft === null) throw notFound('draft');
+    const sent = new Map(input.changes.map((change) => [change.id, change]));
+    const known = await knownChangeIds(draftId, [...sent.keys()], transaction);
+    const fresh = [...sent.values()].filter((change) => !known.has(change.id));
+    // A retry of what was stored before the seal is still only a retry.
+    if (draft.state !== 'open' && fresh.length > 0) throw refuseClosed(draft);
+    if ((await countChanges(draftId, transaction)) + fresh.length > mostChangesOfADraft) {
+      throw new WitnessmarkError(
+        'too-large',
+        `A draft keeps at most ${mostChangesOfADraft} changes. Seal this one and go on in a new one.`,
+      );
+    }
+    const at = now().toISOString();
+    const rows: DraftChangeRow[] = [];
+    const refused: AppendedChanges['refused'] = [];
+    for (const { id, field, deviceAt, ...change } of fresh) {
+      const judged = judge({ id, field, deviceAt, ...change });
+      if ('sentence' in judged) refused.push({ id, field, sentence: judged.sentence });
+      else rows.push({ draftId, id, field, value: judged.value, deviceAt, serverAt: at, personId: person.id });
+    }
+    await insertChanges(rows, at, transaction);
+    const since = input.since ?? '';
+    const all = await changesOf(draftId, transaction);
+    return {
+      accepted: [...known, ...rows.map((row) => row.id)],
+      refused,
+      changes: all.filter((row) => row.serverAt >= since && !sent.has(row.id)).map(changeView),
+      at,
+    };
+  });
+}

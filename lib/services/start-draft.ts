@@ -1,0 +1,59 @@
+import 'server-only';
+import { z } from 'zod';
+import { write } from '@/db/index';
+import { draftById, insertDraft } from '@/db/queries/drafts';
+import type { DraftRow } from '@/db/models/drafts';
+import type { PersonRow } from '@/db/models/people';
+import { now } from '@/lib/ports/clock';
+import { WitnessmarkError } from '@/lib/errors';
+import { authoriseDraftSubject, demandDraft } from './draft-access';
+
+/** Ids minted on a device: UUIDs as `crypto.randomUUID` writes them. */
+export const deviceId = z
+  .string()
+  .regex(/^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/, 'An id is a UUID in lower case.');
+
+export const startDraftInput = z.object({
+  id: deviceId,
+  kind: z.enum(['worksheet', 'receipt']),
+  /** A machine for a worksheet, a shelf for a receipt. */
+  subject: deviceId,
+});
+
+/**
+ * Opens a worksheet or a receipt under the id its device gave it. A repeated call returns the draft as it is, wherever
+ * it has been moved since.
+ */
+export async function startDraft(options: {
+  person: PersonRow;
+  input: z.infer<typeof startDraftInput>;
+}): Promise<{ draft: DraftRow; isNew: boolean }> {
+  const { person, input } = options;
+  const existing = await draftById(input.id);
+  if (existing !== null) {
+    const draft = await demandDraft({ person, draftId: input.id });
+    if (draft.kind !== input.kind) {
+      throw new WitnessmarkError('conflict', `There is already a ${draft.kind} with this id. Start with a fresh one.`);
+    }
+    return { draft, isNew: false };
+  }
+  await authoriseDraftSubject({ person, kind: input.kind, subject: input.subject });
+  return write(async (transaction) => {
+    const meanwhile = await draftById(input.id, transaction);
+    if (meanwhile !== null) return { draft: meanwhile, isNew: false };
+    const at = now().toISOString();
+    const draft: DraftRow = {
+      id: input.id,
+      kind: input.kind,
+      subjectId: input.subject,
+      createdBy: person.id,
+      createdAt: at,
+      changedAt: at,
+      state: 'open',
+      sealedLog: null,
+      sealedSeq: null,
+    };
+    await insertDraft(draft, transaction);
+    return { draft, isNew: true };
+  });
+}
