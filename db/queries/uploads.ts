@@ -1,0 +1,38 @@
+import 'server-only';
+import { QueryTypes } from 'sequelize';
+import { database, type Transaction } from '../index';
+import { files, uploads, type FileRow, type UploadRow } from '../models/drafts';
+
+export const findUpload = (id: string): Promise<UploadRow | null> => uploads.find({ id });
+
+export const uploadsOfDraft = (draftId: string, transaction?: Transaction): Promise<UploadRow[]> =>
+  uploads.all({ draftId }, { order: [['receivedAt', 'ASC']], ...(transaction ? { transaction } : {}) });
+
+export const findFile = (sha256: string): Promise<FileRow | null> => files.find({ sha256 });
+
+export const filesBySha256 = (hashes: string[], transaction?: Transaction): Promise<FileRow[]> =>
+  files.all({ sha256: hashes }, transaction ? { transaction } : {});
+
+/** Stores an upload and the files it names; a file already on record is left as it is. */
+export async function insertUpload(upload: UploadRow, named: FileRow[], transaction: Transaction): Promise<void> {
+  for (const file of named) {
+    const known = await files.find({ sha256: file.sha256 }, { transaction });
+    if (known === null) await files.insert(file, { transaction });
+  }
+  await uploads.insert(upload, { transaction });
+}
+
+/** The upload behind an original, a shared copy or a thumb, if it belongs to that machine or shelf. */
+export async function uploadVisibleFrom(sha256: string, subjectId: string): Promise<UploadRow | null> {
+  // A machine also shows the receipts of what was drawn for it, though they lie on a shelf.
+  const rows = await database().query<{ id: string }>(
+    `SELECT u.id FROM uploads u JOIN drafts d ON d.id = u.draft_id
+      WHERE (u.sha256 = :sha256 OR u.copy_sha256 = :sha256 OR u.thumb_sha256 = :sha256)
+        AND (d.subject_id = :subjectId OR EXISTS (
+          SELECT 1 FROM draws w JOIN logs l ON l.id = w.machine_log
+          WHERE l.subject_id = :subjectId AND w.shelf_log = d.sealed_log AND w.purchase_seq = d.sealed_seq))
+      LIMIT 1`,
+    { type: QueryTypes.SELECT, replacements: { sha256, subjectId } },
+  );
+  return rows[0] === undefined ? null : findUpload(rows[0].id);
+}

@@ -1,0 +1,183 @@
+import 'server-only';
+import { readFile } from 'node:fs/promises';
+import { z } from 'zod';
+import { write } from '@/db/index';
+import { drafts, type UploadRow } from '@/db/models/drafts';
+import type { PersonRow } from '@/db/models/people';
+import { filesBySha256, findUpload, insertUpload } from '@/db/queries/uploads';
+import { authorise } from '@/lib/auth/guard';
+import { WitnessmarkError, notFound } from '@/lib/errors';
+import { now } from '@/lib/ports/clock';
+import { dropBlob, keepBlob, putBlob, receiveBlob, type IncomingBlob } from '@/lib/ports/blob-store';
+import { readPicture, sniff, type KnownType, type Picture } from '@/lib/ports/image';
+
+/** Phones make pictures of 3 to 15 MB; a scanned invoice may be larger. */
+export const largestUploadBytes = 40_000_000;
+
+export const uploadQuery = z.object({
+  id: z.uuid(),
+  draft: z.uuid(),
+  name: z
+    .string()
+    .min(1)
+    .max(255)
+    // Only the last part of a path is a name, and controls have no place in one.
+    .transform((name) => name.replace(/^.*[/\\]/s, '').replace(/\p{C}/gu, '') || 'file'),
+  sha256: z
+    .string()
+    .regex(/^[0-9a-f]{64}$/)
+    .optional(),
+});
+
+export interface UploadAnswer {
+  id: string;
+  sha256: string;
+  bytes: number;
+  mediaType: string;
+  name: string;
+  receivedAt: string;
+  takenAt?: { local: string; offset?: string };
+  width?: number;
+  height?: number;
+  copySha256: string | null;
+  thumbSha256: string | null;
+  isNew: boolean;
+}
+
+/**
+ * Takes one file in: streamed to disk and hashed as received, told by its bytes, decoded whole, and only then kept.
+ * A repeated id with the same bytes gets the first answer; nothing is kept of a refused file.
+ */
+export async function receiveUpload(options: {
+  person: PersonRow;
+  query: z.infer<typeof uploadQuery>;
+  body: AsyncIterable<Uint8Array>;
+  declaredBytes?: number;
+}): Promise<UploadAnswer> {
+  const { person, query } = options;
+  const draft = await drafts.find({ id: query.draft });
+  if (draft === null) throw notFound('worksheet or receipt');
+  if (draft.kind === 'worksheet') await authorise({ person, action: 'edit-worksheet', machine: draft.subjectId });
+  else await authorise({ person, action: 'edit-shelf', shelf: draft.subjectId });
+
+  const blob = await receiveBlob(options.body, largestUploadBytes);
+  try {
+    checkReceived(blob, query, options.declaredBytes);
+    const known = await findUpload(query.id);
+    if (known !== null) return await firstAnswer(known, blob, draft.id);
+    if (draft.state !== 'open') {
+      throw new WitnessmarkError('already-sealed', `${query.name} came too late: this is sealed already.`);
+    }
+    const mediaType = knownType(blob, query.name);
+    return await keep({ person, query, blob, mediaType });
+  } catch (error) {
+    await dropBlob(blob);
+    throw error;
+  }
+}
+
+function checkReceived(blob: IncomingBlob, query: z.infer<typeof uploadQuery>, declaredBytes?: number): void {
+  if (blob.bytes === 0) throw refusal(query.name, 'is empty. Choose the file again.');
+  const isShort = declaredBytes !== undefined && declaredBytes !== blob.bytes;
+  if (isShort || (query.sha256 !== undefined && query.sha256 !== blob.sha256)) {
+    throw new WitnessmarkError('conflict', `${query.name} did not arrive whole. Send it again.`, {
+      log: `upload ${query.id}: declared ${declaredBytes} bytes, received ${blob.bytes}`,
+    });
+  }
+}
+
+async function firstAnswer(known: UploadRow, blob: IncomingBlob, draftId: string): Promise<UploadAnswer> {
+  if (known.sha256 !== blob.sha256 || known.draftId !== draftId) {
+    throw new WitnessmarkError('conflict', `${known.name} is on file under this id with other bytes.`);
+  }
+  await dropBlob(blob);
+  const [file] = await filesBySha256([known.sha256]);
+  return answer(known, file?.bytes ?? blob.bytes, file?.mediaType ?? 'application/octet-stream', false);
+}
+
+function knownType(blob: IncomingBlob, name: string): KnownType {
+  const type = sniff(blob.head);
+  if (type !== null) return type;
+  throw refusal(
+    name,
+    'is not a JPEG, PNG, WebP or HEIC picture or a PDF, whatever its name says. Choose another file.',
+  );
+}
+
+async function keep(options: {
+  person: PersonRow;
+  query: z.infer<typeof uploadQuery>;
+  blob: IncomingBlob;
+  mediaType: KnownType;
+}): Promise<UploadAnswer> {
+  const { person, query, blob, mediaType } = options;
+  const picture = mediaType === 'application/pdf' ? null : await decode(blob, mediaType, query.name);
+  const original = await keepBlob(blob);
+  const copy = picture && (await putBlob(picture.copy));
+  const thumb = picture && (await putBlob(picture.thumb));
+  const receivedAt = now().toISOString();
+  const row: UploadRow = {
+    id: query.id,
+    draftId: query.draft,
+    personId: person.id,
+    sha256: original.sha256,
+    name: query.name,
+    receivedAt,
+    takenLocal: picture?.takenAt?.local ?? null,
+    takenOffset: picture?.takenAt?.offset ?? null,
+    width: picture?.width ?? null,
+    height: picture?.height ?? null,
+    copySha256: copy?.sha256 ?? null,
+    copyRemoved: JSON.stringify(picture?.removed ?? []),
+    thumbSha256: thumb?.sha256 ?? null,
+  };
+  const named = [
+    { ...original, mediaType, createdAt: receivedAt },
+    ...(copy ? [{ ...copy, mediaType: 'image/jpeg', createdAt: receivedAt }] : []),
+    ...(thumb ? [{ ...thumb, mediaType: 'image/webp', createdAt: receivedAt }] : []),
+  ];
+  await write((transaction) => insertUpload(row, named, transaction));
+  return answer(row, original.bytes, mediaType, true);
+}
+
+async function decode(
+  blob: IncomingBlob,
+  mediaType: Exclude<KnownType, 'application/pdf'>,
+  name: string,
+): Promise<Picture> {
+  try {
+    return await readPicture(await readFile(blob.temporary), mediaType);
+  } catch (error) {
+    if (/pixel limit|too many pixels/i.test(String(error))) {
+      throw refusal(name, 'has more than 50 megapixels. Take it again at a smaller size.');
+    }
+    throw refusal(
+      name,
+      'cannot be opened as a picture: it is damaged or not what it claims to be. Take it again.',
+      error,
+    );
+  }
+}
+
+function refusal(name: string, why: string, cause?: unknown): WitnessmarkError {
+  return new WitnessmarkError('unsupported-file', `${name} ${why}`, {
+    ...(cause === undefined ? {} : { log: String(cause), cause }),
+  });
+}
+
+function answer(row: UploadRow, bytes: number, mediaType: string, isNew: boolean): UploadAnswer {
+  const takenAt = row.takenLocal === null ? undefined : { local: row.takenLocal };
+  return {
+    id: row.id,
+    sha256: row.sha256,
+    bytes,
+    mediaType,
+    name: row.name,
+    receivedAt: row.receivedAt,
+    ...(takenAt ? { takenAt: row.takenOffset === null ? takenAt : { ...takenAt, offset: row.takenOffset } } : {}),
+    ...(row.width === null || row.height === null ? {} : { width: row.width, height: row.height }),
+    copySha256: row.copySha256,
+    thumbSha256: row.thumbSha256,
+    isNew,
+  };
+}
