@@ -134,6 +134,9 @@ function decodeHeic(bytes: Buffer): Promise<Decoded> {
   return new Promise((resolve, reject) => {
     const worker = new Worker(source, {
       eval: true,
+      // The decoder prints what it thinks of a damaged file; the refusal says it already.
+      stdout: true,
+      stderr: true,
       workerData: { bytes, from: path.join(process.cwd(), 'package.json') },
       resourceLimits: { maxOldGenerationSizeMb: 512 },
     });
