@@ -1,0 +1,32 @@
+import 'server-only';
+import { getIronSession, type IronSession, type SessionOptions } from 'iron-session';
+import { cookies } from 'next/headers';
+import { env } from '@/lib/env';
+import { longestDays } from './session-life';
+import { sessionKey } from './session-key';
+
+const secondsInDay = 24 * 60 * 60;
+
+/** A `__Host-` name is only accepted over TLS, for the whole host, without a domain; plain http needs a plain name. */
+export const cookieName = (name: string) => (env.isSecure ? `__Host-${name}` : name);
+
+export function cookieOptions(name: string, days: number): SessionOptions {
+  return {
+    cookieName: cookieName(name),
+    password: sessionKey(),
+    ttl: days * secondsInDay,
+    cookieOptions: { httpOnly: true, secure: env.isSecure, sameSite: 'lax', path: '/' },
+  };
+}
+
+/** The cookie holds an id and nothing else; whether it still counts is decided by its row. */
+export const sessionCookieOptions = () => cookieOptions('witnessmark-session', longestDays);
+
+export async function sessionCookie(): Promise<IronSession<{ id?: string }>> {
+  return getIronSession(await cookies(), sessionCookieOptions());
+}
+
+/** Outlives a session: this device signed in as these people before, so guesses made elsewhere do not slow it down. */
+export async function knownDeviceCookie(): Promise<IronSession<{ id?: string; people?: string[] }>> {
+  return getIronSession(await cookies(), cookieOptions('witnessmark-device', 365));
+}

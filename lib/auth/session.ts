@@ -1,0 +1,65 @@
+import 'server-only';
+import { randomUUID } from 'node:crypto';
+import { headers } from 'next/headers';
+import { redirect } from 'next/navigation';
+import { cache } from 'react';
+import { write } from '@/db/index';
+import { findPerson, findSession, touchSession, type PersonRow, type SessionRow } from '@/db/queries/people';
+import { paths } from '@/lib/paths';
+import { now } from '@/lib/ports/clock';
+import { knownDeviceCookie, sessionCookie } from './cookies';
+import { signInPath } from './local-path';
+import { isAlive, shouldTouch } from './session-life';
+
+/** Set by the proxy, so that signing in can lead back to the page that asked for it. */
+export const pathHeader = 'x-witnessmark-path';
+
+/** The living session of this request, asked for once however often a page needs it. */
+export const currentSession = cache(async (): Promise<{ session: SessionRow; person: PersonRow } | null> => {
+  const { id } = await sessionCookie();
+  return id === undefined ? null : readSession(id);
+});
+
+/** The session and its person, if the session is alive; marks it as seen every few minutes. */
+export async function readSession(id: string): Promise<{ session: SessionRow; person: PersonRow } | null> {
+  const session = await findSession(id);
+  const at = now();
+  if (session === null || !isAlive(session, at)) return null;
+  const person = await findPerson(session.personId);
+  if (person === null) return null;
+  if (shouldTouch(session, at)) {
+    await write((transaction) => touchSession(session.id, at.toISOString(), { transaction }));
+  }
+  return { session, person };
+}
+
+export async function currentPerson(): Promise<PersonRow | null> {
+  return (await currentSession())?.person ?? null;
+}
+
+/** For pages and actions: the person, or away to the sign-in page, which leads back here. */
+export async function requirePerson(): Promise<PersonRow> {
+  const person = await currentPerson();
+  if (person === null) redirect(signInPath((await headers()).get(pathHeader)));
+  return person;
+}
+
+/** Puts a session that a use case has just begun into the cookie, and remembers the device. */
+export async function keepSession(options: { sessionId: string; personId: string }): Promise<void> {
+  const cookie = await sessionCookie();
+  cookie.id = options.sessionId;
+  await cookie.save();
+  const device = await knownDeviceCookie();
+  device.id ??= randomUUID();
+  device.people = [options.personId, ...(device.people ?? []).filter((id) => id !== options.personId)].slice(0, 8);
+  await device.save();
+}
+
+export async function forgetSession(): Promise<void> {
+  (await sessionCookie()).destroy();
+}
+
+/** Sends somebody who is signed in already away from a page that is only for those who are not. */
+export async function leaveIfSignedIn(): Promise<void> {
+  if ((await currentPerson()) !== null) redirect(paths.start);
+}
