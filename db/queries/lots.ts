@@ -1,9 +1,9 @@
 import 'server-only';
 import type { Transaction } from '../index';
-import { draws, entries, entryParts, logs, type DrawRow, type EntryRow, type LogRow } from '../models/logs';
+import { draws, entries, entryParts, type DrawRow, type EntryRow } from '../models/logs';
 
-/** One line of a shelf's log with its sealed parts, as they are stored. */
-export interface ShelfLine {
+/** One line of a log with its sealed parts, as they are stored. */
+export interface LogLine {
   entry: EntryRow;
   /** Disclosures by part name. */
   parts: Map<string, string>;
@@ -11,12 +11,8 @@ export interface ShelfLine {
 
 const inside = (transaction?: Transaction) => (transaction ? { transaction } : {});
 
-export function logOf(subjectId: string, transaction?: Transaction): Promise<LogRow | null> {
-  return logs.find({ subjectId }, inside(transaction));
-}
-
 /** All lines of a log in order. */
-export async function linesOf(logId: string, transaction?: Transaction): Promise<ShelfLine[]> {
+export async function linesOf(logId: string, transaction?: Transaction): Promise<LogLine[]> {
   const rows = await entries.all({ logId }, { order: [['seq', 'ASC']], ...inside(transaction) });
   const parts = await entryParts.all({ logId }, inside(transaction));
   const bySeq = new Map<number, Map<string, string>>();
@@ -35,4 +31,10 @@ export function drawsFrom(shelfLog: string, transaction?: Transaction): Promise<
 
 export function insertDraws(rows: DrawRow[], transaction: Transaction): Promise<void> {
   return draws.insertMany(rows, { transaction });
+}
+
+/** Which entries of these logs were struck, as `log:seq`. */
+export async function struckEntriesOf(logIds: string[], transaction?: Transaction): Promise<Set<string>> {
+  const strikes = await entries.all({ logId: logIds, kind: 'strike' }, inside(transaction));
+  return new Set(strikes.map((strike) => `${strike.logId}:${strike.refersToSeq}`));
 }

@@ -31,15 +31,15 @@ export const appendChangesInput = z.object({
       }),
     )
     .max(mostChangesAtOnce, `Send at most ${mostChangesAtOnce} changes at once.`),
-  /** The `at` of the last answer; changes that arrived since come back. */
-  since: z.iso.datetime({ precision: 3 }).optional(),
 });
+/** Server time of the last change a device was given; what is no instant asks for everything. */
+export const sinceInput = z.iso.datetime({ precision: 3 }).optional().catch(undefined);
 
 export interface AppendedChanges {
   accepted: string[];
   /** A refused change stays on the device with the sentence; the others go on. */
   refused: { id: string; field: string; sentence: string }[];
-  /** What arrived since `since` from anywhere, without what was just sent. */
+  /** What arrived at or after `since` from anywhere, without what was just sent. */
   changes: ChangeView[];
   /** Server time to give as `since` next time. */
   at: string;
@@ -67,7 +67,7 @@ function judge(change: Change): { value: string | null } | { sentence: string } 
 export async function appendDraftChanges(options: {
   person: PersonRow;
   draftId: string;
-  input: z.infer<typeof appendChangesInput>;
+  input: z.infer<typeof appendChangesInput> & { since?: string | undefined };
 }): Promise<AppendedChanges> {
   const { person, draftId, input } = options;
   await demandDraft({ person, draftId });

@@ -1,4 +1,5 @@
 import 'server-only';
+import { findLogOf } from '@/db/queries/logs';
 import { machinesOf } from '@/db/queries/machines';
 import type { MachineRow } from '@/db/models/machines';
 import type { PersonRow } from '@/db/models/people';
@@ -8,6 +9,8 @@ export interface ListedMachine {
   /** `2022 Corvane Sorrel 1800`. */
   name: string;
   relation: 'owner' | 'helper';
+  /** Some times of its log were injected: a demo. */
+  timesInjected: boolean;
 }
 
 /**
@@ -22,5 +25,10 @@ export function machineName(machine: Pick<MachineRow, 'modelYear' | 'make' | 'mo
 /** A person's machines, the first set up first. */
 export async function listMachines(person: PersonRow): Promise<ListedMachine[]> {
   const held = await machinesOf(person.id);
-  return held.map(({ machine, relation }) => ({ id: machine.id, name: machineName(machine), relation }));
+  return Promise.all(
+    held.map(async ({ machine, relation }) => {
+      const log = await findLogOf(machine.id);
+      return { id: machine.id, name: machineName(machine), relation, timesInjected: log?.timesInjected ?? false };
+    }),
+  );
 }

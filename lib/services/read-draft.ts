@@ -35,7 +35,9 @@ export interface DraftView {
   createdBy: string;
   createdAt: string;
   changedAt: string;
-  sealed: { log: string; seq: number } | null;
+  /** Where it was sealed, once it is. */
+  sealedLog: string | null;
+  sealedSeq: number | null;
 }
 export interface DraftWithChanges {
   draft: DraftView;
@@ -53,10 +55,8 @@ export function changeView(row: DraftChangeRow): ChangeView {
 }
 
 export function draftView(row: DraftRow): DraftView {
-  const { id, kind, state, createdBy, createdAt, changedAt } = row;
-  const isSealed = row.sealedLog !== null && row.sealedSeq !== null;
-  const sealed = isSealed ? { log: row.sealedLog ?? '', seq: row.sealedSeq ?? 0 } : null;
-  return { id, kind, subject: row.subjectId, state, createdBy, createdAt, changedAt, sealed };
+  const { subjectId, ...members } = row;
+  return { ...members, subject: subjectId };
 }
 
 /** When the camera says a picture was taken. Corroboration only: anybody can edit it. */

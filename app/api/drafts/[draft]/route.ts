@@ -1,5 +1,5 @@
 import { route } from '@/lib/auth/route';
-import { appendChangesInput, appendDraftChanges } from '@/lib/services/append-draft-changes';
+import { appendChangesInput, appendDraftChanges, sinceInput } from '@/lib/services/append-draft-changes';
 import { discardDraft } from '@/lib/services/discard-draft';
 import { moveWorksheet, moveWorksheetInput } from '@/lib/services/move-worksheet';
 import { readDraft } from '@/lib/services/read-draft';
@@ -11,10 +11,11 @@ export const GET = route<Params>({ access: 'signed-in' }, async ({ person, param
   Response.json(await readDraft({ person, draftId: params.draft })),
 );
 
-/** `POST {changes, since?}`: what was accepted, what was refused, and what the device lacks. */
+/** `POST ?since= {changes}`: what was accepted, what was refused, and what the device lacks. */
 export const POST = route<Params>({ access: 'signed-in' }, async ({ request, person, params }) => {
-  const input = await readJson(request, appendChangesInput);
-  return Response.json(await appendDraftChanges({ person, draftId: params.draft, input }));
+  const { changes } = await readJson(request, appendChangesInput);
+  const since = sinceInput.parse(request.nextUrl.searchParams.get('since') ?? undefined);
+  return Response.json(await appendDraftChanges({ person, draftId: params.draft, input: { changes, since } }));
 });
 
 /** `PATCH {subject}` moves a worksheet to another machine. */
