@@ -1,3 +1,5 @@
+import { Readable } from 'node:stream';
+import type { ReadableStream } from 'node:stream/web';
 import { route } from '@/lib/auth/route';
 import { invalidInput } from '@/lib/errors';
 import { receiveUpload, uploadQuery } from '@/lib/services/receive-upload';
@@ -10,10 +12,8 @@ export const POST = route({ access: 'signed-in' }, async ({ request, person }) =
   const { isNew, ...answer } = await receiveUpload({
     person,
     query: parsed.data,
-    body: request.body ?? emptyBody(),
+    body: request.body === null ? Readable.from([]) : Readable.fromWeb(request.body as ReadableStream<Uint8Array>),
     ...(length === null ? {} : { declaredBytes: Number(length) }),
   });
   return Response.json(answer, { status: isNew ? 201 : 200 });
 });
-
-async function* emptyBody(): AsyncGenerator<Uint8Array> {}

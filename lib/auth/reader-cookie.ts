@@ -1,0 +1,28 @@
+import 'server-only';
+import { getIronSession, type IronSession } from 'iron-session';
+import { cookies } from 'next/headers';
+import { cookieOptions } from './cookies';
+
+/** What a secret address was swapped for: ids whose rows decide, at every request, whether they still count. */
+export interface ReaderCookie {
+  links?: string[];
+  invitations?: string[];
+}
+
+const keptDays = 30;
+const mostKept = 50;
+
+export async function readerCookie(): Promise<IronSession<ReaderCookie>> {
+  return getIronSession<ReaderCookie>(await cookies(), cookieOptions('witnessmark-reader', keptDays));
+}
+
+/** Remembers that this browser came with the right address. */
+export async function keepReading(kind: keyof ReaderCookie, id: string): Promise<void> {
+  const cookie = await readerCookie();
+  cookie[kind] = [id, ...(cookie[kind] ?? []).filter((kept) => kept !== id)].slice(0, mostKept);
+  await cookie.save();
+}
+
+export async function isReading(kind: keyof ReaderCookie, id: string): Promise<boolean> {
+  return ((await readerCookie())[kind] ?? []).includes(id);
+}

@@ -1,0 +1,315 @@
+"""A second verifier, written from the format's description alone, in another language.
+
+It shares no code with the project: JSON, SHA-256 and base64 come from Python's standard library, Ed25519 signatures and
+RFC 3161 tokens are judged by the openssl command, packets are opened by poppler's pdfdetach.
+
+    python3 independent_verifier.py record.json|packet.pdf [--tsa-root root.pem]
+
+Exit status: 0 unchanged, 1 altered, 2 unreadable. Problems go to standard output, one a line.
+"""
+import base64
+import hashlib
+import json
+import os
+import re
+import subprocess
+import sys
+import tempfile
+
+problems = []
+
+
+def problem(where, what):
+    problems.append(f"{where}: {what}")
+
+
+def canonical(value):
+    """RFC 8785 for the values this format has: strings, integers, null, booleans, arrays, objects."""
+    if value is None or value is True or value is False:
+        return json.dumps(value)
+    if isinstance(value, int):
+        return str(value)
+    if isinstance(value, str):
+        return json.dumps(value, ensure_ascii=False)
+    if isinstance(value, list):
+        return "[" + ",".join(canonical(v) for v in value) + "]"
+    if isinstance(value, dict):
+        names = sorted(value, key=lambda name: name.encode("utf-16-be", "surrogatepass"))
+        return "{" + ",".join(canonical(n) + ":" + canonical(value[n]) for n in names) + "}"
+    raise ValueError("a number that is not an integer")
+
+
+def refuse_float(text):
+    raise ValueError(f"{text} is not an integer")
+
+
+def parse(text):
+    return json.loads(text, parse_float=refuse_float)
+
+
+def sha256(data):
+    return hashlib.sha256(data).digest()
+
+
+def root_of(leaf_hashes):
+    """RFC 6962 section 2.1 over leaf hashes."""
+    n = len(leaf_hashes)
+    if n == 0:
+        return sha256(b"")
+    if n == 1:
+        return leaf_hashes[0]
+    k = 1
+    while k * 2 < n:
+        k *= 2
+    return sha256(b"\x01" + root_of(leaf_hashes[:k]) + root_of(leaf_hashes[k:]))
+
+
+def b64url(text):
+    if "=" in text or re.search(r"[^A-Za-z0-9_-]", text):
+        raise ValueError("not base64url")
+    data = base64.urlsafe_b64decode(text + "=" * (-len(text) % 4))
+    if base64.urlsafe_b64encode(data).decode().rstrip("=") != text:
+        raise ValueError("base64url with stray bits")
+    return data
+
+
+def b64(text):
+    data = base64.b64decode(text, validate=True)
+    if base64.b64encode(data).decode() != text:
+        raise ValueError("base64 with stray bits")
+    return data
+
+
+def openssl_verifies(public_key, message, signature):
+    # SubjectPublicKeyInfo of an Ed25519 key (RFC 8410) is a fixed header and the 32 bytes.
+    der = bytes.fromhex("302a300506032b6570032100") + public_key
+    with tempfile.TemporaryDirectory() as folder:
+        def put(name, data):
+            path = os.path.join(folder, name)
+            with open(path, "wb") as file:
+                file.write(data)
+            return path
+
+        return subprocess.run(
+            ["openssl", "pkeyutl", "-verify", "-pubin", "-keyform", "DER", "-inkey", put("key", der), "-rawin",
+             "-in", put("message", message), "-sigfile", put("signature", signature)],
+            capture_output=True,
+        ).returncode == 0
+
+
+def parse_key(text):
+    match = re.fullmatch(r"([a-z0-9][a-z0-9.:-]{0,99})\+([0-9a-f]{8})\+(.+)", text)
+    if not match:
+        raise ValueError("a verifier key that does not parse")
+    data = b64(match[3])
+    name, public_key = match[1], data[1:]
+    if data[0] != 1 or len(public_key) != 32:
+        raise ValueError("a verifier key of another kind")
+    key_hash = sha256(name.encode() + b"\x0a\x01" + public_key)[:4]
+    if key_hash.hex() != match[2]:
+        raise ValueError("a verifier key whose hash is not its own")
+    return name, key_hash, public_key
+
+
+def check_note(where, note, key):
+    """A C2SP signed note. Returns its text lines, or None after naming the problem."""
+    name, key_hash, public_key = key
+    head, separator, signatures = note.partition("\n\n")
+    lines = signatures.split("\n")
+    if not separator or lines[-1] != "" or len(lines) != 2:
+        problem(where, "not a signed note with one signature line")
+        return None
+    match = re.fullmatch(r"\u2014 (\S+) (\S+)", lines[0])
+    if not match:
+        problem(where, "a signature line that does not parse")
+        return None
+    try:
+        signed = b64(match[2])
+    except ValueError as error:
+        problem(where, f"signature: {error}")
+        return None
+    if match[1] != name or signed[:4] != key_hash:
+        problem(where, "signed by a key that is not the file's first")
+        return None
+    if not openssl_verifies(public_key, (head + "\n").encode(), signed[4:]):
+        problem(where, "openssl refuses the signature")
+        return None
+    return head.split("\n")
+
+
+def check_checkpoint(where, note, key, log, size, hashes):
+    lines = check_note(where, note, key)
+    if lines is None:
+        return
+    want = [f"{log['origin']}/{log['id']}", str(size), base64.b64encode(root_of(hashes[:size])).decode()]
+    if lines != want:
+        problem(where, f"says {lines}, recomputed {want}")
+
+
+PARTS = ["attachments", "author", "body", "contact", "identity", "notes", "prices", "supplier"]
+MACHINE_KINDS = set("opening service terms reading addendum strike countersignature key signature handover".split())
+SHELF_KINDS = set("opening purchase disposal correction strike handover".split())
+LEAF_MEMBERS = {"format", "log", "seq", "previous", "kind", "sealedAt", "refersTo", "parts"}
+
+
+def check_leaf(where, text, log, seq, previous, earlier):
+    try:
+        leaf = parse(text)
+        if canonical(leaf) != text:
+            problem(where, "the leaf is not its own canonical form")
+    except (ValueError, RecursionError) as error:
+        problem(where, f"the leaf does not parse: {error}")
+        return None
+    if set(leaf) != LEAF_MEMBERS or leaf["format"] != "witnessmark/leaf/1":
+        problem(where, "members")
+        return None
+    if leaf["log"] != log["id"] or leaf["seq"] != seq or leaf["previous"] != previous:
+        problem(where, "log, seq or previous")
+    if leaf["kind"] not in (MACHINE_KINDS if log["subject"] == "machine" else SHELF_KINDS):
+        problem(where, f"kind {leaf['kind']}")
+    if (leaf["kind"] == "opening") != (seq == 0):
+        problem(where, "an opening is entry 0 and entry 0 an opening")
+    if not re.fullmatch(r"\d{4}-\d\d-\d\dT\d\d:\d\d:\d\d\.\d{3}Z", leaf["sealedAt"]):
+        problem(where, "sealedAt")
+    elif earlier and leaf["sealedAt"] < earlier[-1]["sealedAt"]:
+        problem(where, "sealed before the line above it")
+    refers = leaf["refersTo"]
+    if refers is not None:
+        if set(refers) != {"seq", "leafHash"} or refers["seq"] >= seq or earlier[refers["seq"]]["hash"] != refers["leafHash"]:
+            problem(where, "refersTo")
+    names = [part["name"] for part in leaf["parts"]]
+    if names != sorted(set(names)) or any(name not in PARTS for name in names):
+        problem(where, "parts")
+    return leaf
+
+
+def check_parts(where, leaf, disclosures):
+    digests = {part["name"]: part["digest"] for part in leaf["parts"]}
+    opened = {}
+    for text in disclosures:
+        try:
+            raw = b64url(text).decode("utf-8")
+            salt, name, value = parse(raw)
+            if canonical([salt, name, value]) != raw:
+                problem(where, f"part {name} is not its own canonical form")
+            if not re.fullmatch(r"[A-Za-z0-9_-]{22}", salt):
+                problem(where, f"salt of {name}")
+        except (ValueError, TypeError) as error:
+            problem(where, f"a part that does not parse: {error}")
+            continue
+        digest = base64.urlsafe_b64encode(sha256(text.encode("ascii"))).decode().rstrip("=")
+        if digests.get(name) != digest or name in opened:
+            problem(where, f"part {name} is not what the leaf names, or is opened twice")
+        opened[name] = value
+    return opened
+
+
+def check_token(where, token, note, tsa_root):
+    with tempfile.TemporaryDirectory() as folder:
+        token_path, note_path = os.path.join(folder, "token"), os.path.join(folder, "note")
+        with open(token_path, "wb") as file:
+            file.write(b64(token))
+        with open(note_path, "wb") as file:
+            file.write(note.encode())
+        outcome = subprocess.run(
+            ["openssl", "ts", "-verify", "-data", note_path, "-in", token_path, "-token_in", "-CAfile", tsa_root],
+            capture_output=True, text=True)
+        if outcome.returncode != 0:
+            problem(where, f"openssl refuses the token: {outcome.stderr.strip()}")
+
+
+def check_draws(where, body, purchases):
+    for task in body.get("tasks", []):
+        for use in task.get("fills", []) + task.get("parts", []):
+            for draw in use.get("draws", []):
+                wanted = draw["purchase"]
+                found = purchases.get((wanted["log"], wanted["seq"]))
+                if found is None or found["hash"] != wanted["leafHash"]:
+                    problem(where, "draws from a purchase that is not in the file")
+
+
+def verify(text, tsa_root):
+    bundle = parse(text)
+    if not isinstance(bundle, dict) or bundle.get("format") != "witnessmark/bundle/1":
+        raise ValueError("not a bundle")
+    if canonical(bundle) != text:
+        problem("bundle", "is not its own canonical form")
+    expected = {"format", "madeAt", "purpose", "number", "verifierKeys", "packetCertificate", "logs", "files", "signature"}
+    if set(bundle) != expected:
+        problem("bundle", "members")
+    key = parse_key(bundle["verifierKeys"][0])
+    unsigned = {name: value for name, value in bundle.items() if name != "signature"}
+    digest = base64.b64encode(sha256(canonical(unsigned).encode())).decode()
+    lines = check_note("bundle", bundle["signature"], key)
+    if lines is not None and lines != ["witnessmark/bundle/1", bundle["madeAt"], digest]:
+        problem("bundle", "the signature is over something else")
+
+    purchases, services, named_files, entries = {}, [], {}, 0
+    for log in bundle["logs"]:
+        hashes, leaves, previous = [], [], None
+        for seq, entry in enumerate(log["entries"]):
+            where = f"{log['subject']} {log['id'][:8]} entry {seq}"
+            leaf = check_leaf(where, entry["leaf"], log, seq, previous, leaves)
+            digest = sha256(b"\x00" + entry["leaf"].encode())
+            hashes.append(digest)
+            previous = digest.hex()
+            entries += 1
+            if leaf is None:
+                leaves.append({"sealedAt": "", "hash": previous})
+                continue
+            leaf["hash"] = previous
+            leaves.append(leaf)
+            opened = check_parts(where, leaf, entry["parts"])
+            for attachment in opened.get("attachments", []):
+                for file in [attachment] + ([attachment["copy"]] if "copy" in attachment else []):
+                    named_files[file["sha256"]] = (file["bytes"], file["mediaType"])
+            if leaf["kind"] == "purchase":
+                purchases[(log["id"], seq)] = leaf
+            if leaf["kind"] == "service" and "body" in opened:
+                services.append((where, opened["body"]))
+            check_checkpoint(where + " seal", entry["seal"]["checkpoint"], key, log, seq + 1, hashes)
+            if tsa_root:
+                for token in entry["seal"]["tokens"]:
+                    check_token(where, token, entry["seal"]["checkpoint"], tsa_root)
+        check_checkpoint(f"log {log['id'][:8]}", log["checkpoint"], key, log, len(log["entries"]), hashes)
+    for where, body in services:
+        check_draws(where, body, purchases)
+    for file in bundle["files"]:
+        if file["derivedFrom"] is None and named_files.get(file["sha256"]) != (file["bytes"], file["mediaType"]):
+            problem(f"file {file['name']}", "no opened part names it so")
+    return entries, [file for file in bundle["files"] if file["included"]]
+
+
+def read_packet(path, folder):
+    listing = subprocess.run(["pdfdetach", "-list", path], capture_output=True, text=True, check=True).stdout
+    if len(re.findall(r"^\d+: record\.json$", listing, re.M)) != 1:
+        raise ValueError("not exactly one record.json")
+    subprocess.run(["pdfdetach", "-saveall", "-o", folder, path], capture_output=True, check=True)
+    with open(os.path.join(folder, "record.json"), encoding="utf-8") as file:
+        return file.read()
+
+
+def main(arguments):
+    path = arguments[0]
+    tsa_root = arguments[arguments.index("--tsa-root") + 1] if "--tsa-root" in arguments else None
+    with tempfile.TemporaryDirectory() as folder:
+        try:
+            is_packet = open(path, "rb").read(5) == b"%PDF-"
+            text = read_packet(path, folder) if is_packet else open(path, encoding="utf-8", newline="").read()
+            entries, included = verify(text, tsa_root)
+        except (ValueError, KeyError, TypeError, IndexError, subprocess.CalledProcessError, AttributeError) as error:
+            print(f"unreadable: {type(error).__name__} {error}")
+            return 2
+        for file in included if is_packet else []:
+            attached = os.path.join(folder, file["name"])
+            data = open(attached, "rb").read() if os.path.exists(attached) else b""
+            if hashlib.sha256(data).hexdigest() != file["sha256"] or len(data) != file["bytes"]:
+                problem(f"file {file['name']}", "is missing or not the bytes it should be")
+    for line in problems:
+        print(line)
+    print(f"{'altered' if problems else 'unchanged'}: {entries} entries")
+    return 1 if problems else 0
+
+
+if __name__ == "__main__":
+    sys.exit(main(sys.argv[1:]))
