@@ -2,7 +2,7 @@ import 'server-only';
 import { notFound as nextNotFound, unstable_rethrow } from 'next/navigation';
 import type { z } from 'zod';
 import type { PersonRow } from '@/db/queries/people';
-import type { FormState } from './form-state';
+import type { FormState } from '@/lib/form-state';
 import { formValues, typedValues } from './form-values';
 import { asRefusal, fieldErrors } from './refusal';
 import { currentPerson, requirePerson } from './session';
