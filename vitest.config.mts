@@ -9,7 +9,7 @@ export default defineConfig({
   test: {
     environment: 'node',
     include: ['tests/**/*.test.ts'],
-    setupFiles: [path.join(root, 'tests/setup/unexpected-console.ts')],
+    setupFiles: [path.join(root, 'tests/setup/data-folder.ts'), path.join(root, 'tests/setup/unexpected-console.ts')],
     testTimeout: 30_000,
     hookTimeout: 60_000,
     // Two cores: more workers only make each test wait for the others.
@@ -19,8 +19,20 @@ export default defineConfig({
       { extends: true, test: { name: 'unit', include: ['tests/unit/**/*.test.ts'] } },
       { extends: true, test: { name: 'db', include: ['tests/db/**/*.test.ts'] } },
       { extends: true, test: { name: 'outside', include: ['tests/outside/**/*.test.ts'], testTimeout: 120_000 } },
-      { extends: true, test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 60_000, fileParallelism: false } },
-      { extends: true, test: { name: 'browser', include: ['tests/browser/**/*.test.ts'], testTimeout: 120_000, hookTimeout: 240_000, fileParallelism: false } },
+      {
+        extends: true,
+        test: { name: 'api', include: ['tests/api/**/*.test.ts'], testTimeout: 60_000, fileParallelism: false },
+      },
+      {
+        extends: true,
+        test: {
+          name: 'browser',
+          include: ['tests/browser/**/*.test.ts'],
+          testTimeout: 120_000,
+          hookTimeout: 240_000,
+          fileParallelism: false,
+        },
+      },
     ],
   },
 });

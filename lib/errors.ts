@@ -11,6 +11,7 @@ const statusOf = {
   'storage-full': 507,
   'cross-site': 403,
   'clock-behind': 503,
+  'rolled-back': 503,
   'already-sealed': 409,
   gone: 410,
   internal: 500,

@@ -1,0 +1,44 @@
+import 'server-only';
+import type { Transaction } from '../index';
+import { checkpoints, type CheckpointRow, entries, type EntryRow, logs, type LogRow } from '../models/logs';
+
+interface In {
+  transaction?: Transaction;
+}
+
+/** A log with its last line and its last checkpoint; both are null until the opening is there. */
+export interface LogHead {
+  log: LogRow;
+  lastEntry: EntryRow | null;
+  lastCheckpoint: CheckpointRow | null;
+}
+
+export function findLog(id: string, options: In = {}): Promise<LogRow | null> {
+  return logs.find({ id }, options);
+}
+
+/** The log of a machine or a shelf. */
+export function findLogOf(subjectId: string, options: In = {}): Promise<LogRow | null> {
+  return logs.find({ subjectId }, options);
+}
+
+export async function readHead(id: string, options: In = {}): Promise<LogHead | null> {
+  const log = await logs.find({ id }, options);
+  if (log === null) return null;
+  const [lastEntry] = await entries.all({ logId: id }, { ...options, order: [['seq', 'DESC']], limit: 1 });
+  return { log, lastEntry: lastEntry ?? null, lastCheckpoint: await lastCheckpoint(id, options) };
+}
+
+export async function lastCheckpoint(log: string, options: In = {}): Promise<CheckpointRow | null> {
+  const [row] = await checkpoints.all({ logId: log }, { ...options, order: [['size', 'DESC']], limit: 1 });
+  return row ?? null;
+}
+
+export function findCheckpoint(log: string, size: number, options: In = {}): Promise<CheckpointRow | null> {
+  return checkpoints.find({ logId: log, size }, options);
+}
+
+/** The log is marked for ever: some of its times were injected. */
+export async function markTimesInjected(log: string, transaction: Transaction): Promise<void> {
+  await logs.update({ id: log }, { timesInjected: true }, { transaction });
+}
