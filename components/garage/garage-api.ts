@@ -13,8 +13,7 @@ export interface DraftAnswer {
   draft: {
     id: string;
     kind: DraftKind;
-    subjectId?: string;
-    subject?: string;
+    subject: string;
     state?: 'open' | 'sealed' | 'discarded';
     createdAt?: string;
     changedAt?: string;
@@ -23,6 +22,17 @@ export interface DraftAnswer {
   };
   changes: FieldChange[];
   uploads: UploadAnswer[];
+  /** Server time to ask from next time. */
+  at: string;
+}
+
+export interface SentAnswer {
+  accepted: string[];
+  /** Changes the server will not have, each with its sentence. */
+  refused: { id: string; sentence: string }[];
+  changes: FieldChange[];
+  /** Server time to ask from next time. */
+  at: string;
 }
 
 /** The server as the garage sees it; tests give their own. */
@@ -34,7 +44,7 @@ export interface GarageApi {
     id: string,
     changes: Pick<FieldChange, 'id' | 'field' | 'value' | 'deviceAt'>[],
     since: string | undefined,
-  ): Promise<Answer<{ accepted: string[]; changes: FieldChange[] }>>;
+  ): Promise<Answer<SentAnswer>>;
   confirmReceipt(id: string): Promise<Answer<{ log: string; seq: number }>>;
 }
 

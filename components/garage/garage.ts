@@ -90,11 +90,11 @@ export class Garage {
       this.#show({ signal: answer.why === 'refused' ? 'ok' : answer.why });
       return answer;
     }
-    const { kind, subjectId, subject, createdAt, changedAt } = answer.value.draft;
+    const { kind, subject, createdAt, changedAt } = answer.value.draft;
     const at = this.parts.now().toISOString();
     const person = this.view.snapshot?.person.id ?? '';
     const draft: KeptDraft = {
-      id, kind, subject: subjectId ?? subject ?? '', person, createdAt: createdAt ?? at, changedAt: changedAt ?? at,
+      id, kind, subject, person, createdAt: createdAt ?? at, changedAt: changedAt ?? at,
       isOnServer: true, state: 'open',
     }; // prettier-ignore
     await this.parts.store.putDraft(draft);

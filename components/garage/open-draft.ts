@@ -130,12 +130,18 @@ export class OpenDraft {
   /** What became of a batch, and what other devices wrote meanwhile. */
   async settle(
     batch: KeptChange[],
-    outcome: { accepted: string[]; refused?: string; others?: FieldChange[]; draft?: Partial<KeptDraft> },
+    outcome: {
+      accepted: string[];
+      refused?: Record<string, string>;
+      others?: FieldChange[];
+      draft?: Partial<KeptDraft>;
+    },
   ): Promise<void> {
     const accepted = new Set(outcome.accepted);
     const settled = batch.flatMap((change): KeptChange[] => {
       if (accepted.has(change.id)) return [{ ...change, isSent: true }];
-      return outcome.refused === undefined ? [] : [{ ...change, isSent: true, refusal: outcome.refused }];
+      const refusal = outcome.refused?.[change.id];
+      return refusal === undefined ? [] : [{ ...change, isSent: true, refusal }];
     });
     for (const change of batch) this.#inFlight.delete(change.id);
     const { id: draftId } = this.view.draft;

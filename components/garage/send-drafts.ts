@@ -1,4 +1,4 @@
-import type { Failure, GarageApi } from './garage-api';
+import type { DraftAnswer, Failure, GarageApi } from './garage-api';
 import type { KeptChange, KeptDraft } from './draft-store';
 import type { OpenDraft } from './open-draft';
 
@@ -7,31 +7,13 @@ export type Signal = 'unknown' | 'ok' | 'no-signal' | 'not-signed-in';
 
 const changesPerRequest = 200;
 
-/** Told of a draft by the server: its state there, and where it was sealed. */
-function draftFrom(answer: {
-  subjectId?: string;
-  subject?: string;
-  state?: KeptDraft['state'];
-  sealedLog?: string | null;
-  sealedSeq?: number | null;
-}): Partial<KeptDraft> {
-  const subject = answer.subjectId ?? answer.subject;
+function draftFrom({ subject, state, sealedLog, sealedSeq }: DraftAnswer['draft']): Partial<KeptDraft> {
   return {
     isOnServer: true,
-    ...(answer.state ? { state: answer.state } : {}),
-    ...(subject ? { subject } : {}),
-    ...(answer.sealedLog && typeof answer.sealedSeq === 'number'
-      ? { sealed: { log: answer.sealedLog, seq: answer.sealedSeq } }
-      : {}),
+    subject,
+    ...(state ? { state } : {}),
+    ...(sealedLog && typeof sealedSeq === 'number' ? { sealed: { log: sealedLog, seq: sealedSeq } } : {}),
   };
-}
-
-function latestServerTime(changes: readonly { serverAt?: string }[], since: string | undefined): string | undefined {
-  return changes.reduce<string | undefined>(
-    (latest, { serverAt }) =>
-      serverAt !== undefined && (latest === undefined || serverAt > latest) ? serverAt : latest,
-    since,
-  );
 }
 
 /** Makes the draft known to the server; safe to repeat. */
@@ -76,33 +58,33 @@ async function sendBatch(api: GarageApi, opened: OpenDraft, batch: KeptChange[])
   const answer = await api.sendChanges(id, sent, since);
   if (!answer.ok) {
     const isThisOne = answer.why === 'refused' && answer.code === 'invalid-input' && batch.length === 1;
-    await opened.settle(batch, { accepted: [], ...(isThisOne ? { refused: answer.sentence } : {}) });
+    const refused = isThisOne ? { refused: sentenceFor(batch, answer.sentence) } : {};
+    await opened.settle(batch, { accepted: [], ...refused });
     return isThisOne ? undefined : answer;
   }
-  const { accepted, changes: others } = answer.value;
-  const newSince = latestServerTime(others, since);
-  // An answer that names none of the changes would be asked for ever; what is not accepted is set aside.
-  const refused =
-    accepted.length === 0 ? { refused: 'The server did not accept this change and did not say why.' } : {};
-  await opened.settle(batch, {
-    accepted,
-    others,
-    ...refused,
-    draft: newSince === undefined ? {} : { since: newSince },
-  });
+  const { accepted, refused = [], changes: others, at } = answer.value;
+  // An answer that names none of the changes would be asked for ever: what is neither is set aside.
+  const isNamed = accepted.length + refused.length > 0;
+  const sentences = isNamed
+    ? Object.fromEntries(refused.map(({ id: changeId, sentence }) => [changeId, sentence]))
+    : sentenceFor(batch, 'The server did not take this change and did not say why.');
+  await opened.settle(batch, { accepted, refused: sentences, others, ...(at ? { draft: { since: at } } : {}) });
   return undefined;
+}
+
+function sentenceFor(batch: KeptChange[], sentence: string): Record<string, string> {
+  return Object.fromEntries(batch.map(({ id }) => [id, sentence]));
 }
 
 /** Takes in the server's whole picture of a draft: what other devices wrote, which uploads it has, whether it is sealed. */
 export async function fetchDraft(api: GarageApi, opened: OpenDraft): Promise<Failure | undefined> {
   const answer = await api.readDraft(opened.view.draft.id);
   if (!answer.ok) return answer;
-  const { draft, changes, uploads } = answer.value;
-  const since = latestServerTime(changes, undefined);
+  const { draft, changes, uploads, at } = answer.value;
   await opened.settle([], {
     accepted: [],
     others: changes,
-    draft: { ...draftFrom(draft), ...(since === undefined ? {} : { since }) },
+    draft: { ...draftFrom(draft), ...(at ? { since: at } : {}) },
   });
   opened.showFiles(opened.view.files, uploads ?? []);
   return undefined;

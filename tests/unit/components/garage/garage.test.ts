@@ -164,18 +164,22 @@ describe('sending', () => {
     expect(garage.view.signal).toBe('not-signed-in');
   });
 
-  it('sets aside the one change the server refuses, with its sentence, and sends the others', async () => {
-    const server = new ServerDouble();
-    const { garage } = await started(server);
-    const opened = await garage.create('worksheet', 'sorrel');
-    server.badFields.add('notes');
-    await opened.set({ title: 'Oil', notes: 'too long', 'odometer/value': '1' });
-    await garage.sendAll();
-    const fields = server.drafts.get(opened.view.draft.id)?.changes.map(({ field }) => field);
-    expect(fields?.sort()).toEqual(['odometer/value', 'title']);
-    expect(opened.view.refusals).toEqual([{ field: 'notes', sentence: 'This text is too long.' }]);
-    expect(opened.view.fields.notes).toBe('too long');
-  });
+  it.each([true, false])(
+    'sets aside the one change refused and sends the others (whole request: %s)',
+    async (whole) => {
+      const server = new ServerDouble();
+      server.refusesWhole = whole;
+      const { garage } = await started(server);
+      const opened = await garage.create('worksheet', 'sorrel');
+      server.badFields.add('notes');
+      await opened.set({ title: 'Oil', notes: 'too long', 'odometer/value': '1' });
+      await garage.sendAll();
+      const fields = server.drafts.get(opened.view.draft.id)?.changes.map(({ field }) => field);
+      expect(fields?.sort()).toEqual(['odometer/value', 'title']);
+      expect(opened.view.refusals).toEqual([{ field: 'notes', sentence: 'This text is too long.' }]);
+      expect(opened.view.fields.notes).toBe('too long');
+    },
+  );
 
   it('keeps what was typed on a draft that was sealed meanwhile, and says so', async () => {
     const server = new ServerDouble();

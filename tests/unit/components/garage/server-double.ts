@@ -9,6 +9,8 @@ export class ServerDouble implements GarageApi {
   failing: Failure | undefined;
   /** Fields the server will not have. */
   badFields = new Set<string>();
+  /** Whether one such field has the whole request refused. */
+  refusesWhole = false;
   #clock = Date.parse('2026-04-18T12:00:00.000Z');
 
   constructor(readonly person = 'imke') {}
@@ -20,14 +22,14 @@ export class ServerDouble implements GarageApi {
 
   async readGarage() {
     if (this.failing) return this.failing;
-    const drafts = [...this.drafts.values()].map(({ draft }) => ({ ...draft, subject: draft.subjectId, title: '' }));
+    const drafts = [...this.drafts.values()].map(({ draft }) => ({ ...draft, title: '' }));
     return { ok: true, value: { person: { id: this.person }, machines: [], shelves: [], drafts } } as const;
   }
   async openDraft({ id, kind, subject }: Parameters<GarageApi['openDraft']>[0]) {
     this.requests.push(`open ${id}`);
     if (this.failing) return this.failing;
-    const draft = { id, kind, subjectId: subject, state: 'open' as const };
-    if (!this.drafts.has(id)) this.drafts.set(id, { draft, changes: [], uploads: [] });
+    const draft = { id, kind, subject, state: 'open' as const };
+    if (!this.drafts.has(id)) this.drafts.set(id, { draft, changes: [], uploads: [], at: this.#stamp() });
     return { ok: true, value: {} } as const;
   }
   async readDraft(id: string) {
@@ -43,17 +45,22 @@ export class ServerDouble implements GarageApi {
     const held = this.drafts.get(id);
     if (!held) return refusal('not-found', 'There is no such draft.');
     if (held.draft.state === 'sealed') return refusal('already-sealed', 'This worksheet is sealed as entry 12.');
-    if (changes.some(({ field }) => this.badFields.has(field)))
-      return refusal('invalid-input', 'This text is too long.');
+    const bad = changes.filter(({ field }) => this.badFields.has(field));
+    if (bad.length > 0 && this.refusesWhole) return refusal('invalid-input', 'This text is too long.');
     const serverAt = this.#stamp();
     const own = new Set(changes.map((change) => change.id));
     for (const change of changes) {
-      if (!held.changes.some((one) => one.id === change.id)) held.changes.push({ ...change, serverAt });
+      if (bad.includes(change)) own.delete(change.id);
+      else if (!held.changes.some((one) => one.id === change.id)) held.changes.push({ ...change, serverAt });
     }
     const others = held.changes.filter(
       (one) => !own.has(one.id) && (since === undefined || (one.serverAt ?? '') > since),
     );
-    return { ok: true, value: { accepted: [...own], changes: structuredClone(others) } } as const;
+    const refused = bad.map(({ id: badId }) => ({ id: badId, sentence: 'This text is too long.' }));
+    return {
+      ok: true,
+      value: { accepted: [...own], refused, changes: structuredClone(others), at: serverAt },
+    } as const;
   }
   async confirmReceipt() {
     return { ok: true, value: { log: 'log', seq: 1 } } as const;

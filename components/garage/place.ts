@@ -1,0 +1,30 @@
+/** What the garage shows; it stands in the hash, so that the page itself is one and the same for everybody. */
+export type GaragePlace =
+  | { show: 'list' }
+  | { show: 'no-signal' }
+  | { show: 'new-worksheet'; machine: string | undefined }
+  | { show: 'worksheet'; id: string; screen: string }
+  | { show: 'new-receipt' }
+  | { show: 'receipt'; id: string };
+
+const idForm = /^[0-9a-zA-Z-]{1,64}$/;
+
+/**
+ * Reads the hash. What it cannot read is the list.
+ *
+ * @example placeFrom('#worksheet/7c0e/tasks') // { show: 'worksheet', id: '7c0e', screen: 'tasks' }
+ */
+export function placeFrom(hash: string): GaragePlace {
+  const [show = '', first = '', second = ''] = hash.replace(/^#/, '').split('/');
+  const id = idForm.test(first) ? first : undefined;
+  if (show === 'new-worksheet') return { show, machine: id };
+  if (show === 'new-receipt' || show === 'no-signal') return { show };
+  if (show === 'worksheet' && id !== undefined) return { show, id, screen: idForm.test(second) ? second : 'tasks' };
+  if (show === 'receipt' && id !== undefined) return { show, id };
+  return { show: 'list' };
+}
+
+/** A screen of one worksheet: `tasks`, `times`, `summary`, or a task's id. */
+export function worksheetScreen(id: string, screen: string): string {
+  return `#worksheet/${id}/${screen}`;
+}
