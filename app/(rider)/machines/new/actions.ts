@@ -1,0 +1,15 @@
+'use server';
+
+import { revalidatePath } from 'next/cache';
+import { redirect } from 'next/navigation';
+import { formAction } from '@/lib/auth/action';
+import { paths } from '@/lib/paths';
+import { createMachine } from '@/lib/services/create-machine';
+import { machineInput } from '@/lib/services/machine-input';
+
+export const setUpMachine = formAction({ schema: machineInput }, async ({ input, person }) => {
+  const { machine } = await createMachine({ person, input });
+  // The shell's list of machines stands in the layout.
+  revalidatePath('/', 'layout');
+  redirect(paths.bench(machine));
+});

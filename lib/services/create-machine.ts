@@ -1,0 +1,98 @@
+import 'server-only';
+import { randomUUID } from 'node:crypto';
+import { findLogOf } from '@/db/queries/logs';
+import { insertMachine, machineById } from '@/db/queries/machines';
+import { shelvesOf } from '@/db/queries/shelves';
+import type { PersonRow } from '@/db/models/people';
+import { authorise } from '@/lib/auth/guard';
+import { presetTerms } from '@/lib/domain/presets';
+import { invalidInput } from '@/lib/errors';
+import type { AuthorPart, OpeningBody, TermsBody } from '@/lib/evidence/format';
+import { now } from '@/lib/ports/clock';
+import { appendEntry } from './append-entry';
+import { createShelf } from './create-shelf';
+import { readMachineInput, type MachineInput, type ReadMachine } from './machine-input';
+import { openLog } from './open-log';
+
+/**
+ * Sets up a machine: its row, its owner and entry 0 in one transaction, then its terms as entry 1, and a shelf for
+ * somebody who has none. Sent again, it goes on where it was interrupted and makes nothing twice.
+ */
+export async function createMachine(options: {
+  person: PersonRow;
+  input: MachineInput;
+}): Promise<{ machine: string; log: string }> {
+  const { person, input } = options;
+  const existing = await machineById(input.machine);
+  if (existing !== null) await authorise({ person, action: 'set-up-machine', machine: input.machine });
+  const { machine: read, refused } = readMachineInput(input, now().toISOString());
+  const terms = presetTerms(input.kind);
+  if (terms === undefined) refused.kind ??= 'Choose what kind of machine it is.';
+  if (Object.keys(refused).length > 0 || terms === undefined) throw invalidInput(refused);
+
+  const author: AuthorPart = { person: person.id, name: person.name, role: 'owner' };
+  const { log } = await openMachineLog({ person, input, read, author });
+  const body: TermsBody = { ...terms, warranty: [...terms.warranty, ...read.warranty] };
+  await appendEntry({
+    log,
+    kind: 'terms',
+    by: person.id,
+    idempotencyKey: `first-terms/${input.machine}`,
+    parts: () => Promise.resolve({ author, body }),
+  });
+  if ((await shelvesOf(person.id)).length === 0) await createShelf({ person });
+  return { machine: input.machine, log };
+}
+
+async function openMachineLog(options: {
+  person: PersonRow;
+  input: MachineInput;
+  read: ReadMachine;
+  author: AuthorPart;
+}): Promise<{ log: string }> {
+  const { person, input, read, author } = options;
+  const { machine: id, make, model, kind, distanceUnit, timeZone } = input;
+  const { identity, opening } = read;
+  const existing = await findLogOf(id);
+  if (existing !== null) return { log: existing.id };
+  const body: OpeningBody = { make, model, kindOfMachine: kind, ...opening };
+  return openLog({
+    subject: 'machine',
+    subjectId: id,
+    by: person.id,
+    parts: () => Promise.resolve({ author, body, identity }),
+    within: async (transaction) => {
+      const at = now().toISOString();
+      await insertMachine(
+        {
+          id,
+          make,
+          model,
+          modelYear: opening.modelYear ?? null,
+          kind,
+          vin: identity.vin ?? null,
+          frameNumber: identity.frameNumber ?? null,
+          engineNumber: identity.engineNumber ?? null,
+          vinCheck: read.vinCheck,
+          distanceUnit,
+          timeZone,
+          firstUseOn: opening.firstUse?.on ?? null,
+          firstUseOdometer: opening.firstUse?.odometer?.value ?? null,
+          archivedAt: null,
+          createdBy: person.id,
+          createdAt: at,
+        },
+        {
+          id: randomUUID(),
+          personId: person.id,
+          subjectKind: 'machine',
+          subjectId: id,
+          relation: 'owner',
+          since: at,
+          until: null,
+        },
+        transaction,
+      );
+    },
+  });
+}
