@@ -1,0 +1,21 @@
+import { describe, expect, it } from 'vitest';
+import { groupFingerprint, groupHash, stripeLean } from '@/lib/domain/hash-words';
+
+// SHA-256 of the empty text: NIST example values.
+const empty = 'e3b0c44298fc1c149afbf4c8996fb92427ae41e4649b934ca495991b7852b855';
+
+describe('hashes for people', () => {
+  it('groups a leaf hash by eight', () => {
+    expect(groupHash(empty)).toBe('e3b0c442 98fc1c14 9afbf4c8 996fb924 27ae41e4 649b934c a495991b 7852b855');
+    expect(groupHash('')).toBe('');
+  });
+  it('groups a fingerprint by four', () => {
+    expect(groupFingerprint(empty.slice(0, 12))).toBe('e3b0 c442 98fc');
+  });
+  it('leans the stripe between 20 degrees either way', () => {
+    expect(stripeLean('0000')).toBe(-20);
+    expect(stripeLean('ffff')).toBe(20);
+    expect(stripeLean(empty)).toBe(15.6);
+    expect(() => stripeLean('E3')).toThrow('lower-case hex');
+  });
+});
