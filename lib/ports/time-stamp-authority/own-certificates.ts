@@ -9,6 +9,7 @@ import {
   X509Certificate,
 } from 'node:crypto';
 import path from 'node:path';
+import { Certificate } from 'pkijs';
 import { env } from '@/lib/env';
 import { readOrMakeSecretFile } from '@/lib/ports/secret-file';
 import {
@@ -39,6 +40,10 @@ export interface OwnCertificates {
   key: KeyObject;
   stamper: X509Certificate;
   root: X509Certificate;
+  /** DER of the stamper's issuer, subject and serial number, as tokens repeat them. */
+  issuer: Uint8Array;
+  subject: Uint8Array;
+  serial: Uint8Array;
 }
 
 let known: { file: string; certificates: OwnCertificates } | undefined;
@@ -51,21 +56,39 @@ export function ownCertificates(): OwnCertificates {
 }
 
 function read(file: string): OwnCertificates {
-  const pem = readOrMakeSecretFile(file, makeAuthority);
-  const [stamper, root] = pem.match(/-----BEGIN CERTIFICATE-----[^-]+-----END CERTIFICATE-----/g) ?? [];
+  const pem = readOrMakeSecretFile(file, () => makeAuthority());
   try {
-    if (stamper === undefined || root === undefined) throw new Error('Two certificates are needed.');
-    const key = createPrivateKey(pem);
-    const certificates = { key, stamper: new X509Certificate(stamper), root: new X509Certificate(root) };
-    if (!certificates.stamper.checkPrivateKey(key)) throw new Error('The key is not that of the first certificate.');
-    return certificates;
+    return readAuthority(pem);
   } catch (cause) {
     throw new Error(`${file} does not hold the test authority's key and its two certificates. Restore it.`, { cause });
   }
 }
 
+/** Takes apart what `makeAuthority` made. */
+export function readAuthority(pem: string): OwnCertificates {
+  const [stamper, root] = (pem.match(/-----BEGIN CERTIFICATE-----[^-]+-----END CERTIFICATE-----/g) ?? []).map(
+    (text) => new X509Certificate(text),
+  );
+  const key = createPrivateKey(pem);
+  if (stamper === undefined || root === undefined || !stamper.checkPrivateKey(key)) {
+    throw new Error('A key, its certificate and the root are needed.');
+  }
+  const parsed = Certificate.fromBER(new Uint8Array(stamper.raw));
+  return {
+    key,
+    stamper,
+    root,
+    issuer: new Uint8Array(parsed.issuer.toSchema().toBER()),
+    subject: new Uint8Array(parsed.subject.toSchema().toBER()),
+    serial: new Uint8Array(parsed.serialNumber.toBER()),
+  };
+}
+
+/** RFC 3161 §2.3: the extended key usage is critical and there is no other. */
+const forTimeStampsAlone = extension(oids.extendedKeyUsage, true, sequence(oid(oids.timeStamping)));
+
 /** Key, certificate and root in one file, so that they are made together or not at all. */
-function makeAuthority(): string {
+export function makeAuthority(purpose: Uint8Array = forTimeStampsAlone): string {
   const rootKeys = generateKeyPairSync('ec', { namedCurve: 'P-256' });
   const stamperKeys = generateKeyPairSync('ec', { namedCurve: 'P-256' });
   const rootKeyId = keyIdOf(rootKeys.publicKey);
@@ -86,8 +109,7 @@ function makeAuthority(): string {
     signedWith: rootKeys.privateKey,
     extensions: [
       extension(oids.keyUsage, true, namedBits(keyUsageBit.digitalSignature)),
-      // RFC 3161 §2.3: the extended key usage is critical and there is no other.
-      extension(oids.extendedKeyUsage, true, sequence(oid(oids.timeStamping))),
+      purpose,
       extension(oids.subjectKeyIdentifier, false, octetString(keyIdOf(stamperKeys.publicKey))),
       extension(oids.authorityKeyIdentifier, false, sequence(contextPrimitive(0, rootKeyId))),
     ],
@@ -126,7 +148,7 @@ function nameOf(commonName: string): Uint8Array {
   return sequence(setOf(sequence(oid(oids.commonName), utf8String(commonName))));
 }
 
-function extension(id: string, isCritical: boolean, value: Uint8Array): Uint8Array {
+export function extension(id: string, isCritical: boolean, value: Uint8Array): Uint8Array {
   return sequence(oid(id), ...(isCritical ? [boolean(true)] : []), octetString(value));
 }
 

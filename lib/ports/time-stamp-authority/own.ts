@@ -1,6 +1,6 @@
 import 'server-only';
 import { createHash, sign } from 'node:crypto';
-import { Certificate, type TimeStampReq } from 'pkijs';
+import type { TimeStampReq } from 'pkijs';
 import { now } from '@/lib/ports/clock';
 import {
   context,
@@ -15,7 +15,7 @@ import {
   utf8String,
 } from './der';
 import { digests, oids } from './oids';
-import { ownAuthorityName, ownCertificates, serialNumber } from './own-certificates';
+import { ownAuthorityName, type OwnCertificates, ownCertificates, serialNumber } from './own-certificates';
 import { parseRequest } from './request';
 import type { TimeStampAuthority } from './time-stamp-authority';
 
@@ -34,7 +34,7 @@ export const ownAuthority: TimeStampAuthority = {
 };
 
 /** DER of a TimeStampResp (RFC 3161 §2.4.2); a request that cannot be granted is rejected with its reason. */
-export function answerRequest(der: Uint8Array): Uint8Array {
+export function answerRequest(der: Uint8Array, certificates = ownCertificates()): Uint8Array {
   let request: TimeStampReq;
   try {
     request = parseRequest(der);
@@ -51,7 +51,7 @@ export function answerRequest(der: Uint8Array): Uint8Array {
     return rejection('unacceptedPolicy', `Stamps are made under the policy ${oids.ownPolicy} alone.`);
   }
   if ((request.extensions?.length ?? 0) > 0) return rejection('unacceptedExtension', 'No extensions are supported.');
-  return sequence(sequence(integer(granted)), token(request));
+  return sequence(sequence(integer(granted)), token(request, certificates));
 }
 
 function rejection(reason: keyof typeof failure, sentence: string): Uint8Array {
@@ -59,12 +59,9 @@ function rejection(reason: keyof typeof failure, sentence: string): Uint8Array {
 }
 
 /** ContentInfo around SignedData (RFC 5652 §5) around TSTInfo. */
-function token(request: TimeStampReq): Uint8Array {
-  const { key, stamper, root } = ownCertificates();
-  const certificate = Certificate.fromBER(new Uint8Array(stamper.raw));
-  const issuer = bytes(certificate.issuer.toSchema().toBER());
-  const serial = bytes(certificate.serialNumber.toBER());
-  const info = tstInfo(request, bytes(certificate.subject.toSchema().toBER()));
+function token(request: TimeStampReq, certificates: OwnCertificates): Uint8Array {
+  const { key, stamper, root, issuer, subject, serial } = certificates;
+  const info = tstInfo(request, subject);
   const sha256 = sequence(oid(oids.sha256));
 
   // RFC 5816: the certificate is named by its SHA-256, which is the default and so left out.
@@ -108,15 +105,11 @@ function tstInfo(request: TimeStampReq, stamperName: Uint8Array): Uint8Array {
     integer(serialNumber()),
     generalizedTime(now()),
     sequence(integer(accuracySeconds)),
-    ...(request.nonce === undefined ? [] : [bytes(request.nonce.toBER())]),
+    ...(request.nonce === undefined ? [] : [new Uint8Array(request.nonce.toBER())]),
     context(0, context(4, stamperName)),
   );
 }
 
 function attribute(id: string, value: Uint8Array): Uint8Array {
   return sequence(oid(id), setOf(value));
-}
-
-function bytes(buffer: ArrayBuffer): Uint8Array {
-  return new Uint8Array(buffer);
 }

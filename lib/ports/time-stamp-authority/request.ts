@@ -1,5 +1,6 @@
 import 'server-only';
 import { randomBytes } from 'node:crypto';
+import * as asn1js from 'asn1js';
 import { TimeStampReq } from 'pkijs';
 import { boolean, integer, nullValue, octetString, oid, sequence } from './der';
 import { oids } from './oids';
@@ -20,7 +21,8 @@ export function buildRequest({ digest, nonce }: { digest: Uint8Array; nonce?: bi
 
 /** Reads a TimeStampReq. Throws if the bytes are not one, or are followed by others. */
 export function parseRequest(der: Uint8Array): TimeStampReq {
-  const request = TimeStampReq.fromBER(new Uint8Array(der));
-  if (request.toSchema().toBER().byteLength === 0) throw new Error('This is not a time-stamp request.');
-  return request;
+  const bytes = new Uint8Array(der);
+  const { offset, result } = asn1js.fromBER(bytes);
+  if (offset !== bytes.length) throw new Error('This is not a time-stamp request.');
+  return new TimeStampReq({ schema: result });
 }
