@@ -34,8 +34,8 @@ export function LedgerLine(props: LedgerLineProps) {
   return (
     <li
       className={classes(
-        'kept-together relative grid grid-cols-[2.75rem_1fr_5.75rem] border-b border-hair py-3 last:border-b-0',
-        'lg:min-h-24 lg:grid-cols-[4rem_6.75rem_7.25rem_minmax(0,1fr)_auto_7.5rem] lg:items-center lg:py-2.5',
+        'kept-together relative grid grid-cols-[2.75rem_minmax(0,1fr)_6rem] border-b border-hair py-3 last:border-b-0',
+        'lg:min-h-24 lg:grid-cols-[4rem_7.5rem_7.25rem_minmax(0,1fr)_auto_7.5rem] lg:items-center lg:py-2.5',
         href && 'hover:bg-paper has-focus-visible:bg-paper',
       )}
     >
@@ -64,7 +64,7 @@ export function LedgerLine(props: LedgerLineProps) {
         ) : null}
       </div>
       {thumbs.length > 0 ? (
-        <div className="col-start-2 row-start-3 mt-2.5 flex items-center gap-1.5 pl-3 lg:col-start-5 lg:row-start-1 lg:mt-0 lg:justify-end">
+        <div className="col-start-2 row-start-3 mt-2.5 flex flex-wrap items-center gap-1.5 pl-3 lg:flex-nowrap lg:col-start-5 lg:row-start-1 lg:mt-0 lg:justify-end">
           {thumbs.slice(0, thumbsShown).map((thumb) => (
             <Thumb key={`${thumb.src} ${thumb.alt}`} {...thumb} />
           ))}

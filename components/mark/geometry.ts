@@ -2,7 +2,7 @@
 export type MarkState = 'sealed' | 'countersigned' | 'waiting' | 'struck' | 'altered';
 
 /** What a shape is, so that screen and packet each paint it in their own way. */
-export type MarkPart = 'washer' | 'seat' | 'head' | 'chamfer' | 'stripe' | 'outline' | 'strike';
+export type MarkPart = 'washer' | 'head' | 'chamfer' | 'stripe' | 'outline' | 'strike';
 
 export interface MarkShape {
   part: MarkPart;
@@ -55,7 +55,7 @@ export function stripeTurn(leafHash: string | undefined): number {
  *
  * Errors: as `stripeTurn`. Source: this project's own drawing.
  *
- * @example markGeometry('sealed', leafHash).shapes.map((shape) => shape.part) // ['washer', 'seat', 'head', 'chamfer', 'stripe']
+ * @example markGeometry('sealed', leafHash).shapes.map((shape) => shape.part) // ['washer', 'head', 'chamfer', 'stripe']
  */
 export function markGeometry(state: MarkState, leafHash?: string): MarkGeometry {
   const stripeDegrees = restDegrees + stripeTurn(leafHash);
@@ -63,7 +63,6 @@ export function markGeometry(state: MarkState, leafHash?: string): MarkGeometry 
   const head = hexagon(headTurn);
   const bolt: MarkShape[] = [
     { part: 'washer', d: circle(washerRadius) },
-    { part: 'seat', d: circle(headRadius + 2.6) },
     { part: 'head', d: polygon(head) },
     { part: 'chamfer', d: circle(chamferRadius) },
   ];
@@ -78,9 +77,9 @@ export function markGeometry(state: MarkState, leafHash?: string): MarkGeometry 
     waiting: () => [...bolt, { part: 'outline', d: polygon(single) }],
     struck: () => [...bolt, { part: 'strike', d: `M1 ${centre}H${box - 1}` }],
     altered: () => {
-      const [washer, seat, ...top] = bolt as [MarkShape, MarkShape, ...MarkShape[]];
+      const [washer, ...top] = bolt as [MarkShape, ...MarkShape[]];
       const torn = clip(stripe(stripeDegrees + headTurn, 0, singleHalfWidth), head);
-      return [washer, seat, { part: 'stripe', d: polygon(single) }, ...top, { part: 'stripe', d: polygon(torn) }];
+      return [washer, { part: 'stripe', d: polygon(single) }, ...top, { part: 'stripe', d: polygon(torn) }];
     },
   };
   return { box, stripeDegrees, shapes: shapesOf[state]() };

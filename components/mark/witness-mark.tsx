@@ -26,7 +26,6 @@ export const markTitles: Record<MarkState, string> = {
 
 const partClasses: Record<MarkPart, string> = {
   washer: 'fill-steel stroke-ink stroke-[1.6]',
-  seat: 'fill-none stroke-edge stroke-[0.7]',
   head: 'fill-sheet stroke-ink stroke-[1.8]',
   chamfer: 'fill-none stroke-edge stroke-[0.9]',
   stripe: 'fill-lacquer stroke-[#15211f] stroke-[1.2]',

@@ -23,6 +23,11 @@ export const flagSizePx = 14;
 export const flagPaddingPx = 9;
 const flagGapPx = 6;
 
+const numberSizePx = 16;
+const numberPaddingPx = 2;
+/** Figures of the condensed face need less than 0.85 of the width of Barlow's. */
+const condensedShare = 0.85;
+
 /**
  * Where a figure stands on a rule, in per cent of its length; what lies beyond an end stands on that end.
  *
@@ -68,11 +73,12 @@ function endPx(flag: PlacedFlag, ruleWidthPx: number): number {
 }
 
 /**
- * Which side of its tick a number stands on: right of it, unless the rule's end would cut it off at its least width.
+ * How far a number's middle lies right of its tick: it slides like a flag, so that it is cut off at neither end.
  *
- * @example numberSide('22,000', 100, 264) // 'before'
+ * Unit: px; negative is to the left.
+ *
+ * @example numberShiftPx(50, '10,000') // 0
  */
-export function numberSide(text: string, percent: number, leastPx: number): 'before' | 'after' {
-  const roomPx = ((100 - percent) / 100) * leastPx;
-  return textWidthPx(text, flagSizePx) + 6 <= roomPx ? 'after' : 'before';
+export function numberShiftPx(percent: number, text: string): number {
+  return Math.round((50 - percent) * (textWidthPx(text, numberSizePx) * condensedShare + 2 * numberPaddingPx)) / 100;
 }

@@ -1,4 +1,4 @@
-import { flagSizePx, numberSide, percentAt, placeFlags, type FlagTone, type RuleFlag } from './layout';
+import { flagSizePx, numberShiftPx, percentAt, placeFlags, type FlagTone, type RuleFlag } from './layout';
 import type { RuleTick } from './ticks';
 
 export interface Span {
@@ -39,15 +39,14 @@ export function EngravedBand({ span, ticks, flags }: { span: Span; ticks: RuleTi
       {ticks.map(({ at, text }) => {
         if (text === undefined) return null;
         const percent = percentAt(at, span.from, span.to);
-        const side = numberSide(text, percent, leastRulePx);
         return (
           <text
             key={at}
             x={`${percent}%`}
-            dx={side === 'after' ? 5 : -5}
-            y={15}
-            textAnchor={side === 'after' ? 'start' : 'end'}
-            className="figure fill-ink text-base"
+            dx={numberShiftPx(percent, text)}
+            y={14}
+            textAnchor="middle"
+            className="figure fill-ink text-sm @2xl:text-base"
           >
             {text}
           </text>

@@ -37,7 +37,9 @@ export function Table({ caption, isCaptionHidden, columns, rows, emptyText, isSc
         : {})}
     >
       <table role="table" className={classes('w-full border-collapse text-left', stack && 'max-md:block')}>
-        <caption className={isCaptionHidden ? 'sr-only' : 'figure mb-2 text-left text-xl'}>{caption}</caption>
+        <caption className={isCaptionHidden ? 'sr-only' : 'figure mb-2 text-left text-xl max-md:block'}>
+          {caption}
+        </caption>
         <thead role="rowgroup" className={stack ? 'max-md:sr-only' : ''}>
           <tr role="row">
             {columns.map((column) => (

@@ -44,7 +44,7 @@ describe('stripeTurn', () => {
 
 describe('markGeometry', () => {
   it('draws one stripe when sealed, two when countersigned, an outline when waiting, a line when struck', () => {
-    expect(partsOf('sealed')).toEqual(['washer', 'seat', 'head', 'chamfer', 'stripe']);
+    expect(partsOf('sealed')).toEqual(['washer', 'head', 'chamfer', 'stripe']);
     expect(partsOf('countersigned').filter((part) => part === 'stripe')).toHaveLength(2);
     expect(partsOf('waiting')).toContain('outline');
     expect(partsOf('waiting')).not.toContain('stripe');
@@ -60,7 +60,7 @@ describe('markGeometry', () => {
   });
 
   it('paints the washer piece of a broken stripe under the head and the head piece over it', () => {
-    expect(partsOf('altered')).toEqual(['washer', 'seat', 'stripe', 'head', 'chamfer', 'stripe']);
+    expect(partsOf('altered')).toEqual(['washer', 'stripe', 'head', 'chamfer', 'stripe']);
   });
 
   it('keeps the torn piece on the head: no corner lies beyond the hexagon', () => {

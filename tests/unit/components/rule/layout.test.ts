@@ -1,8 +1,12 @@
+import { readFileSync } from 'node:fs';
+import fontkit from '@pdf-lib/fontkit';
 import fc from 'fast-check';
 import { describe, expect, it } from 'vitest';
-import { numberSide, percentAt, placeFlags, type PlacedFlag, type RuleFlag } from '@/components/rule/layout';
+import { numberShiftPx, percentAt, placeFlags, type PlacedFlag, type RuleFlag } from '@/components/rule/layout';
 import { textWidthPx } from '@/components/rule/text-width';
 
+const face = fontkit.create(readFileSync('fonts/BarlowCondensed_600SemiBold.ttf'));
+const condensedPx = (text: string, sizePx: number) => (face.layout(text).advanceWidth * sizePx) / face.unitsPerEm;
 const startPx = (flag: PlacedFlag, rulePx: number) => (flag.percent / 100) * rulePx - flag.beforePx;
 
 describe('percentAt', () => {
@@ -71,13 +75,23 @@ describe('placeFlags', () => {
   });
 });
 
-describe('numberSide', () => {
-  it('turns a number to the left of its tick where the end of the rule would cut it off', () => {
-    const needsPx = textWidthPx('20,000', 14) + 6;
-    const percentFor = (roomPx: number) => 100 - (roomPx / 264) * 100;
-    expect(numberSide('20,000', percentFor(needsPx - 1), 264)).toBe('before');
-    expect(numberSide('20,000', percentFor(needsPx + 0.001), 264)).toBe('after');
-    expect(numberSide('20,000', percentFor(needsPx + 1), 264)).toBe('after');
+describe('numberShiftPx', () => {
+  it('keeps a number whole at both ends and over its tick in the middle', () => {
+    const halfPx = condensedPx('22,000', 16) / 2;
+    expect(numberShiftPx(0, '22,000')).toBeGreaterThanOrEqual(halfPx);
+    expect(numberShiftPx(50, '22,000')).toBe(0);
+    expect(numberShiftPx(100, '22,000')).toBeLessThanOrEqual(-halfPx);
+  });
+
+  it('leaves six-figure numbers apart on the narrowest rule, set at 14 px in the shipped face', () => {
+    const texts = ['100,000', '200,000', '300,000', '400,000', '500,000'];
+    const edges = texts.map((text, index) => {
+      const percent = (index + 1) * 20;
+      const halfPx = condensedPx(text, 14) / 2;
+      const middlePx = percent * 2.64 + numberShiftPx(percent, text);
+      return { startPx: middlePx - halfPx, endPx: middlePx + halfPx };
+    });
+    for (let at = 1; at < edges.length; at += 1) expect(edges[at]!.startPx).toBeGreaterThan(edges[at - 1]!.endPx);
   });
 });
 
