@@ -7,6 +7,8 @@ import { formValues, typedValues } from './form-values';
 import { asRefusal, fieldErrors } from './refusal';
 import { currentPerson, requirePerson } from './session';
 
+export type { FormState };
+
 type Access = 'public' | 'signed-in' | 'steward';
 /** `message` is shown above the form; `keep` leaves what was typed in it. */
 type Done = { message?: string; keep?: boolean } | void;

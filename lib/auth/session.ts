@@ -9,10 +9,8 @@ import { paths } from '@/lib/paths';
 import { now } from '@/lib/ports/clock';
 import { knownDeviceCookie, sessionCookie } from './cookies';
 import { signInPath } from './local-path';
+import { pathHeader } from './path-header';
 import { isAlive, shouldTouch } from './session-life';
-
-/** Set by the proxy, so that signing in can lead back to the page that asked for it. */
-export const pathHeader = 'x-witnessmark-path';
 
 /** The living session of this request, asked for once however often a page needs it. */
 export const currentSession = cache(async (): Promise<{ session: SessionRow; person: PersonRow } | null> => {
@@ -37,11 +35,15 @@ export async function currentPerson(): Promise<PersonRow | null> {
   return (await currentSession())?.person ?? null;
 }
 
-/** For pages and actions: the person, or away to the sign-in page, which leads back here. */
+/** For pages and actions: the session and its person, or away to the sign-in page, which leads back here. */
+export async function requireSession(): Promise<{ session: SessionRow; person: PersonRow }> {
+  const current = await currentSession();
+  if (current === null) redirect(signInPath((await headers()).get(pathHeader)));
+  return current;
+}
+
 export async function requirePerson(): Promise<PersonRow> {
-  const person = await currentPerson();
-  if (person === null) redirect(signInPath((await headers()).get(pathHeader)));
-  return person;
+  return (await requireSession()).person;
 }
 
 /** Puts a session that a use case has just begun into the cookie, and remembers the device. */

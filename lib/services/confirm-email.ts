@@ -14,8 +14,8 @@ export async function confirmEmail({ token, address }: { token: string; address:
     const { personId, detail } = await spendMailToken(token, 'confirm-email', { transaction });
     const person = await findPerson(personId, { transaction });
     if (person === null || person.emailConfirmedAt !== null || detail === null) throw deadLink();
-    const { name, passwordHash } = JSON.parse(detail) as SignUpDetail;
-    await updatePerson(personId, { name, passwordHash, emailConfirmedAt: at }, { transaction });
+    const chosen = JSON.parse(detail) as SignUpDetail;
+    await updatePerson(personId, { ...chosen, emailConfirmedAt: at }, { transaction });
     await spendMailTokens(personId, 'confirm-email', at, { transaction });
   });
 }
