@@ -1,7 +1,7 @@
 /** Draws the icons of the site from the witness mark itself: `npx tsx scripts/draw-icons.ts`. Run again when the mark changes. */
 import { writeFile } from 'node:fs/promises';
 import sharp from 'sharp';
-import { markGeometry, type MarkPart } from '@/components/mark/geometry';
+import { markGeometry, type MarkPart } from '@/lib/domain/mark-geometry';
 
 const paint: Record<MarkPart, string> = {
   washer: 'fill="#d9ddd9" stroke="#15211f" stroke-width="1.8"',
@@ -25,15 +25,30 @@ function icon(inset: number, ground: string): string {
 const petrol = (inset: number) =>
   `<rect x="${-inset}" y="${-inset}" width="${48 + 2 * inset}" height="${48 + 2 * inset}" fill="#0d4f4c"/>`;
 
-async function png(svg: string, edgePx: number, path: string): Promise<void> {
+async function png(svg: string, edgePx: number): Promise<Buffer> {
   const density = Math.ceil((72 * edgePx) / 48);
-  await sharp(Buffer.from(svg), { density }).resize(edgePx, edgePx).png({ compressionLevel: 9 }).toFile(path);
+  return sharp(Buffer.from(svg), { density }).resize(edgePx, edgePx).png({ compressionLevel: 9 }).toBuffer();
+}
+
+/** An ICO file may hold a PNG as it is: six bytes of head, sixteen for the one picture, then the PNG. */
+function ico(picture: Buffer, edgePx: number): Buffer {
+  const head = Buffer.alloc(22);
+  head.writeUInt16LE(1, 2);
+  head.writeUInt16LE(1, 4);
+  head.writeUInt8(edgePx, 6);
+  head.writeUInt8(edgePx, 7);
+  head.writeUInt16LE(1, 10);
+  head.writeUInt16LE(32, 12);
+  head.writeUInt32LE(picture.length, 14);
+  head.writeUInt32LE(head.length, 18);
+  return Buffer.concat([head, picture]);
 }
 
 const small = icon(2, '');
+const framed = icon(9, petrol(9));
 await writeFile('app/icon.svg', small);
-await png(small, 48, 'public/icon-48.png');
-await png(icon(9, petrol(9)), 180, 'app/apple-icon.png');
-await png(icon(9, petrol(9)), 192, 'public/icon-192.png');
-await png(icon(9, petrol(9)), 512, 'public/icon-512.png');
-await png(icon(16, petrol(16)), 512, 'public/icon-maskable-512.png');
+await writeFile('app/favicon.ico', ico(await png(small, 48), 48));
+await writeFile('app/apple-icon.png', await png(framed, 180));
+await writeFile('public/icon-192.png', await png(framed, 192));
+await writeFile('public/icon-512.png', await png(framed, 512));
+await writeFile('public/icon-maskable-512.png', await png(icon(16, petrol(16)), 512));

@@ -1,7 +1,7 @@
 import { classes } from '@/components/ui/classes';
-import { markGeometry, type MarkPart, type MarkState } from './geometry';
+import { markGeometry, type MarkPart, type MarkState } from '@/lib/domain/mark-geometry';
 
-export type { MarkState } from './geometry';
+export type { MarkState } from '@/lib/domain/mark-geometry';
 
 export interface WitnessMarkProps {
   /** Hex; turns the stripe a little, so that each entry's mark is its own. */

@@ -1,5 +1,5 @@
 import { flagSizePx, numberShiftPx, percentAt, placeFlags, type FlagTone, type RuleFlag } from './layout';
-import type { RuleTick } from './ticks';
+import type { RuleTick } from '@/lib/domain/rule-ticks';
 
 export interface Span {
   from: number;

@@ -1,5 +1,5 @@
 import { percentAt } from './layout';
-import { ruleTicks } from './ticks';
+import { ruleTicks } from '@/lib/domain/rule-ticks';
 
 export interface ShortRuleProps {
   from: number;

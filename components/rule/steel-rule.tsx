@@ -3,7 +3,7 @@ import { classes } from '@/components/ui/classes';
 import { LaneDrawing, type LaneInterval, type LaneMark } from './lane-drawing';
 import type { RuleFlag } from './layout';
 import { EngravedBand, FlagStrip, leastRulePx, type Span } from './rule-parts';
-import { ruleTicks, type RuleTick } from './ticks';
+import { ruleTicks, type RuleTick } from '@/lib/domain/rule-ticks';
 
 export type { LaneInterval, LaneMark, RuleFlag };
 

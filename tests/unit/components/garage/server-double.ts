@@ -1,4 +1,3 @@
-import type { FieldChange } from '@/lib/domain/field-changes';
 import type { DraftAnswer, Failure, GarageApi } from '@/components/garage/garage-api';
 
 /** A server of one person, held in memory, that answers by the drafts contract. */
@@ -39,7 +38,7 @@ export class ServerDouble implements GarageApi {
       ? ({ ok: true, value: structuredClone(value) } as const)
       : refusal('not-found', 'There is no such draft.');
   }
-  async sendChanges(id: string, changes: FieldChange[], since: string | undefined) {
+  async sendChanges(...[id, changes, since]: Parameters<GarageApi['sendChanges']>) {
     this.requests.push(`send ${changes.map(({ field }) => field).join(' ')}`);
     if (this.failing) return this.failing;
     const held = this.drafts.get(id);
@@ -56,11 +55,20 @@ export class ServerDouble implements GarageApi {
     const others = held.changes.filter(
       (one) => !own.has(one.id) && (since === undefined || (one.serverAt ?? '') > since),
     );
-    const refused = bad.map(({ id: badId }) => ({ id: badId, sentence: 'This text is too long.' }));
+    const refused = bad.map(({ id: badId }): { id: string; sentence: string } => ({
+      id: badId,
+      sentence: 'This text is too long.',
+    }));
     return {
       ok: true,
       value: { accepted: [...own], refused, changes: structuredClone(others), at: serverAt },
     } as const;
+  }
+  async moveDraft() {
+    return this.failing ?? ({ ok: true, value: {} } as const);
+  }
+  async discardDraft() {
+    return this.failing ?? ({ ok: true, value: {} } as const);
   }
   async confirmReceipt() {
     return { ok: true, value: { log: 'log', seq: 1 } } as const;

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { ruleEnd, ruleTicks, timeTicks } from '@/components/rule/ticks';
+import { ruleEnd, ruleTicks, timeTicks } from '@/lib/domain/rule-ticks';
 
 const textsOf = (ticks: { text?: string }[]) => ticks.flatMap((tick) => (tick.text === undefined ? [] : [tick.text]));
 

@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { markGeometry, stripeTurn, type MarkState } from '@/components/mark/geometry';
+import { markGeometry, stripeTurn, type MarkState } from '@/lib/domain/mark-geometry';
 
 const hash = '9f2c41d70be86a53c41e77a05d1b0f6e2a9930cc71e4d8b266f0a1c93e5b7d10';
 const states: MarkState[] = ['sealed', 'countersigned', 'waiting', 'struck', 'altered'];
