@@ -3,7 +3,7 @@
 import { useActionState } from 'react';
 import { Notice } from '@/components/ui/notice';
 import { SubmitButton } from '@/components/ui/submit-button';
-import { emptyForm, type FormState } from '@/lib/auth/form-state';
+import { emptyForm, type FormState } from '@/lib/form-state';
 import { IdentityFields } from './identity-fields';
 import { MakeFields, OdometerFields } from './make-fields';
 import { RecordStartFields } from './record-start-fields';

@@ -2,15 +2,14 @@ import 'server-only';
 import { randomUUID } from 'node:crypto';
 import { findLogOf } from '@/db/queries/logs';
 import { insertMachine, machineById } from '@/db/queries/machines';
-import { shelvesOf } from '@/db/queries/shelves';
 import type { PersonRow } from '@/db/models/people';
 import { authorise } from '@/lib/auth/guard';
-import { presetTerms } from '@/lib/domain/presets';
 import { invalidInput } from '@/lib/errors';
 import type { AuthorPart, OpeningBody, TermsBody } from '@/lib/evidence/format';
 import { now } from '@/lib/ports/clock';
 import { appendEntry } from './append-entry';
-import { createShelf } from './create-shelf';
+import { ensureShelf } from './create-shelf';
+import { termsForKind } from './machine-kinds';
 import { readMachineInput, type MachineInput, type ReadMachine } from './machine-input';
 import { openLog } from './open-log';
 
@@ -26,7 +25,7 @@ export async function createMachine(options: {
   const existing = await machineById(input.machine);
   if (existing !== null) await authorise({ person, action: 'set-up-machine', machine: input.machine });
   const { machine: read, refused } = readMachineInput(input, now().toISOString());
-  const terms = presetTerms(input.kind);
+  const terms = termsForKind(input.kind);
   if (terms === undefined) refused.kind ??= 'Choose what kind of machine it is.';
   if (Object.keys(refused).length > 0 || terms === undefined) throw invalidInput(refused);
 
@@ -40,7 +39,7 @@ export async function createMachine(options: {
     idempotencyKey: `first-terms/${input.machine}`,
     parts: () => Promise.resolve({ author, body }),
   });
-  if ((await shelvesOf(person.id)).length === 0) await createShelf({ person });
+  await ensureShelf(person);
   return { machine: input.machine, log };
 }
 

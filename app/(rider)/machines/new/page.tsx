@@ -3,7 +3,7 @@ import { randomUUID } from 'node:crypto';
 import { MachineForm } from '@/components/machine/machine-form';
 import { PageHead } from '@/components/ui/page-head';
 import { requirePerson } from '@/lib/auth/session';
-import { machineKinds } from '@/lib/domain/presets';
+import { machineKinds } from '@/lib/services/machine-kinds';
 import { setUpMachine } from './actions';
 
 export const metadata: Metadata = { title: 'Set up a machine' };
