@@ -18,7 +18,9 @@ export interface EntryParts {
  */
 export function openParts(entry: BundleEntry, line: WalkedLine, log: string, findings: Findings): EntryParts {
   const opened = new Map<PartName, unknown>();
-  const sealed = new Map((line.leaf?.parts ?? []).map((part) => [part.name, part.digest]));
+  // A line that cannot be read names no digests; it is an alteration already, and nothing of it is shown.
+  if (line.leaf === null) return { opened, withheld: [] };
+  const sealed = new Map(line.leaf.parts.map((part) => [part.name, part.digest]));
   for (const text of entry.parts) {
     const place = { log, seq: line.seq };
     try {
