@@ -15,7 +15,7 @@ export interface SealedService {
   attachments: Attachment[];
 }
 /** What a machine's log says so far, struck entries left out. */
-export interface MachineHistory {
+export interface SealedHistory {
   log: string;
   opening: OpeningBody;
   terms: TermsBody | null;
@@ -26,7 +26,7 @@ export interface MachineHistory {
 }
 
 /** Reads a machine's log; inside a transaction when one is given, so that a seal judges what it follows. */
-export async function readHistory(machine: string, transaction?: Transaction): Promise<MachineHistory> {
+export async function readHistory(machine: string, transaction?: Transaction): Promise<SealedHistory> {
   const log = await findLogOf(machine, transaction ? { transaction } : {});
   if (log === null) throw notFound('machine');
   const lines = await linesOf(log.id, transaction);
