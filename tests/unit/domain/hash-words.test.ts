@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { groupFingerprint, groupHash, stripeLean } from '@/lib/domain/hash-words';
+import { groupFingerprint, groupHash } from '@/lib/domain/hash-words';
 
 // SHA-256 of the empty text: NIST example values.
 const empty = 'e3b0c44298fc1c149afbf4c8996fb92427ae41e4649b934ca495991b7852b855';
@@ -11,11 +11,5 @@ describe('hashes for people', () => {
   });
   it('groups a fingerprint by four', () => {
     expect(groupFingerprint(empty.slice(0, 12))).toBe('e3b0 c442 98fc');
-  });
-  it('leans the stripe between 20 degrees either way', () => {
-    expect(stripeLean('0000')).toBe(-20);
-    expect(stripeLean('ffff')).toBe(20);
-    expect(stripeLean(empty)).toBe(15.6);
-    expect(() => stripeLean('E3')).toThrow('lower-case hex');
   });
 });
