@@ -28,11 +28,11 @@ export function SessionList({ sessions, endOne, endOthers }: SessionListProps) {
   return (
     <div className="grid gap-4">
       {message ? <Notice isLive>{message}</Notice> : null}
-      <ul className="border-t border-line">
+      <ul className="-my-3">
         {sessions.map(({ id, device, begun, seen, isThisOne }) => (
           <li
             key={id}
-            className="flex flex-wrap items-center justify-between gap-x-6 gap-y-2 border-b border-line py-3"
+            className="flex flex-wrap items-center justify-between gap-x-6 gap-y-2 border-b border-line py-3 last:border-b-0"
           >
             <div>
               <p className="font-medium">
@@ -55,7 +55,7 @@ export function SessionList({ sessions, endOne, endOthers }: SessionListProps) {
         ))}
       </ul>
       {sessions.length > 1 ? (
-        <form action={submitOthers}>
+        <form action={submitOthers} className="border-t border-line pt-4">
           <SubmitButton busyText="Ending">End all others</SubmitButton>
         </form>
       ) : null}

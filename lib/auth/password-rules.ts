@@ -66,10 +66,11 @@ function isStep(text: string): boolean {
   return steps.size === 1 && (steps.has(1) || steps.has(-1));
 }
 
-/** Whether fewer than four characters are left once these words are taken out. */
+/** Whether fewer than four characters are left once these words are taken out; spaces and joints do not count. */
 function isMadeOf(password: string, parts: string[]): boolean {
-  const lower = password.toLowerCase();
-  const known = parts.map((part) => part.toLowerCase()).filter((part) => part.length >= 3);
-  const left = known.sort((a, b) => b.length - a.length).reduce((text, part) => text.replaceAll(part, ''), lower);
-  return left !== lower && Array.from(left).length < 4;
+  const bare = (text: string) => text.toLowerCase().replace(/[\s._-]/g, '');
+  const known = parts.map(bare).filter((part) => part.length >= 3);
+  const whole = bare(password);
+  const left = known.sort((a, b) => b.length - a.length).reduce((text, part) => text.replaceAll(part, ''), whole);
+  return left !== whole && Array.from(left).length < 4;
 }

@@ -3,33 +3,18 @@ import { randomUUID } from 'node:crypto';
 import { headers } from 'next/headers';
 import { redirect } from 'next/navigation';
 import { cache } from 'react';
-import { write } from '@/db/index';
-import { findPerson, findSession, touchSession, type PersonRow, type SessionRow } from '@/db/queries/people';
+import type { PersonRow, SessionRow } from '@/db/queries/people';
 import { paths } from '@/lib/paths';
-import { now } from '@/lib/ports/clock';
 import { knownDeviceCookie, sessionCookie } from './cookies';
 import { signInPath } from './local-path';
 import { pathHeader } from './path-header';
-import { isAlive, shouldTouch } from './session-life';
+import { readSession } from './read-session';
 
 /** The living session of this request, asked for once however often a page needs it. */
 export const currentSession = cache(async (): Promise<{ session: SessionRow; person: PersonRow } | null> => {
   const { id } = await sessionCookie();
   return id === undefined ? null : readSession(id);
 });
-
-/** The session and its person, if the session is alive; marks it as seen every few minutes. */
-export async function readSession(id: string): Promise<{ session: SessionRow; person: PersonRow } | null> {
-  const session = await findSession(id);
-  const at = now();
-  if (session === null || !isAlive(session, at)) return null;
-  const person = await findPerson(session.personId);
-  if (person === null) return null;
-  if (shouldTouch(session, at)) {
-    await write((transaction) => touchSession(session.id, at.toISOString(), { transaction }));
-  }
-  return { session, person };
-}
 
 export async function currentPerson(): Promise<PersonRow | null> {
   return (await currentSession())?.person ?? null;
