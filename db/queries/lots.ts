@@ -1,6 +1,6 @@
 import 'server-only';
 import type { Transaction } from '../index';
-import { draws, entries, entryParts, type DrawRow, type EntryRow } from '../models/logs';
+import { draws, entries, entryParts, stampJobs, type DrawRow, type EntryRow, type StampJobRow } from '../models/logs';
 
 /** One line of a log with its sealed parts, as they are stored. */
 export interface LogLine {
@@ -37,4 +37,9 @@ export function insertDraws(rows: DrawRow[], transaction: Transaction): Promise<
 export async function struckEntriesOf(logIds: string[], transaction?: Transaction): Promise<Set<string>> {
   const strikes = await entries.all({ logId: logIds, kind: 'strike' }, inside(transaction));
   return new Set(strikes.map((strike) => `${strike.logId}:${strike.refersToSeq}`));
+}
+
+/** Time stamps of a log that have not come yet. */
+export function waitingStamps(logId: string): Promise<StampJobRow[]> {
+  return stampJobs.all({ logId, doneAt: null }, { order: [['size', 'ASC']] });
 }
