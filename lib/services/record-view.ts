@@ -89,8 +89,11 @@ export interface PurchaseView {
   author: AuthorPart | null;
   attachments: Attachment[];
   tokens: TokenView[];
-  /** Seqs of this machine's entries that draw from it. */
+  /** Seqs of this machine's entries that draw from it, struck ones too. */
   usedBy: number[];
+  withheld?: PartName[];
+  /** A strike on the shelf's log that withdraws the purchase. */
+  struckBy?: { seq: number; sealedAt: string; reason: string } | null;
 }
 
 export interface ShelfEntryView {
@@ -101,4 +104,8 @@ export interface ShelfEntryView {
   leafHash: string;
   opening?: ShelfOpeningBody;
   purchase?: PurchaseView;
+  /** The body of every other kind: disposal, correction, strike, handover. Undefined when withheld. */
+  body?: unknown;
+  author?: AuthorPart | null;
+  refersTo?: Reference | null;
 }

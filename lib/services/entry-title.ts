@@ -1,0 +1,36 @@
+import 'server-only';
+import type { CountersignatureBody, ServiceBody } from '@/lib/evidence/format';
+import type { OpenedEntry } from '@/lib/services/open-stored-log';
+
+/** The words by which a ledger line names an entry of a machine's log. */
+export function entryTitle({ kind, leaf, values }: OpenedEntry): string {
+  const body = values.get('body');
+  const of = leaf.refersTo === null ? '' : ` of entry ${leaf.refersTo.seq}`;
+  const to = leaf.refersTo === null ? '' : ` to entry ${leaf.refersTo.seq}`;
+  switch (kind) {
+    case 'opening':
+      return 'Record opened';
+    case 'terms':
+      return 'Terms';
+    case 'service':
+      return (body as ServiceBody | undefined)?.title ?? 'Service';
+    case 'reading':
+      return 'Odometer reading';
+    case 'addendum':
+      return `Addendum${to}`;
+    case 'strike':
+      return `Strike${of}`;
+    case 'countersignature': {
+      const shop = (body as CountersignatureBody | undefined)?.shop.name;
+      return shop === undefined ? `Countersignature${of}` : `Countersigned by ${shop}`;
+    }
+    case 'key':
+      return 'Key of a signer';
+    case 'signature':
+      return `Signature${of}`;
+    case 'handover':
+      return 'Handover';
+    default:
+      return kind;
+  }
+}

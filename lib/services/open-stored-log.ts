@@ -1,0 +1,96 @@
+import 'server-only';
+import type { StoredLog } from '@/db/queries/entries';
+import type { TokenRow } from '@/db/models/logs';
+import { openDisclosure } from '@/lib/evidence/disclosure';
+import type { Attachment, AuthorPart, EntryKind, Leaf, NotesPart, PartName } from '@/lib/evidence/format';
+import { parseLeaf } from '@/lib/evidence/leaf';
+import { keyOfNote } from '@/lib/services/log-keys';
+import type { LogView, TokenView } from '@/lib/services/record-view';
+
+/** A line of a log with the parts that are to be shown. */
+export interface OpenedEntry {
+  leaf: Leaf;
+  leafHash: string;
+  kind: EntryKind;
+  /** What each opened part says. */
+  values: Map<PartName, unknown>;
+  /** Named in the leaf and not opened: kept back here, or erased. */
+  withheld: PartName[];
+  /** The earliest stamp of each authority over this entry. */
+  tokens: TokenView[];
+  /** The strike that withdraws it, if one stands. */
+  struckBy: { seq: number; sealedAt: string; reason: string } | null;
+}
+
+/** Opens the parts of every line that `isOpen` lets through. */
+export function openStoredLog(
+  stored: StoredLog,
+  isOpen: (part: PartName, seq: number) => boolean = () => true,
+): OpenedEntry[] {
+  const valuesBySeq = new Map<number, Map<PartName, unknown>>();
+  for (const { seq, name, disclosure } of stored.parts) {
+    const part = name as PartName;
+    if (!isOpen(part, seq)) continue;
+    const values = valuesBySeq.get(seq) ?? new Map<PartName, unknown>();
+    valuesBySeq.set(seq, values.set(part, openDisclosure(disclosure).value));
+  }
+  const tokens = tokensBySeq(stored);
+  const opened = stored.entries.map((row): OpenedEntry => {
+    const leaf = parseLeaf(row.leaf);
+    const values = valuesBySeq.get(row.seq) ?? new Map<PartName, unknown>();
+    const withheld = leaf.parts.map(({ name }) => name).filter((name) => !values.has(name));
+    const stamps = tokens.get(row.seq) ?? [];
+    return { leaf, leafHash: row.leafHash, kind: leaf.kind, values, withheld, tokens: stamps, struckBy: null };
+  });
+  markStruck(opened);
+  return opened;
+}
+
+export function logView({ log, checkpoints }: StoredLog): LogView {
+  const last = checkpoints.at(-1);
+  if (last === undefined) throw new Error(`The log ${log.id} has no checkpoint.`);
+  const { id, origin, keyName, timesInjected } = log;
+  const { size, root, note } = last;
+  return { id, origin, keyName, timesInjected, size, root, checkpoint: note, ...keyOfNote(note) };
+}
+
+export function authorOf({ values }: OpenedEntry): AuthorPart | null {
+  return (values.get('author') as AuthorPart | undefined) ?? null;
+}
+
+export function attachmentsOf({ values }: OpenedEntry): Attachment[] {
+  return (values.get('attachments') as Attachment[] | undefined) ?? [];
+}
+
+export function notesOf({ values }: OpenedEntry): string | null {
+  return (values.get('notes') as NotesPart | undefined)?.text ?? null;
+}
+
+/** A checkpoint covers every line before its size, so an entry's stamps are those of any later checkpoint too. */
+function tokensBySeq(stored: StoredLog): Map<number, TokenView[]> {
+  const bySize = new Map<number, TokenRow[]>();
+  for (const row of stored.tokens) bySize.set(row.size, [...(bySize.get(row.size) ?? []), row]);
+  const earliest = new Map<string, TokenView>();
+  const found = new Map<number, TokenView[]>();
+  for (let size = stored.checkpoints.length; size > 0; size -= 1) {
+    for (const { authority, genTime, isOwnAuthority, sha256 } of bySize.get(size) ?? []) {
+      const known = earliest.get(authority);
+      if (known === undefined || genTime <= known.genTime) {
+        earliest.set(authority, { authority, genTime, isOwnAuthority, sha256 });
+      }
+    }
+    found.set(size - 1, [...earliest.values()]);
+  }
+  return found;
+}
+
+/** A strike can itself be struck, so they are taken from the last to the first. */
+function markStruck(opened: OpenedEntry[]): void {
+  for (const entry of opened.toReversed()) {
+    if (entry.kind !== 'strike' || entry.struckBy !== null || entry.leaf.refersTo === null) continue;
+    const target = opened[entry.leaf.refersTo.seq];
+    if (target === undefined) continue;
+    const reason = (entry.values.get('body') as { reason?: string } | undefined)?.reason ?? '';
+    target.struckBy = { seq: entry.leaf.seq, sealedAt: entry.leaf.sealedAt, reason };
+  }
+}

@@ -1,0 +1,179 @@
+import 'server-only';
+import { readStoredLogs, type StoredLog } from '@/db/queries/entries';
+import { findLogOf } from '@/db/queries/logs';
+import { notFound } from '@/lib/errors';
+import type {
+  CountersignatureBody,
+  IdentityPart,
+  OpeningBody,
+  PricesPart,
+  PurchaseBody,
+  ShelfOpeningBody,
+  SupplierPart,
+  TermsBody,
+} from '@/lib/evidence/format';
+import { entryTitle } from '@/lib/services/entry-title';
+import { machineName } from '@/lib/services/list-machines';
+import {
+  attachmentsOf,
+  authorOf,
+  logView,
+  notesOf,
+  type OpenedEntry,
+  openStoredLog,
+} from '@/lib/services/open-stored-log';
+import { purchasesDrawn, readShelvesDrawn } from '@/lib/services/purchases-drawn';
+import type { BodyOf, EntryView, LogView, PurchaseView, RecordView, ShelfEntryView } from '@/lib/services/record-view';
+
+/**
+ * A machine's whole record, made from its leaves and those of the purchases it drew from. Prices are withheld unless
+ * they are asked for: the same view is shown to readers. Who may see it is decided before this is called.
+ */
+export async function readRecord({
+  machineId,
+  withPrices = false,
+}: {
+  machineId: string;
+  withPrices?: boolean;
+}): Promise<RecordView> {
+  const stored = await readLogOf('machine', machineId);
+  const opened = openStoredLog(stored);
+  const opening = opened[0]?.values.get('body') as OpeningBody | undefined;
+  if (opening === undefined) throw new Error(`The opening of log ${stored.log.id} cannot be read.`);
+
+  const termsBySeq = new Map<number, TermsBody>();
+  for (const { kind, leaf, values } of opened) {
+    const terms = kind === 'terms' ? (values.get('body') as TermsBody | undefined) : undefined;
+    if (terms !== undefined) termsBySeq.set(leaf.seq, terms);
+  }
+  const newestTerms = opened.findLast(({ leaf, struckBy }) => struckBy === null && termsBySeq.has(leaf.seq));
+  const drawn = purchasesDrawn(opened);
+  const shelves = (await readShelvesDrawn(drawn)).map((shelf) => {
+    const usedBy = drawn.get(shelf.log.id) ?? new Map<number, number[]>();
+    const lines = openStoredLog(shelf, (part, seq) => usedBy.has(seq) && (withPrices || part !== 'prices'));
+    const purchases = lines
+      .filter(({ kind, leaf }) => kind === 'purchase' && usedBy.has(leaf.seq))
+      .flatMap((line) => purchaseView(shelf.log.id, line, usedBy.get(line.leaf.seq) ?? []) ?? []);
+    return { log: logView(shelf), purchases, size: shelf.entries.length };
+  });
+  const { make, model, modelYear, kindOfMachine } = opening;
+  return {
+    machine: {
+      id: machineId,
+      name: machineName({ make, model, modelYear: modelYear ?? null }),
+      make,
+      model,
+      ...(modelYear === undefined ? {} : { modelYear }),
+      kind: kindOfMachine,
+    },
+    identity: (opened[0]?.values.get('identity') as IdentityPart | undefined) ?? null,
+    opening,
+    terms: newestTerms === undefined ? null : (termsBySeq.get(newestTerms.leaf.seq) ?? null),
+    termsBySeq,
+    log: logView(stored),
+    entries: entryViews(opened),
+    shelves,
+  };
+}
+
+/** A shelf's whole log, for its owners: every purchase with its prices. */
+export async function readShelf({
+  shelfId,
+}: {
+  shelfId: string;
+}): Promise<{ log: LogView; name: string; entries: ShelfEntryView[] }> {
+  const stored = await readLogOf('shelf', shelfId);
+  const opened = openStoredLog(stored);
+  const opening = opened[0]?.values.get('body') as ShelfOpeningBody | undefined;
+  return {
+    log: logView(stored),
+    name: opening?.name ?? 'Shelf',
+    entries: opened.map((entry): ShelfEntryView => {
+      const { kind, leaf, leafHash, values } = entry;
+      const base = { log: leaf.log, seq: leaf.seq, kind, sealedAt: leaf.sealedAt, leafHash };
+      if (kind === 'opening')
+        return { ...base, ...(opening === undefined ? {} : { opening }), author: authorOf(entry) };
+      const purchase = kind === 'purchase' ? purchaseView(leaf.log, entry, []) : null;
+      const body = kind === 'purchase' ? undefined : values.get('body');
+      return {
+        ...base,
+        ...(purchase === null ? {} : { purchase }),
+        ...(body === undefined ? {} : { body }),
+        author: authorOf(entry),
+        refersTo: leaf.refersTo,
+      };
+    }),
+  };
+}
+
+async function readLogOf(subject: 'machine' | 'shelf', subjectId: string): Promise<StoredLog> {
+  const log = await findLogOf(subjectId);
+  const [stored] = log?.subject === subject ? await readStoredLogs([log.id]) : [];
+  if (stored === undefined) throw notFound(subject);
+  return stored;
+}
+
+function entryViews(opened: OpenedEntry[]): EntryView[] {
+  const referring = new Map<number, OpenedEntry[]>();
+  for (const entry of opened) {
+    const target = entry.leaf.refersTo?.seq;
+    if (target !== undefined && entry.struckBy === null) {
+      referring.set(target, [...(referring.get(target) ?? []), entry]);
+    }
+  }
+  return opened.map((entry) => entryView(entry, referring.get(entry.leaf.seq) ?? []));
+}
+
+function entryView(entry: OpenedEntry, referring: OpenedEntry[]): EntryView {
+  const { leaf, leafHash, kind, values, withheld, tokens, struckBy } = entry;
+  const countersignatures = referring.flatMap((other) => {
+    const body = other.kind === 'countersignature' ? other.values.get('body') : undefined;
+    if (body === undefined) return [];
+    const { seq, sealedAt } = other.leaf;
+    return [{ seq, sealedAt, author: authorOf(other), body: body as CountersignatureBody }];
+  });
+  const isCountersigned = referring.some((other) => other.kind === 'countersignature');
+  const standing = isCountersigned ? 'countersigned' : tokens.length === 0 ? 'waiting' : 'sealed';
+  // The leaf says the kind; the body was sealed as that kind's.
+  const body = { kind, body: values.get('body') ?? null } as BodyOf;
+  return {
+    ...body,
+    seq: leaf.seq,
+    title: entryTitle(entry),
+    sealedAt: leaf.sealedAt,
+    leafHash,
+    previous: leaf.previous,
+    refersTo: leaf.refersTo,
+    author: authorOf(entry),
+    attachments: attachmentsOf(entry),
+    notes: notesOf(entry),
+    withheld,
+    tokens,
+    countersignatures,
+    struckBy,
+    addenda: referring.filter((other) => other.kind === 'addendum').map((other) => other.leaf.seq),
+    state: struckBy === null ? standing : 'struck',
+  };
+}
+
+/** Null when the body is withheld or erased: then nothing can be said of what was bought. */
+function purchaseView(log: string, entry: OpenedEntry, usedBy: number[]): PurchaseView | null {
+  const { leaf, leafHash, values, withheld, tokens, struckBy } = entry;
+  const body = values.get('body') as PurchaseBody | undefined;
+  if (body === undefined) return null;
+  return {
+    log,
+    seq: leaf.seq,
+    leafHash,
+    sealedAt: leaf.sealedAt,
+    body,
+    supplier: (values.get('supplier') as SupplierPart | undefined) ?? null,
+    prices: (values.get('prices') as PricesPart | undefined) ?? null,
+    author: authorOf(entry),
+    attachments: attachmentsOf(entry),
+    tokens,
+    usedBy,
+    withheld,
+    struckBy,
+  };
+}
