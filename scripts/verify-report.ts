@@ -1,0 +1,55 @@
+import { whatIsShown } from '@/lib/evidence/format';
+import type { EntryFinding, Finding } from '@/lib/evidence/finding';
+
+/** Invisible characters that could move a terminal's cursor or turn the direction of a line. */
+const unsafe = /[\u0000-\u0008\u000b-\u001f\u007f-\u009f\u061c\u200e\u200f\u202a-\u202e\u2066-\u2069]/g; // eslint-disable-line no-control-regex
+
+/** The same text with every invisible character written out, safe to print wherever it came from. */
+export function printable(text: string): string {
+  return text.replace(unsafe, (character) => `\\u${character.charCodeAt(0).toString(16).padStart(4, '0')}`);
+}
+
+/** The finding as plain text: the outcome first, then what it rests on, then every entry. */
+export function reportText(file: string, finding: Finding): string {
+  const { bundle, counts, key } = finding;
+  const lines = [`${finding.outcome.toUpperCase()}  ${file}`, finding.sentence, ''];
+  if (bundle !== null) lines.push(`Record ${bundle.number}, made at ${bundle.madeAt}, for: ${bundle.purpose}`);
+  for (const log of finding.logs) {
+    const signed = log.checkpoint === null ? 'no readable checkpoint' : `${log.checkpoint.size} entries, root ${log.checkpoint.root}`;
+    lines.push(`Log of the ${log.subject}: ${log.origin}/${log.id}`, `  ${signed}`);
+  }
+  if (key !== null) {
+    const whose = key.source === 'reader' ? 'the key you gave' : 'the key found in the file itself';
+    lines.push(`Checked with ${whose}: ${key.verifierKey}`, `  fingerprint ${key.fingerprint}`);
+  }
+  if (bundle !== null) {
+    const { entries, entriesOpened, partsOpened, partsWithheld } = counts;
+    lines.push(`${entriesOpened} of ${entries} entries opened (${partsOpened} parts opened, ${partsWithheld} withheld)`);
+  }
+  if (finding.against !== null) lines.push(`Compared with the older file: ${finding.against.sentence}`);
+  section(lines, 'Altered', finding.alterations.map((item) => `${item.sentence}\n      ${placed(item.code, item)}: ${item.technical}`));
+  section(lines, 'To know', finding.remarks.map((item) => `${item.sentence} [${item.code}]`));
+  section(lines, 'Not checked', finding.notChecked);
+  section(lines, 'Entries', finding.entries.map(entryLine));
+  if (bundle !== null) lines.push('', whatIsShown);
+  return `${printable(lines.join('\n'))}\n`;
+} // prettier-ignore
+
+function section(lines: string[], title: string, items: string[]): void {
+  if (items.length > 0) lines.push('', title, ...items.map((item) => `  - ${item}`));
+}
+
+function placed(code: string, place: { log?: string; seq?: number; part?: string }): string {
+  const where = [place.log, place.seq, place.part].filter((item) => item !== undefined);
+  return where.length === 0 ? code : `${code} at ${where.join('/')}`;
+}
+
+function entryLine(entry: EntryFinding): string {
+  const { claimed, earliestStamp } = entry;
+  const moment = claimed?.finishedAt ?? claimed?.startedAt;
+  const said = moment === undefined ? '' : `, claimed ${moment.date}${moment.time === undefined ? '' : ` ${moment.time}`} ${moment.zone}`;
+  const stamp = earliestStamp === null ? '' : ` (a time stamp says ${earliestStamp.genTime})`;
+  const closed = entry.withheldParts.length === 0 ? '' : `, withheld: ${entry.withheldParts.join(' ')}`;
+  const wrong = entry.problems.length === 0 ? '' : ` !! ${entry.problems.join(' ')}`;
+  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${said}, sealed ${entry.sealedAt ?? 'unknown'}, not proven${stamp}${closed}${wrong}`;
+} // prettier-ignore

@@ -1,0 +1,229 @@
+import { execFile } from 'node:child_process';
+import { createPublicKey, generateKeyPairSync, verify as verifyWithOpenssl } from 'node:crypto';
+import { copyFile, mkdir, mkdtemp, readFile, rm, writeFile } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import { promisify } from 'node:util';
+import { PDFDocument } from 'pdf-lib';
+import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { fromBase64, joinBytes, toHex } from '@/lib/evidence/bytes';
+import { parseNote, parseVerifierKey, signNote } from '@/lib/evidence/checkpoint';
+import type { Finding } from '@/lib/evidence/finding';
+import { sha256Hex } from '@/lib/evidence/hash';
+import { isTokenOf, readToken } from '@/lib/evidence/token';
+import { buildVerify, verifyFile } from '@/scripts/build-verify';
+import {
+  attacker, buildRecord, givenFiles, installation, keyOf, signedText, unsignedBundle,
+} from '../unit/evidence/build-record'; // prettier-ignore
+
+const run = promisify(execFile);
+const key = keyOf(installation);
+const record = buildRecord();
+const text = signedText(unsignedBundle(record));
+const note = record.machine.seals[0] ?? '';
+
+let folder: string;
+const at = (name: string) => path.join(folder, name);
+beforeAll(async () => {
+  folder = await mkdtemp(path.join(tmpdir(), 'verify-'));
+  // Alone in a folder, so that nothing beside it can help.
+  await copyFile(verifyFile, at('verify.mjs'));
+  await mkdir(at('files'));
+  for (const file of givenFiles) await writeFile(path.join(folder, 'files', file.name), file.bytes);
+  await writeFile(at('record.json'), text);
+  await writeFile(at('changed.json'), text.replace('Warranty claim', 'Warranty cla1m'));
+  await writeFile(at('half.json'), text.slice(0, 100));
+  await writeFile(at('older.note'), note);
+  const document = await PDFDocument.create();
+  document.addPage();
+  await document.attach(Buffer.from(text), 'record.json');
+  for (const file of givenFiles) await document.attach(file.bytes, file.name);
+  await writeFile(at('packet.pdf'), await document.save());
+});
+afterAll(() => rm(folder, { recursive: true, force: true }));
+
+async function verify(...given: string[]): Promise<{ code: number; stdout: string; stderr: string }> {
+  try {
+    return { code: 0, ...(await run(process.execPath, [at('verify.mjs'), ...given], { cwd: folder })) };
+  } catch (error) {
+    const { code, stdout, stderr } = error as { code: number; stdout: string; stderr: string };
+    return { code, stdout, stderr };
+  }
+}
+const finding = async (...given: string[]): Promise<Finding> =>
+  JSON.parse((await verify(...given, '--json')).stdout) as Finding;
+
+it('the committed verifier is what its sources make, byte for byte', async () => {
+  const built = await buildVerify();
+  // Not compared as texts: a difference in a megabyte of code is nothing to print.
+  expect(built === (await readFile(verifyFile, 'utf8')), 'run scripts/build-verify.ts and commit verify.mjs').toBe(
+    true,
+  );
+  expect(built).not.toContain(path.dirname(path.dirname(verifyFile)) + path.sep);
+});
+
+describe('the command', () => {
+  it('exits with 0 for an unchanged record and says what that shows', async () => {
+    const { code, stdout, stderr } = await verify('record.json', '--key', key, '--files', 'files');
+    expect([code, stderr]).toEqual([0, '']);
+    expect(stdout).toMatch(/^UNCHANGED {2}record\.json\n/);
+    expect(stdout).toContain('6 of 6 entries opened');
+    expect(stdout).toContain('Not shown: that a statement was true');
+  });
+
+  it('takes the record and the files out of a packet', async () => {
+    const found = await finding('packet.pdf', '--key', key);
+    expect(found).toMatchObject({ outcome: 'unchanged', alterations: [] });
+    expect(found.remarks.map((remark) => remark.code)).toEqual([
+      'not-time-stamped',
+      'not-time-stamped',
+      'pages-not-checked',
+    ]);
+  });
+
+  it('exits with 1 for an altered record, and names what is altered', async () => {
+    const { code, stdout } = await verify('changed.json', '--key', key);
+    expect(code).toBe(1);
+    expect(stdout).toContain('ALTERED');
+    expect(stdout).toContain('Something in this file was changed');
+    expect((await verify('record.json', '--key', keyOf(attacker))).code).toBe(1);
+    await writeFile(path.join(folder, 'files', 'stray.txt'), 'stray');
+    expect(await finding('record.json', '--key', key, '--files', 'files')).toMatchObject({
+      alterations: [{ code: 'file-unbound' }],
+    });
+    await rm(path.join(folder, 'files', 'stray.txt'));
+  });
+
+  it('compares with an older file', async () => {
+    expect(await finding('record.json', '--key', key, '--against', 'older.note')).toMatchObject({
+      against: { result: 'consistent' },
+    });
+    const forked = signNote(parseNote(note).text.replace(/\n1\n.*\n/, `\n1\n${'A'.repeat(43)}=\n`), installation);
+    await writeFile(at('forked.note'), forked);
+    expect((await verify('record.json', '--key', key, '--against', 'forked.note')).code).toBe(1);
+  });
+
+  it('says plainly that it does not check who made a time stamp', async () => {
+    const { code, stdout } = await verify('record.json', '--key', key, '--tsa-roots', 'roots.pem');
+    expect(code).toBe(0);
+    expect(stdout).toContain('Time-stamp trust is not checked by this version');
+  });
+
+  it.each([
+    [['half.json'], 'UNREADABLE'],
+    [['verify.mjs'], 'UNREADABLE'],
+    [['nowhere.json'], 'ENOENT'],
+    [[], 'node scripts/verify.mjs FILE'],
+    [['record.json', 'record.json'], 'node scripts/verify.mjs FILE'],
+    [['record.json', '--wrong'], 'node scripts/verify.mjs FILE'],
+    [['record.json', '--against', 'nowhere.json'], 'The older file could not be read'],
+  ])('exits with 2 for %j', async (given, expected) => {
+    const { code, stdout, stderr } = await verify(...given);
+    expect(code).toBe(2);
+    expect(stdout + stderr).toContain(expected);
+  });
+
+  it('prints no character that could move the cursor of a terminal', async () => {
+    const purpose = 'claim \u001b[2J\u202e';
+    await writeFile(at('hostile.json'), signedText(unsignedBundle(record, { purpose })));
+    for (const format of [[], ['--json']]) {
+      const { stdout } = await verify('hostile.json', ...format);
+      expect(stdout).toContain('\\u001b[2J\\u202e');
+      expect(stdout).not.toMatch(/[\u001b\u202e]/);
+    }
+  });
+});
+
+describe('openssl agrees', () => {
+  // The fixed beginning of an Ed25519 public key in DER, RFC 8410 §4.
+  const spkiPrefix = Uint8Array.from([0x30, 0x2a, 0x30, 0x05, 0x06, 0x03, 0x2b, 0x65, 0x70, 0x03, 0x21, 0x00]);
+
+  it('that a checkpoint is signed, and that a changed one is not', async () => {
+    const parsed = parseNote(note);
+    const der = Buffer.from(joinBytes(spkiPrefix, parseVerifierKey(key).publicKey));
+    const publicKey = createPublicKey({ key: der, format: 'der', type: 'spki' });
+    await writeFile(at('key.pem'), publicKey.export({ format: 'pem', type: 'spki' }));
+    await writeFile(at('checkpoint.txt'), parsed.text);
+    await writeFile(at('changed.txt'), parsed.text.replace('\n1\n', '\n2\n'));
+    await writeFile(at('signature.bin'), parsed.signature);
+    const check = (file: string) =>
+      run('openssl', [
+        'pkeyutl',
+        '-verify',
+        '-pubin',
+        '-inkey',
+        at('key.pem'),
+        '-rawin',
+        '-in',
+        at(file),
+        '-sigfile',
+        at('signature.bin'),
+      ]);
+    expect((await check('checkpoint.txt')).stdout).toContain('Signature Verified Successfully');
+    await expect(check('changed.txt')).rejects.toThrow();
+    expect(verifyWithOpenssl(null, Buffer.from(parsed.text), publicKey, parsed.signature)).toBe(true);
+  });
+
+  it('on the hash of a signed checkpoint', async () => {
+    const { stdout } = await run('openssl', ['dgst', '-sha256', '-r', at('older.note')]);
+    expect(stdout.slice(0, 64)).toBe(sha256Hex(Buffer.from(note)));
+  });
+
+  it('on the fingerprint of a key', async () => {
+    const { stdout } = await verify('record.json', '--key', key);
+    await writeFile(at('public.bin'), parseVerifierKey(key).publicKey);
+    const digest = (await run('openssl', ['dgst', '-sha256', '-r', at('public.bin')])).stdout.slice(0, 64);
+    expect(stdout).toContain(digest.match(/.{4}/g)?.join(' '));
+  });
+});
+
+it('reads a time stamp that openssl made over a checkpoint', async () => {
+  const { privateKey } = generateKeyPairSync('ec', { namedCurve: 'P-256' });
+  await writeFile(at('tsa.key'), privateKey.export({ format: 'pem', type: 'pkcs8' }));
+  await writeFile(
+    at('tsa.cnf'),
+    [
+      '[req]', 'distinguished_name=dn', 'x509_extensions=ext', 'prompt=no', '[dn]', 'CN=Test authority',
+      '[ext]', 'extendedKeyUsage=critical,timeStamping', '[tsa]', 'default_tsa=t', '[t]', `serial=${at('serial')}`,
+      `signer_cert=${at('tsa.pem')}`, `signer_key=${at('tsa.key')}`, 'signer_digest=sha256', 'default_policy=1.2.3.4.1',
+      'digests=sha256', 'accuracy=secs:1', 'ordering=no', 'tsa_name=no', 'ess_cert_id_chain=no', 'ess_cert_id_alg=sha256',
+    ].join('\n'),
+  ); // prettier-ignore
+  await writeFile(at('serial'), '4D\n');
+  await run('openssl', [
+    'req',
+    '-x509',
+    '-new',
+    '-key',
+    at('tsa.key'),
+    '-out',
+    at('tsa.pem'),
+    '-days',
+    '2',
+    '-config',
+    at('tsa.cnf'),
+  ]);
+  await run('openssl', ['ts', '-query', '-data', at('older.note'), '-sha256', '-cert', '-out', at('q.tsq')]);
+  const reply = ['ts', '-reply', '-config', at('tsa.cnf'), '-section', 't', '-queryfile', at('q.tsq')];
+  await run('openssl', [...reply, '-token_out', '-out', at('token.der')]);
+  const der = await readFile(at('token.der'));
+  const token = readToken(der);
+  const shown = (await run('openssl', ['ts', '-reply', '-in', at('token.der'), '-token_in', '-token_out', '-text']))
+    .stdout;
+  expect(token).toMatchObject({ policy: '1.2.3.4.1', imprintAlgorithm: '2.16.840.1.101.3.4.2.1' });
+  expect(toHex(token.imprint)).toBe(sha256Hex(Buffer.from(note)));
+  expect(isTokenOf(token, note)).toBe(true);
+  expect(shown).toContain(`Serial number: 0x${token.serial.toUpperCase()}`);
+  const printed = /Time stamp: (.*)/.exec(shown)?.[1] ?? '';
+  expect(new Date(printed).toISOString()).toBe(token.genTime);
+
+  const logs = [record.machine.toLog(), record.shelf.toLog()];
+  logs[0]?.entries[0]?.seal.tokens.push(der.toString('base64'));
+  await writeFile(at('stamped.json'), signedText(unsignedBundle(record, { logs })));
+  const found = await finding('stamped.json', '--key', key);
+  expect(found.outcome).toBe('unchanged');
+  expect(found.entries[0]?.stampedBy).toEqual([
+    { genTime: token.genTime, serial: token.serial, policy: '1.2.3.4.1', size: 1 },
+  ]);
+  expect(fromBase64(der.toString('base64'))).toHaveLength(der.length);
+});
