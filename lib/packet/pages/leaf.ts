@@ -1,0 +1,51 @@
+import 'server-only';
+import { groupHash } from '@/lib/domain/hash-words';
+import { formatInstant } from '@/lib/domain/instants';
+import type { PartName } from '@/lib/evidence/format';
+import type { TokenView } from '@/lib/services/record-view';
+import type { PacketContent } from '../content';
+import type { Cell } from '../sheet/boxes';
+import { types, type Sheet } from '../sheet/sheet';
+
+/**
+ * What can be said of a proven time inside a file: only that it is not proven here. Independence is never read from a
+ * file; a stamp by another authority is the verifier's to judge.
+ */
+export function provenCell(tokens: TokenView[], zone: string): Cell {
+  const others = tokens.filter(({ isOwnAuthority }) => !isOwnAuthority);
+  const first = [...others].sort((a, b) => a.genTime.localeCompare(b.genTime))[0];
+  if (first !== undefined) {
+    return {
+      label: 'Time proven',
+      value: 'to be checked',
+      note: `Stamped ${formatInstant(first.genTime, zone)} by ${first.authority}: check it against a root you trust.`,
+    };
+  }
+  const note = tokens.length === 0 ? 'The time stamp is still to come.' : 'Only this installation’s own stamp.';
+  return { label: 'Time proven', value: 'not proven', note };
+}
+
+function stampWords({ genTime, authority, isOwnAuthority }: TokenView, zone: string): string {
+  const who = isOwnAuthority
+    ? 'this installation’s own test authority, not independent'
+    : `${authority}; whether it is independent is for the reader to judge`;
+  return `Stamped ${formatInstant(genTime, zone)} by ${who}.`;
+}
+
+/** The leaf hash in groups, its link to the leaf before, what is withheld, and the time stamps in words. */
+export function drawLeaf(
+  sheet: Sheet,
+  leaf: { leafHash: string; previous?: string | null; withheld?: PartName[]; tokens: TokenView[] },
+  { zone }: PacketContent,
+): void {
+  sheet.heading('Leaf hash', { tag: 'H3', below: 44, above: 12 });
+  sheet.paragraph(groupHash(leaf.leafHash), types.hashLarge);
+  if (leaf.previous !== undefined && leaf.previous !== null) {
+    sheet.paragraph(`The leaf before it: ${groupHash(leaf.previous)}`, types.hash);
+  }
+  const stamps = leaf.tokens.map((token) => stampWords(token, zone));
+  sheet.paragraph(stamps.length === 0 ? 'No time stamp yet: proven time none.' : stamps.join(' '), types.small);
+  if (leaf.withheld !== undefined && leaf.withheld.length > 0) {
+    sheet.paragraph(`Withheld here, and counted: ${leaf.withheld.join(', ')}.`, types.small);
+  }
+}

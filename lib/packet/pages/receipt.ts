@@ -1,0 +1,78 @@
+import 'server-only';
+import { formatInstant, formatLocalDate, formatLocalMoment } from '@/lib/domain/instants';
+import { formatAmount } from '@/lib/domain/units';
+import type { PurchaseLine } from '@/lib/evidence/format';
+import type { PurchaseView } from '@/lib/services/record-view';
+import { receiptAnchor, receiptName, type PacketContent } from '../content';
+import { drawBoxes } from '../sheet/boxes';
+import { drawPlates } from '../sheet/plates';
+import { types, type Sheet } from '../sheet/sheet';
+import { drawTable } from '../sheet/table';
+import { drawLeaf, provenCell } from './leaf';
+import { platesOf } from './plates-of';
+
+/** A purchase this machine's entries draw from: what was bought, when it was sealed, and the paper itself. */
+export function drawReceipt(sheet: Sheet, purchase: PurchaseView, content: PacketContent): void {
+  const { body, supplier, seq, usedBy } = purchase;
+  const { zone } = content;
+  const name = receiptName(purchase);
+  const from = supplier === null ? 'supplier withheld' : supplier.name;
+  sheet.during(`Receipt ${name}, continued`, () => {
+    if (sheet.left < 330) sheet.newPage();
+    else sheet.gap(26);
+    sheet.anchor(receiptAnchor(purchase));
+    sheet.layer.bookmark(`${name} ${from}, ${formatLocalDate(body.boughtOn.date)}`, 1, sheet.y - 6);
+    sheet.paragraph(`Receipt ${name}, entry ${seq} of the shelf’s log`, types.label);
+    sheet.paragraph(
+      `${from}, ${formatLocalDate(body.boughtOn.date)}`,
+      { ...types.h1, size: 17, leading: 19 },
+      { tag: 'H2' },
+    );
+    sheet.gap(5);
+    drawBoxes(sheet, 4, [
+      { label: 'Bought, as the receipt says', value: formatLocalMoment(body.boughtOn), note: body.boughtOn.zone },
+      { label: 'Sealed by this installation', value: formatInstant(purchase.sealedAt, zone), note: zone },
+      provenCell(purchase.tokens, zone),
+      { label: 'Used by entries', value: usedBy.length === 0 ? 'none' : usedBy.join(', ') },
+      {
+        label: 'Supplier',
+        value: [supplier?.name, supplier?.address].filter(Boolean).join(', ') || 'withheld',
+        span: 2,
+      },
+      { label: 'Prices', value: purchase.prices === null ? 'withheld' : 'in the attached record.json' },
+      { label: 'Sealed by', value: purchase.author?.name ?? 'withheld' },
+    ]);
+    sheet.gap(4);
+    drawLines(sheet, body.lines);
+    if (purchase.attachments.length > 0) {
+      sheet.gap(10);
+      drawPlates(sheet, platesOf(name, purchase.attachments, content));
+    }
+    drawLeaf(sheet, purchase, content);
+  });
+}
+
+function drawLines(sheet: Sheet, lines: PurchaseLine[]): void {
+  drawTable(
+    sheet,
+    [
+      { title: 'Line', share: 0.6 },
+      { title: 'Product', share: 3.6 },
+      { title: 'Grade, standard', share: 2.2 },
+      { title: 'Part number, batch', share: 2.2 },
+      { title: 'Bought', share: 2.2, type: types.strong },
+    ],
+    lines.map((line) => [
+      String(line.line),
+      line.product,
+      [line.grade, line.standard].filter(Boolean).join(', '),
+      [line.partNumber, line.batch === undefined ? undefined : `batch ${line.batch}`].filter(Boolean).join(', '),
+      boughtWords(line),
+    ]),
+  );
+}
+
+function boughtWords({ containers, containerSize, quantity }: PurchaseLine): string {
+  if (containers !== undefined && containerSize !== undefined) return `${containers} × ${formatAmount(containerSize)}`;
+  return quantity === undefined ? 'not stated' : formatAmount({ amount: quantity, unit: '{piece}' });
+}

@@ -1,0 +1,128 @@
+import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
+import { convert, Decimal, formatAmount, formatDistance, groupThousands, units } from '@/lib/domain/units';
+import type {
+  Amount,
+  Attachment,
+  AttachmentRole,
+  CountersignCapacity,
+  EntryKind,
+  Interval,
+  Odometer,
+  ServiceBody,
+  Source,
+} from '@/lib/evidence/format';
+
+export const roleWords: Record<AttachmentRole, string> = {
+  'receipt-front': 'Receipt, front',
+  'receipt-back': 'Receipt, back',
+  'receipt-page': 'Receipt, page',
+  odometer: 'Odometer',
+  'as-found': 'As found',
+  'as-left': 'As left',
+  magnet: 'Magnet',
+  part: 'Part',
+  'manual-page': 'Manual page',
+  'work-order': 'Work order',
+  'lab-report': 'Laboratory report',
+  document: 'Document',
+};
+
+export const kindWords: Record<EntryKind, string> = {
+  opening: 'Opening of the record',
+  service: 'Service',
+  terms: 'Terms',
+  reading: 'Odometer reading',
+  addendum: 'Addendum',
+  strike: 'Strike',
+  countersignature: 'Countersignature',
+  key: 'Key',
+  signature: 'Signature',
+  handover: 'Handover',
+  purchase: 'Purchase',
+  disposal: 'Disposal',
+  correction: 'Correction',
+};
+
+export const capacityWords: Record<CountersignCapacity, string> = {
+  'did-the-work': 'did the work',
+  inspected: 'inspected the finished work',
+  'was-present': 'was present',
+  'checked-papers': 'checked the papers only',
+};
+
+export const performerWords: Record<ServiceBody['performedBy'][number]['capacity'], string> = {
+  owner: 'the owner',
+  helper: 'a helper',
+  shop: 'a shop',
+  dealer: 'a dealer',
+};
+
+/** The five grades of debris on a magnet or in a filter. */
+const debrisWords: Record<string, string> = {
+  '0': 'clean',
+  '1': 'fine grey paste or fuzz, normal',
+  '2': 'heavy paste',
+  '3': 'slivers or flakes',
+  '4': 'chips or pieces',
+};
+export const gradeWords = (grade: string): string => {
+  const words = debrisWords[grade];
+  return words === undefined ? grade : `${words} (grade ${grade} of 4)`;
+};
+
+export function sourceWords({ kind, title, edition, page }: Source): string {
+  if (kind === 'common-practice') return 'common practice: replace with your manual’s figure';
+  const named = [title, edition, page === undefined ? undefined : `page ${page}`].filter(Boolean).join(', ');
+  return named === '' ? (kind === 'manual' ? 'manual, not named' : 'the owner’s own figure') : named;
+}
+
+export function intervalWords(interval: Interval | undefined): string {
+  if (interval === undefined) return '';
+  const distances = (interval.distances ?? []).map((distance) => formatDistance(distance)).join(' (') || undefined;
+  const distance = distances?.includes(' (') ? `${distances})` : distances;
+  const months = interval.months === undefined ? undefined : `${interval.months} mo`;
+  const hours = interval.hours === undefined ? undefined : `${interval.hours} h`;
+  return [distance, months, hours].filter(Boolean).join(' or ') || 'no limit';
+}
+
+export const amountsWords = (amounts: Amount[] | undefined): string => (amounts ?? []).map(formatAmount).join(', ');
+
+export const odometerWords = ({ value, unit, instrument }: Odometer): string =>
+  formatDistance({ value, unit }) + (instrument === 0 ? '' : `, instrument ${instrument + 1}`);
+
+/** "4.26 L" for US and imperial measures, so that any reader has a metric figure beside what was entered. */
+export function metricWords({ amount, unit }: Amount): string | undefined {
+  const metric = { volume: 'L', torque: 'N.m', distance: 'km', pressure: 'kPa' } as const;
+  const { dimension } = units[unit];
+  if (!(dimension in metric)) return undefined;
+  const target = metric[dimension as keyof typeof metric];
+  if (unit === target || unit === 'mL') return undefined;
+  const value = convert(amount, unit, target).toFixed(units[target].decimals);
+  return formatAmount({ amount: groupThousands(value), unit: target });
+}
+
+export function takenWords({ takenAt, receivedAt }: Attachment, zone: string): string {
+  const received = `Received ${formatInstant(receivedAt, zone)}`;
+  if (takenAt === undefined) return received;
+  const [date = '', time = ''] = takenAt.local.split(/[T ]/);
+  const day = /^\d{4}-\d{2}-\d{2}$/.test(date) ? formatLocalDate(date) : date;
+  const offset = takenAt.offset === undefined ? 'local time, zone unknown' : takenAt.offset;
+  return `Taken ${day} ${time.slice(0, 5)}, ${offset}, as the file says. ${received}`;
+}
+
+/** "1 entry", "3 entries". */
+export const counted = (count: number, one: string, many: string): string => `${count} ${count === 1 ? one : many}`;
+
+export const sentence = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
+
+export const groupOf = (text: string, size: number): string =>
+  text.match(new RegExp(`.{1,${size}}`, 'g'))?.join(' ') ?? '';
+
+/** `1234567` as "1.2 MB". */
+export function bytesWords(bytes: number): string {
+  if (bytes < 1000) return `${bytes} bytes`;
+  return bytes < 1_000_000 ? `${Math.round(bytes / 1000)} kB` : `${(bytes / 1_000_000).toFixed(1)} MB`;
+}
+
+/** A measured distance to the whole unit, for reading. */
+export const roundedOf = ({ amount }: Amount): string => new Decimal(amount).toFixed(0);
