@@ -45,6 +45,8 @@ export interface GarageApi {
     changes: Pick<FieldChange, 'id' | 'field' | 'value' | 'deviceAt'>[],
     since: string | undefined,
   ): Promise<Answer<SentAnswer>>;
+  moveDraft(id: string, subject: string): Promise<Answer<unknown>>;
+  discardDraft(id: string): Promise<Answer<unknown>>;
   confirmReceipt(id: string): Promise<Answer<{ log: string; seq: number }>>;
 }
 
@@ -71,10 +73,10 @@ export function failureOf(status: number, problem: Problem): Failure {
 
 const patienceInMilliseconds = 30_000;
 
-async function ask<T>(url: string, body?: unknown): Promise<Answer<T>> {
+async function ask<T>(url: string, body?: unknown, method = body === undefined ? 'GET' : 'POST'): Promise<Answer<T>> {
   try {
     const response = await fetch(url, {
-      method: body === undefined ? 'GET' : 'POST',
+      method,
       credentials: 'same-origin',
       cache: 'no-store',
       redirect: 'error',
@@ -83,6 +85,7 @@ async function ask<T>(url: string, body?: unknown): Promise<Answer<T>> {
         ? {}
         : { headers: { 'content-type': 'application/json' }, body: JSON.stringify(body), keepalive: isSmall(body) }),
     });
+    if (response.status === 204) return { ok: true, value: undefined as T };
     if (response.ok) return { ok: true, value: (await response.json()) as T };
     return failureOf(response.status, ((await response.json().catch(() => ({}))) ?? {}) as Problem);
   } catch {
@@ -100,5 +103,7 @@ export const garageApi: GarageApi = {
   readDraft: (id) => ask(paths.api.draft(id)),
   sendChanges: (id, changes, since) =>
     ask(paths.api.draft(id) + (since === undefined ? '' : `?since=${encodeURIComponent(since)}`), { changes }),
+  moveDraft: (id, subject) => ask(paths.api.draft(id), { subject }, 'PATCH'),
+  discardDraft: (id) => ask(paths.api.draft(id), undefined, 'DELETE'),
   confirmReceipt: (id) => ask(paths.api.confirmReceipt(id), {}),
 };

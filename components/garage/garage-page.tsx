@@ -55,7 +55,7 @@ function Shown({ place }: { place: GaragePlace }) {
     case 'worksheet':
       return (
         <DraftLoader key={place.id} id={place.id} what="worksheet">
-          {(opened) => <WorksheetScreen opened={opened} screen={place.screen} />}
+          {(opened) => <WorksheetScreen opened={opened} screen={place.screen} step={place.step} />}
         </DraftLoader>
       );
     case 'receipt':

@@ -124,8 +124,42 @@ export class Garage {
     if (!file?.blob) return;
     const { refusal: _old, ...rest } = file;
     await this.parts.store.putFile({ ...rest, state: 'waiting' });
+    await opened.set({ [`photos/${id}/removed`]: null });
     await this.#showFiles(opened);
     this.sendSoon(0);
+  }
+
+  /** Discards a draft everywhere. Needs the server once the server knows the draft. */
+  async discard(opened: OpenDraft): Promise<Answer<unknown>> {
+    const { id, isOnServer } = opened.view.draft;
+    const answer = isOnServer ? await this.parts.api.discardDraft(id) : ({ ok: true, value: undefined } as const);
+    // Discarded on another device already, or no longer shared: there is nothing left to discard.
+    const isGone = !answer.ok && answer.why === 'refused' && ['conflict', 'not-found'].includes(answer.code);
+    if (answer.ok || isGone) await this.forget(id);
+    return answer;
+  }
+
+  /** Moves a worksheet to another machine. Needs the server once the server knows it. */
+  async move(opened: OpenDraft, subject: string): Promise<Answer<unknown>> {
+    const { id, isOnServer } = opened.view.draft;
+    const answer = isOnServer ? await this.parts.api.moveDraft(id, subject) : ({ ok: true, value: undefined } as const);
+    if (answer.ok) await opened.settle([], { accepted: [], draft: { subject } });
+    return answer;
+  }
+
+  /** Sends all there is and seals the receipt on its shelf. */
+  async confirmReceipt(opened: OpenDraft): Promise<Answer<{ log: string; seq: number }>> {
+    await this.sendAll();
+    const { draft, unsentCount, files } = opened.view;
+    if (unsentCount > 0 || files.some(({ state }) => state === 'waiting')) {
+      return { ok: false, why: this.view.signal === 'not-signed-in' ? 'not-signed-in' : 'no-signal' };
+    }
+    const answer = await this.parts.api.confirmReceipt(draft.id);
+    if (answer.ok) {
+      await opened.settle([], { accepted: [], draft: { state: 'sealed', sealed: answer.value } });
+      void this.refresh();
+    }
+    return answer;
   }
 
   /** Takes a draft off this device, with whatever it holds. */
@@ -188,6 +222,10 @@ export class Garage {
       },
       changed: () => this.#showFiles(opened),
     });
+    // A file that cannot arrive must not stand in the way of sealing; trying again puts it back.
+    for (const { id, state } of opened.view.files) {
+      if (state === 'refused') void opened.set({ [`photos/${id}/removed`]: 'yes' });
+    }
     return answer.ok ? undefined : answer;
   }
 

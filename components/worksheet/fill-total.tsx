@@ -1,0 +1,61 @@
+'use client';
+
+import { ShortRule } from '@/components/rule/short-rule';
+import type { Amount, FluidPoint } from '@/lib/evidence/format';
+import { compareAmounts, formatAmount, formatConverted, units } from '@/lib/domain/units';
+import type { WorksheetFill } from '@/lib/domain/worksheet';
+import { companionUnit, drawnFigure, ruleEnd, specifiedFor } from './fill-figures';
+
+interface FillTotalProps {
+  fill: WorksheetFill | undefined;
+  spec: FluidPoint | undefined;
+  total: Amount | undefined;
+}
+
+/** The running total, large, over the rule with what is specified. */
+export function FillTotal({ fill, spec, total }: FillTotalProps) {
+  const kind = fill?.fillKind ?? (spec?.wetFill || !spec?.dryFill ? 'wet' : 'dry');
+  const printed = (kind === 'dry' ? spec?.dryFill : spec?.wetFill) ?? [];
+  const specified = total ? specifiedFor(spec, kind, total.unit) : printed[0];
+  return (
+    <div>
+      <p className="label">Filled, {kind} fill, so far</p>
+      <p
+        className="mt-1.5 flex min-h-16 items-baseline gap-2 border-[1.5px] border-petrol bg-sheet px-3 py-1.5"
+        aria-live="polite"
+      >
+        <span className="figure text-[2.75rem]">{total?.amount ?? '0'}</span>
+        <span className="text-2xl text-soft">{units[total?.unit ?? specified?.unit ?? 'mL'].label}</span>
+      </p>
+      {specified ? <FillRule total={total} specified={specified} /> : null}
+      {total && !specified ? (
+        <p className="tag mt-1.5">
+          {formatConverted(total.amount, total.unit, companionUnit(total.unit))}. The spec sheet has no capacity for it.
+        </p>
+      ) : null}
+    </div>
+  );
+}
+
+function FillRule({ total, specified }: { total: Amount | undefined; specified: Amount }) {
+  const { unit } = specified;
+  const full = drawnFigure(specified, unit);
+  const value = total && drawnFigure(total, unit);
+  const words = `specified ${formatAmount(specified)}`;
+  const order = total ? compareAmounts(total, specified) : -1;
+  const judged = order === 0 ? 'as specified' : order > 0 ? 'more than specified' : 'less than specified';
+  return (
+    <ShortRule
+      from={0}
+      to={ruleEnd(full, value)}
+      band={{ min: full, max: full }}
+      {...(value === undefined ? {} : { value })}
+      isMet={order === 0}
+      bandText={words}
+      {...(total
+        ? { valueText: `${formatConverted(total.amount, total.unit, companionUnit(total.unit))}, ${judged}` }
+        : {})}
+      title={total ? `${formatAmount(total)}, ${judged}: ${words}` : `Nothing filled yet, ${words}`}
+    />
+  );
+}

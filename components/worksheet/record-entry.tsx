@@ -1,0 +1,51 @@
+'use client';
+
+import type { HoldPoint, Procedure } from '@/lib/domain/procedures';
+import { FillEntry } from './fill-entry';
+import { InspectionEntry } from './inspection-entry';
+import { LevelCheckEntry } from './level-check-entry';
+import { PartEntry } from './part-entry';
+import { TorqueEntry } from './torque-entry';
+
+interface RecordEntryProps {
+  task: string;
+  procedure: Procedure;
+  records: NonNullable<HoldPoint['records']>;
+}
+
+/** What a hold point asks to be entered. A level check also takes the top-ups it leads to. */
+export function RecordEntry({ task, procedure, records }: RecordEntryProps) {
+  const { fill, torque, inspection, part, levelCheck } = records;
+  const seen = procedure.inspections.find(({ subject }) => subject === inspection);
+  const topUp = levelCheck !== undefined && fill === undefined && procedure.fluidPoints.includes(levelCheck);
+  return (
+    <div className="space-y-6">
+      {inspection === undefined ? null : (
+        <InspectionEntry task={task} point={seen ?? { subject: inspection, kind: 'words' }} />
+      )}
+      {fill === undefined ? null : <FillEntry task={task} point={fill} />}
+      {torque === undefined ? null : <TorqueEntry task={task} fastener={torque} />}
+      {part === undefined ? null : <PartEntry task={task} part={part} />}
+      {levelCheck === undefined ? null : <LevelCheckEntry task={task} point={levelCheck} />}
+      {topUp && procedure.holdPoints.some(({ records: one }) => one?.fill === levelCheck) ? (
+        <FillEntry task={task} point={levelCheck} />
+      ) : null}
+    </div>
+  );
+}
+
+/** What a procedure records that none of its hold points asks for. */
+export function recordsBesideHoldPoints(procedure: Procedure): NonNullable<HoldPoint['records']>[] {
+  const asked = procedure.holdPoints.map(({ records }) => records ?? {});
+  const isAsked = (kind: keyof NonNullable<HoldPoint['records']>, key: string) =>
+    asked.some((one) => one[kind] === key);
+  return [
+    ...procedure.fluidPoints.filter((key) => !isAsked('fill', key)).map((fill) => ({ fill })),
+    ...procedure.inspections
+      .filter(({ subject }) => !isAsked('inspection', subject))
+      .map(({ subject }) => ({ inspection: subject })),
+    ...procedure.fasteners.filter((key) => !isAsked('torque', key)).map((torque) => ({ torque })),
+    ...procedure.parts.filter((key) => !isAsked('part', key)).map((part) => ({ part })),
+    ...procedure.levelChecks.filter((key) => !isAsked('levelCheck', key)).map((levelCheck) => ({ levelCheck })),
+  ];
+}
