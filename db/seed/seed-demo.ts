@@ -85,7 +85,7 @@ async function makePeople(): Promise<People> {
 async function makeShop(cast: People): Promise<string> {
   const input = { name: 'Halyard Cycle Works', address: '3 Ropewalk, Millbrook', registration: 'MB-1188' };
   const shop = await createShop({ person: cast.shop, input });
-  await confirmShop({ person: cast.steward, shop: shop.id });
+  await confirmShop({ person: cast.steward, shopId: shop.id });
   return shop.id;
 }
 
