@@ -1,6 +1,7 @@
 'use client';
 
 import { useState } from 'react';
+import { Checkbox } from '@/components/ui/checkbox';
 import { TextInput, type TextInputProps } from '@/components/ui/text-input';
 
 export type PasswordInputProps = Omit<TextInputProps, 'type' | 'defaultValue' | 'value'>;
@@ -17,15 +18,12 @@ export function PasswordInput(props: PasswordInputProps) {
         autoCorrect="off"
         spellCheck={false}
       />
-      <label className="mt-1 inline-flex min-h-11 items-center gap-2.5">
-        <input
-          type="checkbox"
-          checked={isShown}
-          onChange={(event) => setShown(event.target.checked)}
-          className="size-5 accent-petrol"
-        />
-        <span className="tag">Show what I type</span>
-      </label>
+      <Checkbox
+        label={<span className="tag">Show what I type</span>}
+        checked={isShown}
+        onChange={(event) => setShown(event.target.checked)}
+        className="mt-1"
+      />
     </div>
   );
 }

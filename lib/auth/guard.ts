@@ -1,6 +1,4 @@
 import 'server-only';
-// Not from 'next/navigation': that brings client code, which scripts and tests of the services cannot load.
-import { notFound as nextNotFound } from 'next/dist/client/components/not-found.js';
 import { findRelation, type PersonRow, type RelationRow } from '@/db/queries/people';
 import { WitnessmarkError } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';

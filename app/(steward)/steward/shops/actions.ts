@@ -10,7 +10,7 @@ import { confirmShop } from '@/lib/services/confirm-shop';
 export const confirmShopAction = formAction(
   { schema: z.object({ shop: idField }), access: 'steward' },
   async ({ input, person }) => {
-    await confirmShop({ person, shop: input.shop });
+    await confirmShop({ person, shopId: input.shop });
     revalidatePath(paths.stewardShops);
     return { message: 'Confirmed.' };
   },

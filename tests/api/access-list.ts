@@ -1,0 +1,112 @@
+import type { AccessWorld } from './access-world';
+
+/** Everybody there is, seen from one machine, its owner's shelf, one shop and the installation. */
+export const kinds = ['anonymous', 'stranger', 'helper', 'owner', 'technician', 'steward'] as const;
+export type Kind = (typeof kinds)[number];
+
+const everybody: readonly Kind[] = kinds;
+const signedIn: readonly Kind[] = ['stranger', 'helper', 'owner', 'technician', 'steward'];
+const ridersOfTheMachine: readonly Kind[] = ['helper', 'owner'];
+const ownerOnly: readonly Kind[] = ['owner'];
+const stewardOnly: readonly Kind[] = ['steward'];
+
+interface Reach {
+  who: readonly Kind[];
+  /** For what is guarded by an object: the address (and form or body) that names it. */
+  at?: (world: AccessWorld) => string;
+}
+interface RouteReach extends Reach {
+  json?: (world: AccessWorld) => unknown;
+}
+interface ActionReach {
+  who: readonly Kind[];
+  /** A page that uses the action. */
+  on: (world: AccessWorld) => string;
+  /** Good enough to reach the question of access; a form that is refused before it would prove nothing. */
+  form?: (world: AccessWorld) => Record<string, string>;
+}
+
+/** By file under app/. An address without brackets follows from the file. */
+export const pages: Record<string, Reach> = {
+  'page.tsx': { who: everybody },
+  'garage/page.tsx': { who: everybody },
+  '(public)/sign-up/page.tsx': { who: everybody },
+  '(public)/sign-in/page.tsx': { who: everybody },
+  '(public)/check-mail/page.tsx': { who: everybody },
+  '(public)/forgot-password/page.tsx': { who: everybody },
+  '(public)/confirm-email/[token]/page.tsx': { who: everybody, at: () => '/confirm-email/no-such-token' },
+  '(public)/reset-password/[token]/page.tsx': { who: everybody, at: () => '/reset-password/no-such-token' },
+  '(rider)/start/page.tsx': { who: signedIn },
+  '(rider)/account/page.tsx': { who: signedIn },
+  '(rider)/machines/new/page.tsx': { who: signedIn },
+  '(rider)/worksheets/[worksheet]/review/page.tsx': {
+    who: ridersOfTheMachine,
+    at: ({ worksheet }) => `/worksheets/${worksheet}/review`,
+  },
+  '(steward)/steward/page.tsx': { who: stewardOnly },
+  '(steward)/steward/shops/page.tsx': { who: stewardOnly },
+  '(steward)/steward/mail/page.tsx': { who: stewardOnly },
+  '(steward)/steward/mail/[name]/page.tsx': { who: stewardOnly, at: ({ mail }) => `/steward/mail/${mail}` },
+};
+
+/** By method and file under app/. */
+export const routes: Record<string, RouteReach> = {
+  'GET api/garage/route.ts': { who: signedIn },
+  'POST api/drafts/route.ts': {
+    who: ridersOfTheMachine,
+    json: ({ machine }) => ({ id: crypto.randomUUID(), kind: 'worksheet', subject: machine }),
+  },
+  'GET api/drafts/[draft]/route.ts': { who: ridersOfTheMachine, at: ({ worksheet }) => `/api/drafts/${worksheet}` },
+  'POST api/drafts/[draft]/route.ts': {
+    who: ridersOfTheMachine,
+    at: ({ worksheet }) => `/api/drafts/${worksheet}`,
+    json: () => ({ changes: [] }),
+  },
+  'PATCH api/drafts/[draft]/route.ts': {
+    who: ridersOfTheMachine,
+    at: ({ worksheet }) => `/api/drafts/${worksheet}`,
+    json: ({ machine }) => ({ subject: machine }),
+  },
+  'DELETE api/drafts/[draft]/route.ts': {
+    who: ridersOfTheMachine,
+    at: ({ discarded }) => `/api/drafts/${discarded}`,
+  },
+  'POST api/drafts/[draft]/confirm-receipt/route.ts': {
+    who: ownerOnly,
+    at: ({ receipt }) => `/api/drafts/${receipt}/confirm-receipt`,
+    json: () => ({}),
+  },
+  'POST api/uploads/route.ts': {
+    who: ridersOfTheMachine,
+    at: ({ worksheet }) => `/api/uploads?id=${crypto.randomUUID()}&draft=${worksheet}&name=plate.jpg`,
+  },
+  'GET api/files/[sha256]/[kind]/route.ts': {
+    who: ridersOfTheMachine,
+    at: ({ machine, plate }) => `/api/files/${plate}/copy?for=${machine}`,
+  },
+};
+
+/** By file under app/ and exported name. */
+export const actions: Record<string, ActionReach> = {
+  '(public)/sign-up/actions.ts signUpAction': { who: everybody, on: () => '/sign-up' },
+  '(public)/sign-in/actions.ts signInAction': { who: everybody, on: () => '/sign-in' },
+  '(public)/sign-in/actions.ts signOutAction': { who: everybody, on: () => '/account' },
+  '(public)/forgot-password/actions.ts forgotPasswordAction': { who: everybody, on: () => '/forgot-password' },
+  '(public)/confirm-email/[token]/actions.ts confirmEmailAction': {
+    who: everybody,
+    on: () => '/confirm-email/no-such-token',
+  },
+  '(public)/reset-password/[token]/actions.ts resetPasswordAction': {
+    who: everybody,
+    on: () => '/reset-password/no-such-token',
+  },
+  '(rider)/account/actions.ts changeAccountAction': { who: signedIn, on: () => '/account' },
+  '(rider)/account/actions.ts changePasswordAction': { who: signedIn, on: () => '/account' },
+  '(rider)/account/actions.ts endOneAction': { who: signedIn, on: () => '/account' },
+  '(rider)/account/actions.ts endOthersAction': { who: signedIn, on: () => '/account' },
+  '(steward)/steward/shops/actions.ts confirmShopAction': {
+    who: stewardOnly,
+    on: () => '/steward/shops',
+    form: ({ shop }) => ({ shop }),
+  },
+};

@@ -1,0 +1,136 @@
+import { execFileSync } from 'node:child_process';
+import { chmodSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import path from 'node:path';
+import { NextRequest } from 'next/server';
+import { beforeAll, describe, expect, it, vi } from 'vitest';
+import { GET as getHealth } from '@/app/api/health/route';
+import { GET as getKeys } from '@/app/api/log-keys/route';
+import { GET as getCheckpoint } from '@/app/api/logs/[log]/checkpoint/route';
+import { GET as getRoot } from '@/app/api/time-stamp/root.pem/route';
+import { POST as postTimeStamp } from '@/app/api/time-stamp/route';
+import { env } from '@/lib/env';
+import { parseCheckpoint, parseNote, verifyNote } from '@/lib/evidence/checkpoint';
+import { startServerWork } from '@/lib/services/start-server-work';
+import { sealRecord } from '../setup/sealed-record';
+import { useTestDatabase } from '../setup/test-database';
+
+// Nobody is signed in; Next's cookies exist only inside its server.
+vi.mock('next/navigation', () => ({ unstable_rethrow: () => {} }));
+vi.mock('@/lib/auth/session', () => ({ currentPerson: async () => null }));
+
+useTestDatabase();
+
+const get = (address: string) => new NextRequest(`http://localhost:3000${address}`);
+const noParams = { params: Promise.resolve({}) };
+const post = (body: Uint8Array, headers: Record<string, string>) =>
+  postTimeStamp(
+    new NextRequest('http://localhost:3000/api/time-stamp', { method: 'POST', body: new Uint8Array(body), headers }),
+    noParams,
+  );
+const query = { 'content-type': 'application/timestamp-query' };
+
+describe('the published keys and checkpoints', () => {
+  it('let anybody check the newest note of a log', async () => {
+    const { machine } = await sealRecord();
+    const keys = (await (await getKeys(get('/api/log-keys'), noParams)).json()) as { keys: { verifierKey: string }[] };
+    const params = { params: Promise.resolve({ log: machine.log }) };
+    const response = await getCheckpoint(get(`/api/logs/${machine.log}/checkpoint`), params);
+    expect(response.headers.get('content-type')).toBe('text/plain; charset=utf-8');
+    const note = await response.text();
+    expect(verifyNote(note, keys.keys[0]?.verifierKey ?? '')).toBe(true);
+    expect(parseCheckpoint(parseNote(note).text)).toMatchObject({ log: machine.log, size: 3, origin: env.origin });
+  });
+
+  it.each(['6f1c2a34-0000-4000-8000-000000000001', 'x', '../keys/log.pem'])(
+    'answer “not found” for the log %s',
+    async (log) => {
+      const response = await getCheckpoint(get('/api/logs/x/checkpoint'), { params: Promise.resolve({ log }) });
+      expect(response.status).toBe(404);
+      expect(response.headers.get('content-type')).toBe('application/problem+json');
+    },
+  );
+});
+
+describe('the test authority over HTTP', () => {
+  it('answers what OpenSSL asks, and OpenSSL accepts it under the published root', async () => {
+    const at = (name: string) => path.join(env.dataFolder, name);
+    writeFileSync(at('data'), 'a note');
+    execFileSync('openssl', ['ts', '-query', '-data', at('data'), '-sha256', '-cert', '-out', at('q')], {
+      stdio: 'ignore',
+    });
+    // Sent from another program: no Origin, no Sec-Fetch-Site.
+    const response = await post(readFileSync(at('q')), query);
+    expect(response.headers.get('content-type')).toBe('application/timestamp-reply');
+    writeFileSync(at('r'), new Uint8Array(await response.arrayBuffer()));
+    writeFileSync(at('root.pem'), await (await getRoot(get('/api/time-stamp/root.pem'), noParams)).text());
+    const parts = ['ts', '-verify', '-queryfile', at('q'), '-in', at('r'), '-CAfile', at('root.pem')];
+    expect(execFileSync('openssl', parts, { encoding: 'utf8', stdio: 'pipe' })).toContain('OK');
+  });
+
+  it('refuses another media type, and takes 4096 bytes but not one more', async () => {
+    expect((await post(new Uint8Array(10), { 'content-type': 'application/json' })).status).toBe(415);
+    expect((await post(new Uint8Array(4096), query)).status).toBe(200);
+    expect((await post(new Uint8Array(4097), query)).status).toBe(413);
+  });
+});
+
+describe('the health of the server', () => {
+  beforeAll(() => startServerWork());
+
+  it('is good when database, folder and key can be used', async () => {
+    const response = await getHealth(get('/api/health'), noParams);
+    expect(response.status).toBe(200);
+    expect(await response.json()).toEqual({
+      ok: true,
+      database: 'ok',
+      storage: 'ok',
+      signingKey: 'ok',
+      checkpoints: 'ok',
+    });
+  });
+
+  it('is bad, without saying why to strangers, when the database has no schema', async () => {
+    const errors = vi.spyOn(console, 'error').mockImplementation(() => {});
+    const { database } = await import('@/db/index');
+    await database().query('ALTER TABLE logs RENAME TO logs_away');
+    const response = await getHealth(get('/api/health'), noParams);
+    await database().query('ALTER TABLE logs_away RENAME TO logs');
+    expect(response.status).toBe(503);
+    expect(await response.json()).toMatchObject({ ok: false, database: 'failed', storage: 'ok' });
+    expect(errors).toHaveBeenCalledWith('The database does not answer.', expect.anything());
+  });
+});
+
+describe('the start of the server', () => {
+  const restart = async () => {
+    vi.resetModules();
+    delete (globalThis as { witnessmarkServerWork?: unknown }).witnessmarkServerWork;
+    const { startServerWork: start } = await import('@/lib/services/start-server-work');
+    return start();
+  };
+
+  it('fails with a sentence when others can read the signing key', async () => {
+    const file = path.join(env.dataFolder, 'keys', 'log.pem');
+    chmodSync(file, 0o644);
+    await expect(restart()).rejects.toThrow('has mode 0644');
+    chmodSync(file, 0o600);
+    await expect(restart()).resolves.toBeUndefined();
+  });
+
+  it('says which log is behind, and health says so too', async () => {
+    const errors = vi.spyOn(console, 'error').mockImplementation(() => {});
+    const { machine } = await sealRecord();
+    const file = path.join(env.dataFolder, 'checkpoints', `${machine.log}.note`);
+    const other = '6f1c2a34-0000-4000-8000-000000000001';
+    // A checkpoint of a log that the database no longer knows.
+    const { signNote, checkpointText } = await import('@/lib/evidence/checkpoint');
+    const { signerNamed } = await import('@/lib/services/log-keys');
+    const text = checkpointText({ origin: env.origin, log: other, size: 2, root: 'a'.repeat(64) });
+    writeFileSync(file.replace(machine.log, other), signNote(text, signerNamed(env.origin)));
+    await restart();
+    expect(errors).toHaveBeenCalledWith(expect.stringContaining(`0 entries of log ${other}, but 2 were given out`));
+    const response = await getHealth(get('/api/health'), noParams);
+    expect(await response.json()).toMatchObject({ ok: false, checkpoints: 'failed' });
+    rmSync(file.replace(machine.log, other));
+  });
+});
