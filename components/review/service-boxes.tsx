@@ -42,7 +42,7 @@ function workDone({ startedAt, finishedAt }: ServiceBody): string {
 }
 
 /** The measurements of an entry: when, at which odometer, what went in and how much. */
-export function ServiceBoxes({ body, performedBy }: { body: ServiceBody; performedBy: string[] }) {
+export function ServiceBoxes({ body }: { body: ServiceBody }) {
   const fills = body.tasks.flatMap((task) => task.fills);
   return (
     <Boxes columns={3} label="The work">
@@ -63,9 +63,9 @@ export function ServiceBoxes({ body, performedBy }: { body: ServiceBody; perform
         </Box>
       )}
       <Box label="Done by">
-        {performedBy.map((name) => (
-          <span key={name} className="block">
-            <UserText>{name}</UserText>
+        {body.performedBy.map(({ person, capacity }) => (
+          <span key={`${person} ${capacity}`} className="block">
+            <UserText>{person}</UserText>, {capacity}
           </span>
         ))}
       </Box>

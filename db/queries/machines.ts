@@ -24,8 +24,13 @@ export async function machinesOf(
 }
 
 /** Who stands in a relation to a machine or a shelf now. */
-export function relationsOf(subjectKind: 'machine' | 'shelf', subjectId: string): Promise<RelationRow[]> {
-  return relations.all({ subjectKind, subjectId, until: null }, { order: [['since', 'ASC']] });
+export function relationsOf(
+  subjectKind: 'machine' | 'shelf',
+  subjectId: string,
+  transaction?: Transaction,
+): Promise<RelationRow[]> {
+  const options = transaction ? { transaction } : {};
+  return relations.all({ subjectKind, subjectId, until: null }, { order: [['since', 'ASC']], ...options });
 }
 
 export async function insertMachine(machine: MachineRow, owner: RelationRow, transaction: Transaction): Promise<void> {

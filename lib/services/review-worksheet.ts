@@ -1,0 +1,61 @@
+import 'server-only';
+import { findLogOf, readHead } from '@/db/queries/logs';
+import type { PersonRow } from '@/db/models/people';
+import { standingOf } from '@/lib/auth/guard';
+import { notFound } from '@/lib/errors';
+import { paths } from '@/lib/paths';
+import { now } from '@/lib/ports/clock';
+import { composeWorksheet, type ComposedWorksheet } from './compose-worksheet';
+import { demandDraft, refuseClosed } from './draft-access';
+import { machineName } from './list-machines';
+
+export interface Problem {
+  field: string;
+  sentence: string;
+  /** Leads to the screen of the worksheet where it is put right. */
+  href: string;
+}
+export interface WorksheetReview {
+  worksheet: string;
+  machine: { id: string; name: string };
+  /** Set once it is sealed: there is nothing left to review. */
+  sealedAs: number | null;
+  /** The number the entry would have now. */
+  nextSeq: number;
+  composed: ComposedWorksheet | null;
+  problems: Problem[];
+  mayISeal: boolean;
+}
+
+/** The screen of the offline shell that holds a field. */
+function screenOf(field: string): string {
+  const task = /^tasks\/([^/]+)/.exec(field)?.[1];
+  if (task !== undefined) return task;
+  if (field === 'tasks') return 'tasks';
+  return /^(startedAt|finishedAt|zone|odometer|engineHours|performedBy|recorded)/.test(field) ? 'times' : 'summary';
+}
+
+/** The entry exactly as it would be sealed now, and what keeps it from being sealed. */
+export async function reviewWorksheet(options: { person: PersonRow; draftId: string }): Promise<WorksheetReview> {
+  const { person, draftId } = options;
+  const draft = await demandDraft({ person, draftId });
+  const log = await findLogOf(draft.subjectId);
+  if (draft.kind !== 'worksheet' || log === null) throw notFound('worksheet');
+  if (draft.state === 'discarded') throw refuseClosed(draft);
+  const head = await readHead(log.id);
+  const composed = draft.state === 'open' ? await composeWorksheet({ draft, person, at: now().toISOString() }) : null;
+  const { machine } = await standingOf(person, { machine: draft.subjectId });
+  return {
+    worksheet: draftId,
+    machine: { id: draft.subjectId, name: composed === null ? '' : machineName(composed.machine) },
+    sealedAs: draft.state === 'sealed' ? draft.sealedSeq : null,
+    nextSeq: (head?.lastEntry?.seq ?? -1) + 1,
+    composed,
+    problems: Object.entries(composed?.problems ?? {}).map(([field, sentence]) => ({
+      field,
+      sentence,
+      href: `${paths.worksheet(draftId)}/${screenOf(field)}`,
+    })),
+    mayISeal: machine === 'owner',
+  };
+}
