@@ -42,3 +42,8 @@ export function findCheckpoint(log: string, size: number, options: In = {}): Pro
 export async function markTimesInjected(log: string, transaction: Transaction): Promise<void> {
   await logs.update({ id: log }, { timesInjected: true }, { transaction });
 }
+
+/** Throws unless the database answers and has its schema. */
+export async function demandDatabase(): Promise<void> {
+  await logs.count();
+}
