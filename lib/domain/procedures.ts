@@ -282,7 +282,7 @@ export function procedureFor(key: string): Procedure {
 /**
  * The procedure that does a schedule item, if there is one.
  *
- * @example procedureOfItem('brake-fluid')?.key // 'front-brake'
+ * @example procedureOfItem('front-brake-fluid')?.key // 'front-brake'
  */
 export function procedureOfItem(item: string): Procedure | undefined {
   return procedures.find(({ scheduleItems }) => scheduleItems.includes(item));
