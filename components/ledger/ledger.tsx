@@ -13,7 +13,7 @@ export function Ledger({ label, children }: LedgerProps) {
     <ol
       role="list"
       aria-label={label}
-      className="relative border border-line bg-sheet before:absolute before:inset-y-0 before:left-11 before:w-px before:bg-margin lg:before:left-16"
+      className="relative border border-line bg-sheet before:absolute before:inset-y-0 before:left-11 before:border-l before:border-margin lg:before:left-16"
     >
       {children}
     </ol>

@@ -20,8 +20,7 @@ export function Thumb({ src, alt, kind }: ThumbProps) {
       </span>
     );
   return (
-    // Thumbnails are made at upload, at the size they are shown in.
-    // eslint-disable-next-line @next/next/no-img-element
+    // A plain img: thumbnails are made at upload, at the size they are shown in.
     <img
       src={src}
       alt={alt}

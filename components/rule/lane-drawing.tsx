@@ -1,6 +1,7 @@
 import { useId } from 'react';
 import { percentAt, type RuleFlag } from './layout';
-import { FlagLines, type Span } from './rule-parts';
+import { FlagLines, leastRulePx, wideRulePx, type Span } from './rule-parts';
+import { textWidthPx } from './text-width';
 
 export interface LaneMark {
   at: number;
@@ -30,6 +31,14 @@ export interface LaneDrawingProps {
 const heightPx = 46;
 const midPx = 25;
 const hatchPx = 20;
+const notchPx = 12;
+
+/** An interval's words appear only where they fit between their notches; a phone leaves them to the record. */
+function intervalClasses(percent: number, text: string): string | null {
+  const neededPx = textWidthPx(text, 14) + notchPx;
+  if ((percent / 100) * leastRulePx >= neededPx) return 'hidden @2xl:inline';
+  return (percent / 100) * wideRulePx >= neededPx ? 'hidden @4xl:inline' : null;
+}
 
 /** One lane: ridden up to now, notches where the work was done, the limit hatched. */
 export function LaneDrawing({ span, now, done, limit, isOver, intervals, flags }: LaneDrawingProps) {
@@ -61,17 +70,22 @@ export function LaneDrawing({ span, now, done, limit, isOver, intervals, flags }
           fill={`url(#${hatch})`}
         />
       ) : null}
-      {intervals.map(({ from, to, text, isLate }) => (
-        <text
-          key={`${from} ${to}`}
-          x={`${(percentAt(from, span.from, span.to) + percentAt(to, span.from, span.to)) / 2}%`}
-          y={midPx - 8}
-          textAnchor="middle"
-          className={`hidden text-sm @2xl:inline ${isLate ? 'fill-gap font-semibold' : 'fill-soft'}`}
-        >
-          {text}
-        </text>
-      ))}
+      {intervals.map(({ from, to, text, isLate }) => {
+        const [start, end] = [percentAt(from, span.from, span.to), percentAt(to, span.from, span.to)];
+        const shown = intervalClasses(end - start, text);
+        if (shown === null) return null;
+        return (
+          <text
+            key={`${from} ${to}`}
+            x={`${(start + end) / 2}%`}
+            y={midPx - 8}
+            textAnchor="middle"
+            className={`text-sm ${shown} ${isLate ? 'fill-gap font-semibold' : 'fill-soft'}`}
+          >
+            {text}
+          </text>
+        );
+      })}
       {done.map(({ at, title, isLate }) => (
         <svg key={`${at} ${title}`} x={x(at)} y={midPx - 11} className="overflow-visible">
           <title>{title}</title>

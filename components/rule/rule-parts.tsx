@@ -9,6 +9,9 @@ export interface Span {
 /** The narrowest a rule gets: a phone of 320 px less the margins of page and sheet. */
 export const leastRulePx = 264;
 
+/** The narrowest a rule gets on a desk, between its two columns of words. */
+export const wideRulePx = 480;
+
 const tickHeights = { major: 20, mid: 13, minor: 7 } as const;
 const bandHeightPx = 36;
 

@@ -2,7 +2,7 @@ import Link from 'next/link';
 import { classes } from '@/components/ui/classes';
 import { LaneDrawing, type LaneInterval, type LaneMark } from './lane-drawing';
 import type { RuleFlag } from './layout';
-import { EngravedBand, FlagStrip, leastRulePx, type Span } from './rule-parts';
+import { EngravedBand, FlagStrip, leastRulePx, wideRulePx, type Span } from './rule-parts';
 import { ruleTicks, type RuleTick } from '@/lib/domain/rule-ticks';
 
 export type { LaneInterval, LaneMark, RuleFlag };
@@ -57,7 +57,7 @@ export function SteelRule({ label, unit, from, to: end, now, lanes, flags, ticks
           <FlagStrip span={span} flags={flags} leastPx={leastRulePx} />
         </div>
         <div className="col-start-2 hidden @4xl:block">
-          <FlagStrip span={span} flags={flags} leastPx={480} />
+          <FlagStrip span={span} flags={flags} leastPx={wideRulePx} />
         </div>
       </div>
       {flags.length > 0 ? (

@@ -35,7 +35,7 @@ export function AppShell(props: AppShellProps) {
         <main
           id="content"
           tabIndex={-1}
-          className="mx-auto max-w-[72rem] px-4 pt-5 pb-32 outline-none md:px-9 md:pt-8 lg:mx-0 lg:pb-16 print:p-0"
+          className="mx-auto max-w-[72rem] px-4 pt-5 pb-32 outline-none md:px-9 md:pt-8 lg:mx-0 lg:pb-16 print:p-px"
         >
           {children}
         </main>
@@ -63,7 +63,7 @@ export function AppShell(props: AppShellProps) {
 function Spine(props: AppShellProps) {
   const { machine, machines, person, current } = props;
   return (
-    <div className="on-spine not-printed hidden bg-spine text-spine-ink lg:block">
+    <header className="on-spine not-printed hidden bg-spine text-spine-ink lg:block">
       <div className="sticky top-0 flex h-dvh flex-col overflow-y-auto pt-4 pb-4">
         <div className="px-5">
           <Word href={paths.start} />
@@ -81,7 +81,7 @@ function Spine(props: AppShellProps) {
         </nav>
         <PersonLinks person={person} current={current} className="mt-auto pt-6" />
       </div>
-    </div>
+    </header>
   );
 }
 

@@ -6,8 +6,11 @@ const words = { demo: 'Demo: everything here is invented', 'demo-times-injected'
 export function DemoStrip({ demo }: { demo: Demo }) {
   if (demo === 'none') return null;
   return (
-    <p role="note" className="border-b border-line bg-steel px-4 py-0.5 text-center text-sm font-medium text-ink">
+    <aside
+      aria-label="About this installation"
+      className="border-b border-line bg-steel px-4 py-0.5 text-center text-sm font-medium text-ink"
+    >
       {words[demo]}
-    </p>
+    </aside>
   );
 }

@@ -24,7 +24,7 @@ export function MachineList({ machine, machines }: MachineSwitcherProps) {
             className="flex min-h-11 items-center px-4 py-2 aria-[current=true]:font-semibold hover:bg-spine-here lg:px-5"
           >
             <UserText>{name}</UserText>
-            {id === machine?.id ? <span className="pl-1.5 text-spine-soft">, here</span> : null}
+            {id === machine?.id ? <span className="text-spine-soft">, here</span> : null}
           </Link>
         </li>
       ))}

@@ -28,7 +28,7 @@ export function ReaderShell({ words, demo, actions, children }: ReaderShellProps
       <main
         id="content"
         tabIndex={-1}
-        className="mx-auto max-w-[72rem] px-4 pt-6 pb-16 outline-none md:px-9 md:pt-9 print:p-0"
+        className="mx-auto max-w-[72rem] px-4 pt-6 pb-16 outline-none md:px-9 md:pt-9 print:p-px"
       >
         {children}
       </main>

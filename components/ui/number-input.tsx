@@ -29,9 +29,8 @@ export type NumberInputProps = Omit<ComponentPropsWithRef<'input'>, 'size' | 'ty
  * wheel and drop what it cannot parse.
  */
 export function NumberInput(props: NumberInputProps) {
-  const { label, hint, error, isOptional, id, className, size, unit, units, unitName, unitValue, defaultUnit } = props;
-  const { onUnitChange, isWhole, ...rest } = props;
-  const input = withoutFieldProps(rest);
+  const { label, hint, error, isOptional, id, className, size, isWhole, ...others } = props;
+  const { unit, units, unitName, unitValue, defaultUnit, onUnitChange, ...input } = others;
   const isBig = size === 'big';
   return (
     <div className={className}>
@@ -92,12 +91,4 @@ function UnitInLabel({ label, unit }: { label: NumberInputProps['label']; unit: 
       <span className="sr-only">, in {unit}</span>
     </>
   );
-}
-
-function withoutFieldProps(props: Omit<NumberInputProps, 'onUnitChange' | 'isWhole'>) {
-  const own = ['label', 'hint', 'error', 'isOptional', 'id', 'className', 'size', 'unit', 'units', 'unitName'];
-  const ownToo = ['unitValue', 'defaultUnit'];
-  return Object.fromEntries(
-    Object.entries(props).filter(([key]) => !own.includes(key) && !ownToo.includes(key)),
-  ) as ComponentPropsWithRef<'input'>;
 }
