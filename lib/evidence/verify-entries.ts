@@ -103,7 +103,7 @@ export function remarkOnWithheld(logs: OpenedLog[], findings: Findings): void {
   const count = [...names.values()].reduce((total, one) => total + one, 0);
   if (count === 0) return;
   const list = [...names].map(([name, times]) => `${name} ${times}×`).join(', ');
-  findings.remark('withheld', `${count} parts are withheld: ${list}.`, { count });
+  findings.remark('withheld', `${count} ${count === 1 ? 'part is' : 'parts are'} withheld: ${list}.`, { count });
 }
 
 /** By seq: the earliest genTime on this line's seal or any later one, since a later root covers every line before it. */

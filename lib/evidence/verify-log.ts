@@ -1,4 +1,3 @@
-import { fromBase64 } from '@/lib/evidence/bytes';
 import { type Checkpoint, parseCheckpoint } from '@/lib/evidence/checkpoint';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
 import type { Stamp } from '@/lib/evidence/finding';
@@ -7,9 +6,7 @@ import { type BundleLog, type Leaf, machineKinds, shelfKinds } from '@/lib/evide
 import { checkNote, type KeyRing } from '@/lib/evidence/key-ring';
 import { leafHash, parseLeaf } from '@/lib/evidence/leaf';
 import { CompactTree } from '@/lib/evidence/merkle';
-import { isTokenOf, readToken } from '@/lib/evidence/token';
-
-const maxTokensPerSeal = 16;
+import { readStamps } from '@/lib/evidence/verify-stamps';
 
 /** One line of a log after its walk. */
 export interface WalkedLine {
@@ -35,32 +32,104 @@ export interface WalkedLog {
 export function walkLog(source: BundleLog, ring: KeyRing, findings: Findings): WalkedLog {
   const tree = new CompactTree();
   const lines: WalkedLine[] = [];
+  const mismatches: Mismatch[] = [];
+  let shift = 0;
+  let hasMoved = false;
   for (const [seq, entry] of source.entries.entries()) {
     const place = { log: source.id, seq };
     const leaf = readLeaf(entry.leaf, source, seq, findings);
-    const before = lines[seq - 1];
     const hash = leafHash(entry.leaf);
     tree.append(hash);
-    if (leaf !== null) {
-      if (leaf.seq === seq && leaf.previous !== (before?.hash ?? null)) {
-        const sentence = `Entry ${seq} does not follow from the entry before it: one of the two was changed or exchanged.`;
-        findings.alter(
-          'chain-broken',
-          place,
-          sentence,
-          `previous is ${leaf.previous}, expected ${before?.hash ?? null}`,
-        );
-      }
-      if (before?.leaf != null && leaf.sealedAt < before.leaf.sealedAt) {
-        const sentence = `Entry ${seq} says it was sealed before the entry that stands before it.`;
-        findings.alter('time-order', place, sentence, `${leaf.sealedAt} after ${before.leaf.sealedAt}`);
-      }
-    }
-    checkSignedRoot(entry.seal.checkpoint, source, seq + 1, tree.root, ring, findings, seq);
+    // One gap moves every later line: it is reported where it is, not again at each of them.
+    const isNewShift = leaf !== null && leaf.seq - seq !== shift;
+    if (leaf !== null) shift = leaf.seq - seq;
+    hasMoved ||= shift !== 0;
+    if (isNewShift && shift !== 0) reportMoved(leaf.seq, place, findings);
+    if (leaf !== null) checkLink(leaf, lines[seq - 1], place, findings);
+    const seal = readSeal(entry.seal.checkpoint, source, ring, findings, seq);
+    const mismatch = seal && whyNotThisTree(seal, tree, seal.size === seq + 1 + shift ? shift : 0);
+    if (mismatch) mismatches.push({ seq, technical: mismatch });
     lines.push({ seq, hash, leaf, stamps: readStamps(entry.seal, place, seq + 1, findings) });
   }
-  const checkpoint = checkSignedRoot(source.checkpoint, source, lines.length, tree.root, ring, findings);
+  const checkpoint = readSeal(source.checkpoint, source, ring, findings);
+  const last = checkpoint && checkSize(checkpoint, source, tree, findings);
+  reportMismatches(source, mismatches, last, hasMoved, findings);
   return { source, lines, checkpoint };
+}
+
+interface Mismatch {
+  seq: number;
+  technical: string;
+}
+
+function checkLink(
+  leaf: Leaf,
+  before: WalkedLine | undefined,
+  place: { log: string; seq: number },
+  findings: Findings,
+): void {
+  // A line out of its place is reported as such; that its link does not fit says nothing more.
+  if (leaf.seq === place.seq && leaf.previous !== (before?.hash ?? null)) {
+    const sentence = `Entry ${place.seq} does not follow from the entry before it: one of the two was changed or exchanged.`;
+    findings.alter('chain-broken', place, sentence, `previous is ${leaf.previous}, expected ${before?.hash ?? null}`);
+  }
+  if (before?.leaf != null && leaf.sealedAt < before.leaf.sealedAt) {
+    const sentence = `Entry ${place.seq} says it was sealed before the entry that stands before it.`;
+    findings.alter('time-order', place, sentence, `${leaf.sealedAt} after ${before.leaf.sealedAt}`);
+  }
+}
+
+function reportMoved(found: number, place: { log: string; seq: number }, findings: Findings): void {
+  const isGap = found > place.seq;
+  const sentence = `Where entry ${place.seq} must stand, entry ${found} stands.`;
+  findings.alter(
+    isGap ? 'entries-missing' : 'chain-broken',
+    place,
+    isGap ? `Entries are missing. ${sentence}` : sentence,
+    `seq is ${found}, expected ${place.seq}`,
+  );
+}
+
+/** A seal whose size says it moved together with its line is not compared: the move is reported already. */
+function whyNotThisTree(seal: Checkpoint, tree: CompactTree, shift: number): string | null {
+  if (shift !== 0) return null;
+  if (seal.size !== tree.size) return `size ${seal.size}, expected ${tree.size}`;
+  return seal.root === tree.root ? null : `signed root ${seal.root}, recomputed ${tree.root}`;
+}
+
+/** The log's own signed root: what it says beside the tree, or null if it belongs to it or too few lines are here. */
+function checkSize(checkpoint: Checkpoint, log: BundleLog, tree: CompactTree, findings: Findings): string | null {
+  if (checkpoint.size <= tree.size) return whyNotThisTree(checkpoint, tree, 0);
+  const sentence = `Entries are missing: the ${log.subject}’s log had ${checkpoint.size} when it was signed, and ${tree.size} are here.`;
+  findings.alter('entries-missing', { log: log.id }, sentence, `size ${checkpoint.size}, expected ${tree.size}`);
+  return null;
+}
+
+/**
+ * If from one line on no seal belongs to the tree, and neither does the log's own root, that line was changed: it is
+ * named, and not every seal after it. Else each seal that does not belong is named by itself.
+ */
+function reportMismatches(
+  log: BundleLog,
+  mismatches: Mismatch[],
+  last: string | null,
+  hasMoved: boolean,
+  findings: Findings,
+): void {
+  const [first] = mismatches;
+  const reachTheEnd = first !== undefined && mismatches.length === log.entries.length - first.seq;
+  if (first !== undefined && reachTheEnd && last !== null && !hasMoved) {
+    const sentence = `Entry ${first.seq} was changed after it was sealed: from here on, no seal belongs to the entries as they stand.`;
+    findings.alter('leaf-changed', { log: log.id, seq: first.seq }, sentence, first.technical);
+  } else {
+    for (const { seq, technical } of mismatches) {
+      const sentence = `The seal of entry ${seq} does not belong to the entries as they stand here.`;
+      findings.alter('root-mismatch', { log: log.id, seq }, sentence, technical);
+    }
+  }
+  if (last === null) return;
+  const sentence = `What was signed for the ${log.subject}’s log as a whole does not belong to the entries as they stand here.`;
+  findings.alter('root-mismatch', { log: log.id }, sentence, last);
 }
 
 function readLeaf(text: string, log: BundleLog, seq: number, findings: Findings): Leaf | null {
@@ -90,23 +159,13 @@ function readLeaf(text: string, log: BundleLog, seq: number, findings: Findings)
       `log is ${leaf.log}, expected ${log.id}`,
     );
   }
-  if (leaf.seq !== seq) {
-    const code = leaf.seq > seq ? 'entries-missing' : 'chain-broken';
-    const sentence =
-      leaf.seq > seq
-        ? `Entries are missing: where entry ${seq} must stand, entry ${leaf.seq} stands.`
-        : `Where entry ${seq} must stand, entry ${leaf.seq} stands.`;
-    findings.alter(code, place, sentence, `seq is ${leaf.seq}, expected ${seq}`);
-  }
   return leaf;
 }
 
 /** `seq` names the entry whose seal this is; without it, it is the log's own checkpoint. */
-function checkSignedRoot(
+function readSeal(
   noteText: string,
   log: BundleLog,
-  size: number,
-  root: string,
   ring: KeyRing,
   findings: Findings,
   seq?: number,
@@ -131,47 +190,5 @@ function checkSignedRoot(
       `${checkpoint.origin}/${checkpoint.log} for ${log.origin}/${log.id}`,
     );
   }
-  if (checkpoint.size !== size) {
-    const isShort = seq === undefined && checkpoint.size > size;
-    const sentence = isShort
-      ? `Entries are missing: the ${log.subject}’s log had ${checkpoint.size} when it was signed, and ${size} are here.`
-      : `The seal of ${what} was made for a log of ${checkpoint.size} entries, not of ${size}.`;
-    findings.alter(
-      isShort ? 'entries-missing' : 'root-mismatch',
-      place,
-      sentence,
-      `size ${checkpoint.size}, expected ${size}`,
-    );
-  } else if (checkpoint.root !== root) {
-    const sentence = `The seal of ${what} does not belong to the entries as they stand here.`;
-    findings.alter('root-mismatch', place, sentence, `signed root ${checkpoint.root}, recomputed ${root}`);
-  }
   return checkpoint;
-}
-
-function readStamps(
-  seal: { checkpoint: string; tokens: string[] },
-  place: { log: string; seq: number },
-  size: number,
-  findings: Findings,
-): Stamp[] {
-  const stamps: Stamp[] = [];
-  if (seal.tokens.length > maxTokensPerSeal) {
-    const sentence = `Entry ${place.seq} carries more time stamps than any real one.`;
-    findings.alter('token-invalid', place, sentence, `${seal.tokens.length} tokens, at most ${maxTokensPerSeal}`);
-  }
-  for (const base64 of seal.tokens.slice(0, maxTokensPerSeal)) {
-    try {
-      const token = readToken(fromBase64(base64));
-      if (isTokenOf(token, seal.checkpoint)) {
-        stamps.push({ genTime: token.genTime, serial: token.serial, policy: token.policy, size });
-      } else {
-        const sentence = `A time stamp of entry ${place.seq} was made for something else.`;
-        findings.alter('token-invalid', place, sentence, 'the imprint is not SHA-256 of the signed checkpoint');
-      }
-    } catch (error) {
-      findings.alter('token-invalid', place, `A time stamp of entry ${place.seq} cannot be read.`, reasonOf(error));
-    }
-  }
-  return stamps;
 }

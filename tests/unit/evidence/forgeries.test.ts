@@ -49,7 +49,7 @@ const forgeries: [string, () => string, AlterationCode[]][] = [
       const [machine, shelf] = logs();
       return resigned({ logs: [{ ...machine, entries: machine.entries.filter((_, seq) => seq !== 1) }, shelf] });
     },
-    ['entries-missing', 'root-mismatch', 'reference-broken'],
+    ['entries-missing', 'reference-broken'],
   ],
   ['leaves out the whole shelf', () => resigned({ logs: [logs()[0]], files: [] }), ['reference-broken']],
   [
@@ -102,7 +102,7 @@ const forgeries: [string, () => string, AlterationCode[]][] = [
       entry.leaf = entry.leaf.replace('2026-04-18T23:32', '2026-04-08T23:32');
       return resigned({ logs: [machine, shelf] });
     },
-    ['root-mismatch', 'chain-broken', 'reference-broken'],
+    ['leaf-changed', 'root-mismatch', 'chain-broken', 'reference-broken'],
   ],
   [
     'writes a line down again with a blank in it',
@@ -112,7 +112,7 @@ const forgeries: [string, () => string, AlterationCode[]][] = [
       entry.leaf = entry.leaf.replace('{', '{ ');
       return resigned({ logs: [machine, shelf] });
     },
-    ['not-canonical', 'root-mismatch', 'chain-broken', 'reference-broken', 'file-unbound'],
+    ['not-canonical', 'leaf-changed', 'root-mismatch', 'chain-broken', 'reference-broken', 'file-unbound'],
   ],
   ['writes the whole file down again with blanks in it', () => JSON.stringify(good(), null, 1), ['not-canonical']],
   ['adds a member to the file', () => bundleText({ ...good(), note: '' } as Bundle), ['bundle-changed']],
@@ -302,6 +302,14 @@ it.each(forgeries)('a forger who %s is found out', (_, forge, expected) => {
   expect(new Set(codes)).toEqual(new Set(expected));
 });
 
+it('a changed line is named itself, and not every line after it', () => {
+  const [machine, shelf] = logs();
+  at(machine.entries, 1).leaf = at(machine.entries, 1).leaf.replace('08:02', '08:01');
+  const { alterations, entries } = verifyBundle({ bundleText: resigned({ logs: [machine, shelf] }), key });
+  expect(alterations.filter(({ code }) => code === 'leaf-changed')).toMatchObject([{ log: machineLog, seq: 1 }]);
+  expect(entries.map(({ problems }) => problems)).toEqual([[], ['leaf-changed'], ['chain-broken'], [], [], []]);
+});
+
 it('a file that lists no key cannot be called unchanged without a key', () => {
   expect(verifyBundle({ bundleText: resigned({ verifierKeys: [] }) })).toMatchObject({
     outcome: 'altered',
@@ -371,4 +379,4 @@ it('every finding has a sentence for whoever decides and a line for whoever look
       expect(technical).not.toBe('');
     }
   }
-});
+}, 120_000);
