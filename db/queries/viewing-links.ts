@@ -7,6 +7,9 @@ export type { PacketRow, ViewingLinkRow };
 export const findViewingLink = (id: string) => viewingLinks.find({ id });
 export const findViewingLinkByTokenHash = (tokenHash: string) => viewingLinks.find({ tokenHash });
 
+export const insertViewingLink = (row: ViewingLinkRow, transaction: Transaction) =>
+  viewingLinks.insert(row, { transaction });
+
 export const viewingLinksOfMachine = (machineId: string) =>
   viewingLinks.all({ machineId }, { order: [['createdAt', 'DESC']] });
 

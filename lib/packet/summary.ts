@@ -1,4 +1,5 @@
 import { adherenceOf, adherenceSummary, type AdherenceInterval, type AdherenceSummary } from '@/lib/domain/adherence';
+import { checkTitle } from '@/lib/domain/checks';
 import { delayInDays, localDateOf } from '@/lib/domain/instants';
 import { latestReading, type OdometerReading } from '@/lib/domain/odometer';
 import type { DoneService, MachineHistory } from '@/lib/domain/schedule-limits';
@@ -208,11 +209,16 @@ function usesOf(record: RecordView, services: ServiceEntry[]): UseSummary[] {
       uncovered: '',
     };
   });
-  const bare = uses.flatMap(({ what, uncovered, seq }) =>
-    uncovered === undefined
-      ? []
-      : [{ what, bought: 'no receipt', used: `${formatAmount(uncovered)}, entry ${seq}`, left: '', uncovered: 'gap' }],
+  const without = uses.flatMap(({ what, uncovered, seq }) =>
+    uncovered === undefined ? [] : [{ what, uncovered, seq }],
   );
+  const bare = [...new Set(without.map(({ what }) => what))].map((what) => {
+    const same = without.filter((use) => use.what === what);
+    const used = amountWords(sumSafely(same.map(({ uncovered }) => uncovered)));
+    const seqs = [...new Set(same.map(({ seq }) => seq))];
+    const where = `${seqs.length === 1 ? 'entry' : 'entries'} ${seqs.join(', ')}`;
+    return { what, bought: 'no receipt', used: `${used}, ${where}`, left: '', uncovered: 'gap' };
+  });
   return [...covered, ...bare];
 }
 
@@ -235,7 +241,7 @@ function sumSafely(amounts: Amount[], unit?: Amount['unit']): Amount | null {
 const amountWords = (amount: Amount | null) => (amount === null ? 'several kinds' : formatAmount(amount));
 
 /** Checks that say the same as an interval of the schedule, which is judged here by the newest terms. */
-const intervalChecks = /interval|in-time|schedule/;
+const intervalCheck = 'within-interval';
 
 function gapsOf(items: ItemSummary[], services: ServiceEntry[]): Gap[] {
   const late = items.flatMap(({ item, intervals }) =>
@@ -248,10 +254,8 @@ function gapsOf(items: ItemSummary[], services: ServiceEntry[]): Gap[] {
   );
   const checks = services.flatMap(({ seq, body }) =>
     (body?.checks ?? [])
-      .filter(
-        ({ result, key }) => result === 'gap' && !(intervalChecks.test(key) && late.some((one) => one.seq === seq)),
-      )
-      .map(({ detail, key }) => ({ seq, sentence: ended(detail === '' ? key.replaceAll('-', ' ') : detail) })),
+      .filter(({ result, key }) => result === 'gap' && !(key === intervalCheck && late.some((one) => one.seq === seq)))
+      .map(({ detail, key }) => ({ seq, sentence: ended(detail === '' ? checkTitle(key) : detail) })),
   );
   return [...late, ...checks].sort((a, b) => a.seq - b.seq);
 }

@@ -22,7 +22,8 @@ const machineLog = '7b0c6b52-6d0f-4a7e-8a1d-3f3d7f6a9c20';
 const owner = '5c1de2b4-13aa-4a0e-8f6d-9a3c51f0d001';
 export const sha256 = (text: string | Buffer) => createHash('sha256').update(text).digest('hex');
 const miles = (value: string): Odometer => ({ value, unit: '[mi_i]', instrument: 0 });
-const manual = (page: string) => ({ kind: 'manual', title: 'Corvane Sorrel 1800 owner’s manual', edition: '2022', page }) as const;
+const manual = (page: string) =>
+  ({ kind: 'manual', title: 'Corvane Sorrel 1800 owner’s manual', edition: '2022', page }) as const;
 const practice = { kind: 'common-practice' } as const;
 
 /** Words that a packet must carry in every script its typefaces have, and one it must print as boxes. */
@@ -37,7 +38,9 @@ export const wordsInEveryScript = {
 } as const;
 
 async function photo(title: string, lines: string[], height = 1200): Promise<Buffer> {
-  const rows = lines.map((line, i) => `<text x="60" y="${190 + i * 52}" font-size="34" font-family="monospace">${line}</text>`);
+  const rows = lines.map(
+    (line, i) => `<text x="60" y="${190 + i * 52}" font-size="34" font-family="monospace">${line}</text>`,
+  );
   const svg =
     `<svg xmlns="http://www.w3.org/2000/svg" width="900" height="${height}"><rect width="900" height="${height}" fill="#6d6a64"/>` +
     `<g transform="rotate(1.5 450 600)"><rect x="40" y="30" width="820" height="${height - 80}" fill="#f4f2ea"/>` +
@@ -50,7 +53,13 @@ interface Made {
   bytes: Map<string, Buffer>;
 }
 
-async function attach(made: Made['bytes'], role: AttachmentRole, caption: string, lines: string[], on: string): Promise<Attachment> {
+async function attach(
+  made: Made['bytes'],
+  role: AttachmentRole,
+  caption: string,
+  lines: string[],
+  on: string,
+): Promise<Attachment> {
   const bytes = await photo(caption, lines, role === 'odometer' ? 600 : 1200);
   const hash = sha256(bytes);
   made.set(hash, bytes);
@@ -100,15 +109,22 @@ const log = (id: string, size: number): LogView => ({
 });
 
 const checks: Check[] = [
-  { key: 'receipt-for-every-fluid-and-part', result: 'met', detail: 'Receipts R3 and R4 cover all of it.' },
-  { key: 'bought-before-used', result: 'met', detail: 'Bought seven days before the work.' },
-  { key: 'grade-as-specified', result: 'met', detail: 'SAE 20W-50, as specified.' },
-  { key: 'quantity-within-specification', result: 'met', detail: '4.5 US qt of 4.5 US qt.' },
+  { key: 'receipts', result: 'met', detail: 'Receipts R3 and R4 cover all of it.' },
+  { key: 'bought-before-use', result: 'met', detail: 'Bought seven days before the work.' },
+  { key: 'grade-and-part-number', result: 'met', detail: 'SAE 20W-50, as specified.' },
+  { key: 'quantity', result: 'met', detail: '4.5 US qt of 4.5 US qt.' },
   { key: 'odometer-photographed', result: 'met', detail: 'Plate 3.' },
-  { key: 'sealed-within-7-days', result: 'met', detail: 'Two hours after the work.' },
+  { key: 'logged-soon', result: 'met', detail: 'Two hours after the work.' },
 ];
 
-function purchase(seq: number, on: string, supplier: string, body: PurchaseBody['lines'], attachments: Attachment[], usedBy: number[]): PurchaseView {
+function purchase(
+  seq: number,
+  on: string,
+  supplier: string,
+  body: PurchaseBody['lines'],
+  attachments: Attachment[],
+  usedBy: number[],
+): PurchaseView {
   const sealedAt = `${on}T18:02:11.120Z`;
   return {
     log: shelfLog, seq, leafHash: sha256(`shelf ${seq}`), sealedAt,
@@ -151,7 +167,17 @@ interface ServiceOptions {
   moreChecks?: Check[];
 }
 
-function service({ seq, on, at, title, tasks, sealedAt = `${on}T23:32:05.120Z`, more, statement = '', moreChecks = [] }: ServiceOptions): EntryView {
+function service({
+  seq,
+  on,
+  at,
+  title,
+  tasks,
+  sealedAt = `${on}T23:32:05.120Z`,
+  more,
+  statement = '',
+  moreChecks = [],
+}: ServiceOptions): EntryView {
   const body: ServiceBody = {
     termsSeq: 1, recorded: 'at-the-time', startedAt: { date: on, time: '13:40', zone }, finishedAt: { date: on, time: '15:53', zone },
     odometer: miles(at), performedBy: [{ person: owner, capacity: 'owner' }], title, tasks, checks: [...checks, ...moreChecks], statement,
@@ -170,10 +196,11 @@ function entry(seq: number, title: string, sealedAt: string) {
 /** A record of three years with twelve photographs, every script, a long title, a struck entry, a late service. */
 export async function packetFixture(): Promise<PacketContent> {
   const bytes = new Map<string, Buffer>();
-  const receipt = (caption: string, on: string, lines: string[]) => attach(bytes, 'receipt-front', caption, lines, on);
+  const receipt = (caption: string, on: string, lines: string[]) =>
+    attach(bytes, 'receipt-front', caption, [on, ...lines], on);
   const oil = ['6 x FERNHILL 20W-50 1 QT', '1 x FILTER TN-2204', 'TOTAL 78.40', 'THANK YOU'];
   const purchases = [
-    purchase(3, '2024-08-26', 'Halyard Cycle Works', [{ line: 1, product: 'Fernhill V-Twin', kind: 'fluid', grade: 'SAE 20W-50', standard: 'API SJ', containers: 6, containerSize: { amount: '1', unit: '[qt_us]' }, batch: 'F2407-11' }, { line: 2, product: 'Oil filter', kind: 'part', partNumber: 'TN-2204', quantity: '2' }], [await receipt('Receipt', '2024-08-26', oil), await attach(bytes, 'receipt-back', 'Back, with the rider’s note', ['For the Sorrel'], '2024-08-26')], [3]),
+    purchase(3, '2024-08-02', 'Halyard Cycle Works', [{ line: 1, product: 'Fernhill V-Twin', kind: 'fluid', grade: 'SAE 20W-50', standard: 'API SJ', containers: 6, containerSize: { amount: '1', unit: '[qt_us]' }, batch: 'F2407-11' }, { line: 2, product: 'Oil filter', kind: 'part', partNumber: 'TN-2204', quantity: '2' }], [await receipt('Receipt', '2024-08-02', oil), await attach(bytes, 'receipt-back', 'Back, with the rider’s note', ['For the Sorrel'], '2024-08-02')], [3]),
     purchase(4, '2025-10-12', 'Brandywell Powersports', [{ line: 1, product: 'Fernhill V-Twin', kind: 'fluid', grade: 'SAE 20W-50', containers: 5, containerSize: { amount: '1', unit: '[qt_us]' } }], [await receipt('Receipt', '2025-10-12', oil)], [5]),
   ]; // prettier-ignore
   const pdf: Attachment = { sha256: sha256('pdf'), bytes: 84_120, mediaType: 'application/pdf', role: 'document', receivedAt: '2025-10-19T22:40:00.000Z', caption: 'Recall notice, as sent' }; // prettier-ignore
@@ -187,16 +214,30 @@ export async function packetFixture(): Promise<PacketContent> {
     'steering head check, belt tension and alignment, tyres looked at, battery terminals cleaned, throttle and clutch cables adjusted';
   const { greek, cyrillic, chinese, arabic, hebrew, emoji, thai } = wordsInEveryScript;
   const countersigned = '2025-10-24T16:10:00.000Z';
-  const shop = { name: 'Halyard Cycle Works', address: '3 Quay Street, Brandywell', accountSince: '2024-05-01T09:00:00.000Z', confirmedBy: 'steward' };
-  const countersignature = { capacity: 'inspected' as const, statement: 'Inspected the finished work.', shop, invitedBy: 'Imke Vandersloot' };
-  const technician = { person: 'c0ffee00-0000-4000-8000-000000000001', name: 'Teodora Lindqvist', role: 'shop' as const };
+  const shop = {
+    name: 'Halyard Cycle Works',
+    address: '3 Quay Street, Brandywell',
+    accountSince: '2024-05-01T09:00:00.000Z',
+    confirmedBy: 'steward',
+  };
+  const countersignature = {
+    capacity: 'inspected' as const,
+    statement: 'Inspected the finished work.',
+    shop,
+    invitedBy: 'Imke Vandersloot',
+  };
+  const technician = {
+    person: 'c0ffee00-0000-4000-8000-000000000001',
+    name: 'Teodora Lindqvist',
+    role: 'shop' as const,
+  };
   const entries: EntryView[] = [
     { ...entry(0, 'Record opened', '2023-06-20T18:00:00.000Z'), kind: 'opening', body: { make: 'Corvane', model: 'Sorrel 1800', modelYear: '2022', kindOfMachine: 'big V-twin tourer', firstUse: { on: '2023-06-14', odometer: miles('4') }, recordStarts: { on: '2023-06-14', odometer: miles('4'), why: 'new' } } },
     { ...entry(1, 'Terms', '2023-06-20T18:05:00.000Z'), kind: 'terms', body: terms },
-    service({ seq: 2, on: '2023-08-12', at: '1010', title: 'First service: engine oil, primary and gearbox', tasks: [oilTask([]), simpleTask('primary', 'Primary chaincase'), simpleTask('gearbox', 'Gearbox')] }),
-    service({ seq: 3, on: '2024-09-02', at: '5340', title: 'Engine oil and filter', tasks: [oilTask([draw(3, 1, 'Fernhill V-Twin', '2024-08-26', '4.5', '6', '1.5')])], sealedAt: '2024-09-21T20:00:00.000Z', moreChecks: [{ key: 'sealed-within-7-days', result: 'gap', detail: 'Sealed 19 days after the work.' }], more: { attachments: await photos('2024-09-02', 3) } }),
+    service({ seq: 2, on: '2023-08-12', at: '980', title: 'First service: engine oil, primary and gearbox', tasks: [oilTask([]), simpleTask('primary', 'Primary chaincase'), simpleTask('gearbox', 'Gearbox')] }),
+    service({ seq: 3, on: '2024-08-10', at: '5340', title: 'Engine oil and filter', tasks: [oilTask([draw(3, 1, 'Fernhill V-Twin', '2024-08-02', '4.5', '6', '1.5')])], sealedAt: '2024-08-29T20:00:00.000Z', moreChecks: [{ key: 'logged-soon', result: 'gap', detail: 'Sealed 19 days after the work.' }], more: { attachments: await photos('2024-08-10', 3) } }),
     service({ seq: 4, on: '2024-10-05', at: '5900', title: longTitle, tasks: [simpleTask('brake-fluid', 'Brake and clutch fluid')], statement: `${greek}. ${cyrillic}. ${chinese}. ${arabic} (4.25 L). ${hebrew}. ${emoji} ${thai}`, more: { struckBy: { seq: 7, sealedAt: '2025-11-02T10:00:00.000Z', reason: 'Logged on the wrong machine.' }, state: 'struck', notes: 'First line\nsecond line' } }),
-    service({ seq: 5, on: '2025-10-19', at: '10238', title: 'Engine oil, primary and gearbox', tasks: [oilTask([draw(3, 1, 'Fernhill V-Twin', '2024-08-26', '1.5', '1.5', '0'), draw(4, 1, 'Fernhill V-Twin', '2025-10-12', '3', '5', '2')]), simpleTask('primary', 'Primary chaincase'), simpleTask('gearbox', 'Gearbox')], statement: arabic, moreChecks: [{ key: 'receipt-for-the-o-ring', result: 'gap', detail: 'No receipt for the O-ring.' }], more: { attachments: [...(await photos('2025-10-19', 5)), pdf, ...(await photos('2025-10-20', 51))], state: 'countersigned', addenda: [8], countersignatures: [{ seq: 6, sealedAt: countersigned, author: technician, body: countersignature }] } }),
+    service({ seq: 5, on: '2025-10-19', at: '10238', title: 'Engine oil, primary and gearbox', tasks: [oilTask([draw(3, 1, 'Fernhill V-Twin', '2024-08-02', '1.5', '1.5', '0'), draw(4, 1, 'Fernhill V-Twin', '2025-10-12', '3', '5', '2')]), simpleTask('primary', 'Primary chaincase'), simpleTask('gearbox', 'Gearbox')], statement: arabic, moreChecks: [{ key: 'receipts', result: 'gap', detail: 'No receipt for the O-ring.' }], more: { attachments: [...(await photos('2025-10-19', 5)), pdf, ...(await photos('2025-10-20', 51))], state: 'countersigned', addenda: [8], countersignatures: [{ seq: 6, sealedAt: countersigned, author: technician, body: countersignature }] } }),
     { ...entry(6, 'Countersigned: inspected the finished work', countersigned), kind: 'countersignature', refersTo: { seq: 5, leafHash: sha256('leaf 5') }, author: technician, body: countersignature },
     { ...entry(7, 'Strike', '2025-11-02T10:00:00.000Z'), kind: 'strike', refersTo: { seq: 4, leafHash: sha256('leaf 4') }, body: { reason: 'Logged on the wrong machine.' } },
     { ...entry(8, 'Checked hot after the first ride', '2025-11-03T10:00:00.000Z'), kind: 'addendum', refersTo: { seq: 5, leafHash: sha256('leaf 5') }, state: 'waiting', tokens: [], body: { text: 'Level between the marks, no drips.' } },

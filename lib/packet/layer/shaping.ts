@@ -184,11 +184,27 @@ export const widthOf = (text: string, name: FaceName, size: number): number =>
 
 const betweenIdeographs = /[\p{Script=Han}\p{Script=Hiragana}\p{Script=Katakana}]/u;
 
+/** A figure and its unit stay together: a line never ends between 4.26 and L. */
+const measured =
+  /^[([“]?[\d.,]*\d (?:(?:US|imp) )?(?:fl oz|qt|pt|gal|mL|L|km|mi|N·m|lbf·ft|lbf·in|kgf·m|kPa|bar|psi|mo|h)(?![\p{L}\d])[^ ]*/u;
+
+/** Spaces and words, a measured figure as one word. */
+function wordsOf(text: string): string[] {
+  const words: string[] = [];
+  let rest = text;
+  while (rest !== '') {
+    const word = /^ +/.exec(rest)?.[0] ?? measured.exec(rest)?.[0] ?? /^[^ ]+/.exec(rest)?.[0] ?? rest;
+    words.push(word);
+    rest = rest.slice(word.length);
+  }
+  return words;
+}
+
 /** Where a line may end: after spaces, after a hyphen or slash inside a word, and beside ideographs. */
 function breakable(text: string): string[] {
   const tokens: string[] = [];
-  for (const word of text.match(/ +|[^ ]+/g) ?? []) {
-    if (word.startsWith(' ')) {
+  for (const word of wordsOf(text)) {
+    if (word.startsWith(' ') || measured.test(word)) {
       tokens.push(word);
       continue;
     }

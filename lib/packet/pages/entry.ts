@@ -1,4 +1,5 @@
 import 'server-only';
+import { checkTitle } from '@/lib/domain/checks';
 import { describeDelay, formatInstant, formatLocalDate, formatLocalMoment } from '@/lib/domain/instants';
 import type { ServiceBody } from '@/lib/evidence/format';
 import type { EntryView, RecordView } from '@/lib/services/record-view';
@@ -127,8 +128,7 @@ function workCells(entry: EntryView, body: ServiceBody, record: RecordView): Cel
 
 function drawFollowing(sheet: Sheet, entry: EntryView, content: PacketContent): void {
   if (entry.attachments.length > 0) {
-    sheet.heading('Plates', { tag: 'H3', below: 180 });
-    drawPlates(sheet, platesOf(String(entry.seq), entry.attachments, content));
+    drawPlates(sheet, platesOf(String(entry.seq), entry.attachments, content), 'Plates');
   }
   if (isService(entry) && entry.body !== null) {
     drawChecks(sheet, entry.body);
@@ -152,7 +152,6 @@ function drawFollowing(sheet: Sheet, entry: EntryView, content: PacketContent): 
   }
 }
 
-/** Words for the reader's checks by their keys; a key unknown here is shown as it is. */
 function drawChecks(sheet: Sheet, { checks }: ServiceBody): void {
   if (checks.length === 0) return;
   sheet.heading('Reader’s checks, as they stood at sealing', { tag: 'H3', below: 60 });
@@ -165,7 +164,7 @@ function drawChecks(sheet: Sheet, { checks }: ServiceBody): void {
       { title: 'Detail', share: 5 },
     ],
     checks.map(({ key, result, detail }) => [
-      sentence(key.replaceAll('-', ' ')),
+      checkTitle(key),
       { text: results[result], isGap: result === 'gap' },
       detail,
     ]),

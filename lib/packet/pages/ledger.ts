@@ -11,6 +11,8 @@ import { counted, odometerWords } from '../words';
 const at = { number: edges.left, date: edges.left + 26, odometer: edges.left + 104, what: edges.left + 176 };
 const markRight = edges.right - 54;
 const markSize = 36;
+/** The whole title stands on the entry's own page. */
+const mostLines = 4;
 
 /** Every entry of the record as a ledger line: number, date, odometer, what, mark with its words, page. */
 export function drawLedger(sheet: Sheet, content: PacketContent): void {
@@ -29,7 +31,8 @@ export function drawLedger(sheet: Sheet, content: PacketContent): void {
 
 function drawLine(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void {
   const width = markRight - markSize / 2 - 24 - at.what;
-  const lines = breakLines(entry.title, 'medium', 9.5, width).slice(0, 4);
+  const all = breakLines(entry.title, 'medium', 9.5, width);
+  const lines = all.length > mostLines ? [...all.slice(0, mostLines - 1), `${all[mostLines - 1]} …`] : all;
   const about = entry.refersTo === null ? '' : `about entry ${entry.refersTo.seq}; `;
   const details = `${about}sealed ${formatLocalDate(localDateOf(entry.sealedAt, zone))}`;
   const height = Math.max(58, lines.length * types.value.leading + types.small.leading + 14);

@@ -21,21 +21,30 @@ const gutter = 8;
 const padding = 5;
 
 /** Pictures in their boxes with captions and hashes, two or three in a row. */
-export function drawPlates(sheet: Sheet, plates: Plate[]): void {
+export function drawPlates(sheet: Sheet, plates: Plate[], heading?: string): void {
   const columns = plates.length < 3 ? 2 : 3;
   const width = (contentWidth - gutter * (columns - 1)) / columns;
   const tallest = columns === 2 ? 250 : 186;
   for (let i = 0; i < plates.length; i += columns) {
-    drawPlateRow(sheet, plates.slice(i, i + columns), width, tallest);
+    const row = plates.slice(i, i + columns);
+    // A heading goes with the first row, or both go to the next page.
+    if (i === 0 && heading !== undefined) {
+      sheet.heading(heading, { tag: 'H3', below: rowHeight(row, width, tallest).height + gutter + 4 });
+    }
+    drawPlateRow(sheet, row, width, tallest);
   }
 }
 
-function drawPlateRow(sheet: Sheet, row: Plate[], width: number, tallest: number): void {
+function rowHeight(row: Plate[], width: number, tallest: number) {
   const inner = width - 2 * padding;
   const captions = row.map((plate) => captionOf(plate, inner));
   const picture = Math.max(...row.map((plate) => pictureHeight(plate, inner, tallest)));
   const caption = Math.max(...captions.map((lines) => lines.reduce((sum, { type }) => sum + type.leading, 0)));
-  const height = picture + caption + 2 * padding + 5;
+  return { inner, captions, picture, height: picture + caption + 2 * padding + 5 };
+}
+
+function drawPlateRow(sheet: Sheet, row: Plate[], width: number, tallest: number): void {
+  const { inner, captions, picture, height } = rowHeight(row, width, tallest);
   sheet.room(height + gutter);
   const { layer, y } = sheet;
   row.forEach((plate, i) => {

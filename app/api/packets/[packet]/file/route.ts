@@ -1,0 +1,10 @@
+import { z } from 'zod';
+import { route } from '@/lib/auth/route';
+import { notFound } from '@/lib/errors';
+import { openPacketFile, readPacket } from '@/lib/services/read-packet';
+
+export const GET = route<{ packet: string }>({ access: 'signed-in' }, async ({ person, params }) => {
+  if (!z.uuid().safeParse(params.packet).success) throw notFound('packet');
+  const { body, headers } = await openPacketFile(await readPacket({ person, id: params.packet }));
+  return new Response(body, { headers });
+});

@@ -1,0 +1,75 @@
+import 'server-only';
+import { randomInt, randomUUID } from 'node:crypto';
+import { z } from 'zod';
+import { write, type Transaction } from '@/db/index';
+import type { PersonRow } from '@/db/queries/people';
+import { insertPacket, isPacketNumberTaken, type PacketRow } from '@/db/queries/packets';
+import { authorise } from '@/lib/auth/guard';
+import { isAcceptableText, normaliseText } from '@/lib/evidence/text';
+import { now } from '@/lib/ports/clock';
+import { kickPackets } from '@/lib/services/build-packet';
+
+const longestPurpose = 200;
+
+export const requestPacketInput = z.object({
+  /** Printed on the cover: "a warranty claim on the gearbox". */
+  purpose: z
+    .string()
+    .trim()
+    .max(longestPurpose, `Keep the purpose under ${longestPurpose} characters.`)
+    .transform(normaliseText)
+    .refine(isAcceptableText, 'Leave out control and direction characters.')
+    .default(''),
+});
+export type RequestPacketInput = z.infer<typeof requestPacketInput>;
+
+/** Puts a packet in the queue; it is built in the background and its row says how far it is. */
+export async function requestPacket(options: {
+  person: PersonRow;
+  machineId: string;
+  input: RequestPacketInput;
+}): Promise<PacketRow> {
+  const { person, machineId, input } = options;
+  await authorise({ person, action: 'share', machine: machineId });
+  const packet = await queuePacket({ machineId, by: person.id, purpose: input.purpose });
+  kickPackets();
+  return packet;
+}
+
+/** Makes the row with a number nobody has. Who may ask is decided before this is called. */
+export function queuePacket(options: { machineId: string; by: string; purpose: string }): Promise<PacketRow> {
+  return write(async (transaction) => {
+    const row: PacketRow = {
+      id: randomUUID(),
+      machineId: options.machineId,
+      number: await newNumber(transaction),
+      purpose: options.purpose,
+      state: 'queued',
+      stage: 'Waiting for its turn',
+      progress: 0,
+      error: null,
+      createdBy: options.by,
+      createdAt: now().toISOString(),
+      finishedAt: null,
+      fileSha256: null,
+      bytes: null,
+      pages: null,
+      logSize: null,
+      linkId: null,
+    };
+    await insertPacket(row, transaction);
+    return row;
+  });
+}
+
+/** Without I, L, O, U, 0 and 1: a number is read out on the telephone. */
+const numberAlphabet = '23456789ABCDEFGHJKMNPQRSTVWXYZ';
+const fourCharacters = () =>
+  Array.from({ length: 4 }, () => numberAlphabet.charAt(randomInt(numberAlphabet.length))).join('');
+
+async function newNumber(transaction: Transaction): Promise<string> {
+  for (;;) {
+    const number = `WM-${fourCharacters()}-${fourCharacters()}`;
+    if (!(await isPacketNumberTaken(number, transaction))) return number;
+  }
+}
