@@ -1,8 +1,8 @@
 import 'server-only';
-import { Op } from 'sequelize';
 import { write } from '@/db/index';
 import { stampJobs, type StampJobRow, tokens } from '@/db/models/logs';
 import { findCheckpoint } from '@/db/queries/logs';
+import { dueStampJobs } from '@/db/queries/stamp-jobs';
 import { sha256, sha256Hex } from '@/lib/evidence/hash';
 import { utf8 } from '@/lib/evidence/bytes';
 import { now } from '@/lib/ports/clock';
@@ -51,10 +51,7 @@ export async function stampCheckpoint(log: string, size: number): Promise<void> 
 async function run(): Promise<void> {
   try {
     for (;;) {
-      const jobs = await stampJobs.all(
-        { doneAt: null, nextTryAt: { [Op.lte]: now().toISOString() } },
-        { order: [['nextTryAt', 'ASC'], ['size', 'ASC']], limit: jobsAtOnce }, // prettier-ignore
-      );
+      const jobs = await dueStampJobs(now().toISOString(), jobsAtOnce);
       if (jobs.length === 0) return;
       for (const job of jobs) await stamp(job);
     }
