@@ -90,4 +90,9 @@ export default [
     files: ['lib/domain/**', 'lib/evidence/**'],
     rules: { 'no-restricted-imports': ['error', pure], 'no-restricted-globals': ['error', 'process', 'Buffer'] },
   },
+  {
+    // useTestDatabase and its like register Vitest hooks, not React's.
+    files: ['tests/**'],
+    rules: { 'react-hooks/rules-of-hooks': 'off' },
+  },
 ];
