@@ -1,4 +1,4 @@
-import type { HoldPoint, Procedure } from './procedures';
+import type { HoldPoint, Procedure } from './procedure';
 
 const brakeCaution = 'Brakes stop you. If in doubt, a licensed workshop.';
 const wheelCaution = 'Wheels and steering carry you. If in doubt, a licensed workshop.';
