@@ -6,6 +6,7 @@ export const openGearboxWork: StoryWork = {
   from: '15:40',
   to: '16:25',
   odometer: '21480',
+  title: 'Gearbox oil early, drain plug was weeping',
   stoppedAfter: 'look-at-magnet',
   tasks: [
     {
