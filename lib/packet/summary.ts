@@ -25,7 +25,8 @@ export interface UseSummary {
   uncovered: string;
 }
 export interface Gap {
-  seq: number;
+  /** Null: it stands open now, and no entry ended it. */
+  seq: number | null;
   sentence: string;
 }
 export interface PacketSummary {
@@ -246,9 +247,9 @@ const intervalCheck = 'within-interval';
 function gapsOf(items: ItemSummary[], services: ServiceEntry[]): Gap[] {
   const late = items.flatMap(({ item, intervals }) =>
     intervals
-      .filter(({ result, to }) => result === 'late' && to.seq !== undefined)
+      .filter(({ result }) => result === 'late')
       .map(({ to, from, sentence }) => ({
-        seq: to.seq ?? 0,
+        seq: to.seq ?? null,
         sentence: `${item.title}, since ${from.seq === undefined ? 'first use' : `entry ${from.seq}`}: ${sentence}.`,
       })),
   );
@@ -257,7 +258,7 @@ function gapsOf(items: ItemSummary[], services: ServiceEntry[]): Gap[] {
       .filter(({ result, key }) => result === 'gap' && !(key === intervalCheck && late.some((one) => one.seq === seq)))
       .map(({ detail, key }) => ({ seq, sentence: ended(detail === '' ? checkTitle(key) : detail) })),
   );
-  return [...late, ...checks].sort((a, b) => a.seq - b.seq);
+  return [...late, ...checks].sort((a, b) => (a.seq ?? Number.MAX_SAFE_INTEGER) - (b.seq ?? Number.MAX_SAFE_INTEGER));
 }
 const ended = (text: string) => (/[.!?]$/.test(text) ? text : `${text}.`);
 

@@ -4,7 +4,7 @@ import path from 'node:path';
 import { setImmediate as nextTurn } from 'node:timers/promises';
 import pLimit, { type LimitFunction } from 'p-limit';
 import { write } from '@/db/index';
-import { findMachine } from '@/db/queries/machines';
+import { machineById } from '@/db/queries/machines';
 import { findPacket, unfinishedPackets, updatePacket, type PacketRow } from '@/db/queries/packets';
 import { findPerson } from '@/db/queries/people';
 import { updateViewingLink } from '@/db/queries/viewing-links';
@@ -125,7 +125,7 @@ const mostReadings = 5;
 /** Record and bundle of the same moment: an entry sealed between the two makes it read both again. */
 async function gather(packet: PacketRow, link: string): Promise<PacketContent> {
   const { machineId, number, purpose } = packet;
-  const [machine, owner] = await Promise.all([findMachine(machineId), findPerson(packet.createdBy)]);
+  const [machine, owner] = await Promise.all([machineById(machineId), findPerson(packet.createdBy)]);
   if (machine === null || owner === null) throw notFound('machine');
   for (let reading = 0; reading < mostReadings; reading++) {
     const record = await readRecord({ machineId });

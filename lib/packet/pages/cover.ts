@@ -151,9 +151,9 @@ function drawGaps(sheet: Sheet, { gaps }: PacketSummary): void {
     sheet,
     [{ title: 'Entry', share: 1 }, { title: 'What is missing or late', share: 8 }, { title: '', share: 1 }],
     gaps.map(({ seq, sentence }) => [
-      `Entry ${seq}`,
+      seq === null ? 'Now' : `Entry ${seq}`,
       sentence,
-      { late: () => `page ${sheet.pageOf(entryAnchor(seq))}` },
+      seq === null ? '' : { late: () => `page ${sheet.pageOf(entryAnchor(seq))}` },
     ]),
   ); // prettier-ignore
 }
