@@ -31,7 +31,7 @@ export function IdentityFields({ typed, fields }: PartProps) {
   return (
     <FormPart
       title="Its identity"
-      note="Kept apart from the rest of the record: you decide with each packet and viewing link whether it is shown."
+      note="Sealed in a part of its own, so that it can be withheld, or erased for good, without breaking the record."
     >
       <TextInput
         label="VIN"

@@ -23,7 +23,8 @@ export function MachineForm({ action, machine, kinds, zones, person }: MachineFo
   const { typed, fields } = state;
   const defaults = { distanceUnit: person.distanceUnit, timeZone: person.timeZone, ...typed };
   return (
-    <form action={submit} noValidate className="grid gap-5">
+    // React resets a form once its action has answered; a refused form keeps every choice as it was made.
+    <form action={submit} onReset={(event) => event.preventDefault()} noValidate className="grid gap-5">
       <input type="hidden" name="machine" value={machine} />
       {state.message && !state.ok ? <Notice tone="gap" title={state.message} isLive /> : null}
       <MakeFields typed={defaults} fields={fields} kinds={kinds} />

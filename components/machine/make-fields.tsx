@@ -12,7 +12,6 @@ export const distanceOptions = [
 ];
 
 export function MakeFields({ typed, fields, kinds }: PartProps & { kinds: { value: string; label: string }[] }) {
-  // A form's reset after the answer would put a select back to its first option.
   const [kind, setKind] = useState(typed.kind ?? '');
   return (
     <FormPart title="The machine">

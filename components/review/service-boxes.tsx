@@ -1,6 +1,6 @@
 import { Box, Boxes } from '@/components/ui/box';
 import { UserText } from '@/components/ui/user-text';
-import { formatLocalMoment } from '@/lib/domain/instants';
+import { formatLocalDate, formatLocalMoment } from '@/lib/domain/instants';
 import { formatAmount, formatDistance, sumAmounts } from '@/lib/domain/units';
 import type { Draw, Fill, LocalMoment, ServiceBody } from '@/lib/evidence/format';
 
@@ -13,11 +13,11 @@ function fillWords({ amounts }: Fill): string {
 }
 
 export function drawWords(draw: Draw): string {
-  const left = formatAmount(draw.balanceAfter);
-  return `${formatAmount(draw)} from lot ${draw.purchase.seq}, bought ${draw.boughtOn}; ${left} left`;
+  const left = draw.balanceAfter.amount === '0' ? 'nothing' : formatAmount(draw.balanceAfter);
+  return `${formatAmount(draw)} from lot ${draw.purchase.seq}, bought ${formatLocalDate(draw.boughtOn)}; ${left} left`;
 }
 
-function fillNote(fill: Fill): string {
+function fillNotes(fill: Fill): string[] {
   const parts = [
     fill.amounts.length > 1 && new Set(fill.amounts.map(({ unit }) => unit)).size > 1
       ? `together ${formatAmount(sumAmounts(fill.amounts))}`
@@ -26,7 +26,7 @@ function fillNote(fill: Fill): string {
     ...fill.draws.map(drawWords),
     fill.uncovered === undefined ? undefined : `${formatAmount(fill.uncovered)} without a receipt`,
   ];
-  return parts.filter((part) => part !== undefined).join('; ');
+  return parts.filter((part) => part !== undefined);
 }
 
 function workDone({ startedAt, finishedAt }: ServiceBody): string {
@@ -87,11 +87,15 @@ export function ServiceBoxes({ body }: { body: ServiceBody }) {
           note={
             <>
               {fill.product === undefined ? null : (
-                <>
-                  <UserText>{[fill.product, fill.grade].filter(Boolean).join(', ')}</UserText>.{' '}
-                </>
+                <span className="block">
+                  <UserText>{[fill.product, fill.grade].filter(Boolean).join(', ')}</UserText>
+                </span>
               )}
-              {fillNote(fill)}
+              {fillNotes(fill).map((note) => (
+                <span key={note} className="block">
+                  {note}
+                </span>
+              ))}
             </>
           }
         >

@@ -1,9 +1,10 @@
 import { Definition, type DefinitionItem } from '@/components/ui/definition';
 import { UserText } from '@/components/ui/user-text';
 import { formatInstant } from '@/lib/domain/instants';
+import { debrisGrades } from '@/lib/domain/procedures';
 import { formatBand } from '@/lib/domain/torque';
 import { formatAmount } from '@/lib/domain/units';
-import type { PartUse, Task, Torque } from '@/lib/evidence/format';
+import type { Inspection, PartUse, Task, Torque } from '@/lib/evidence/format';
 import { drawWords } from './service-boxes';
 
 function torqueWords({ specification, tool }: Torque): string {
@@ -17,25 +18,34 @@ function partWords({ partNumber, draws, uncovered }: PartUse): string {
   return parts.filter(Boolean).join('; ');
 }
 
-function itemsOf(task: Task, zone: string): DefinitionItem[] {
+function foundWords({ grade, note }: Inspection): string {
+  const debris = debrisGrades.find((one) => one.grade === grade);
+  const shown = debris === undefined ? grade : `${debris.grade}, ${debris.title.toLowerCase()}`;
+  return [shown, note].filter(Boolean).join(': ');
+}
+
+function itemsOf(task: Task): DefinitionItem[] {
   return [
     ...task.torques.map((torque) => ({
       term: torque.fastenerTitle,
       detail: (
         <>
-          <b>{formatAmount(torque)}</b> <span className="tag">{torqueWords(torque)}</span>
+          <b>{formatAmount(torque)}</b> <span className="tag block">{torqueWords(torque)}</span>
         </>
       ),
     })),
     ...task.inspections.map((inspection) => ({
       term: inspection.subject,
-      detail: <UserText isMultiline>{[inspection.grade, inspection.note].filter(Boolean).join(': ')}</UserText>,
+      detail: <UserText isMultiline>{foundWords(inspection)}</UserText>,
     })),
     ...task.parts.map((part) => ({
       term: part.name,
       detail: (
         <>
-          {formatAmount({ amount: part.quantity, unit: '{piece}' })} <span className="tag">{partWords(part)}</span>
+          {formatAmount({ amount: part.quantity, unit: '{piece}' })}
+          <span className="tag block">
+            <UserText>{partWords(part)}</UserText>
+          </span>
         </>
       ),
     })),
@@ -43,30 +53,51 @@ function itemsOf(task: Task, zone: string): DefinitionItem[] {
       term: `${check.pointTitle}, level`,
       detail: (
         <>
-          <UserText>{check.reading}</UserText>{' '}
-          <span className="tag">{[check.position, check.temperature].filter(Boolean).join(', ')}</span>
+          <UserText>{check.reading}</UserText>
+          <span className="tag block">{[check.position, check.temperature].filter(Boolean).join(', ')}</span>
         </>
       ),
-    })),
-    ...task.steps.map((step) => ({
-      term: step.title,
-      detail: step.doneAt === undefined ? 'done' : `done ${formatInstant(step.doneAt, zone)}`,
     })),
   ];
 }
 
+/** Hold points as they were ticked. One that was not is no proof that it was left out, and is not called done. */
+function HoldPoints({ steps, zone }: { steps: Task['steps']; zone: string }) {
+  const ticked = steps.filter(({ doneAt }) => doneAt !== undefined).length;
+  return (
+    <>
+      <p className="label mt-4">
+        Hold points, {ticked} of {steps.length} ticked
+      </p>
+      <ul className="mt-1 gap-x-8 sm:columns-2">
+        {steps.map(({ key, title, doneAt }) => (
+          <li key={key} className="flex justify-between gap-3 py-0.5 break-inside-avoid">
+            <span>{title}</span>
+            <span className="tag shrink-0 tabular-nums">
+              {doneAt === undefined ? 'not ticked' : formatInstant(doneAt, zone)}
+            </span>
+          </li>
+        ))}
+      </ul>
+    </>
+  );
+}
+
 /** What each task says beyond its fills, line by line. */
 export function TaskLines({ tasks, zone }: { tasks: Task[]; zone: string }) {
-  return tasks.map((task, index) => (
-    <section key={index} className="mt-6">
-      <h3 className="mb-2">
-        <UserText>{task.title}</UserText>
-      </h3>
-      {itemsOf(task, zone).length === 0 ? (
-        <p className="tag">Nothing more is said about it.</p>
-      ) : (
-        <Definition items={itemsOf(task, zone)} label={task.title} />
-      )}
-    </section>
-  ));
+  return tasks.map((task, index) => {
+    const items = itemsOf(task);
+    return (
+      <section key={index} className="mt-6">
+        <h3 className="mb-2">
+          <UserText>{task.title}</UserText>
+        </h3>
+        {items.length > 0 ? <Definition items={items} label={task.title} /> : null}
+        {task.steps.length > 0 ? <HoldPoints steps={task.steps} zone={zone} /> : null}
+        {items.length + task.steps.length + task.fills.length === 0 ? (
+          <p className="tag">Nothing more is said about it.</p>
+        ) : null}
+      </section>
+    );
+  });
 }

@@ -2,6 +2,7 @@ import 'server-only';
 import { findLogOf, readHead } from '@/db/queries/logs';
 import type { PersonRow } from '@/db/models/people';
 import { standingOf } from '@/lib/auth/guard';
+import { procedureFor } from '@/lib/domain/procedures';
 import { notFound } from '@/lib/errors';
 import { paths } from '@/lib/paths';
 import { now } from '@/lib/ports/clock';
@@ -11,6 +12,8 @@ import { machineName } from './list-machines';
 
 export interface Problem {
   field: string;
+  /** Which part of the worksheet: a task's title, `Times and odometer` … */
+  where: string;
   sentence: string;
   /** Leads to the screen of the worksheet where it is put right. */
   href: string;
@@ -35,6 +38,14 @@ function screenOf(field: string): string {
   return /^(startedAt|finishedAt|zone|odometer|engineHours|performedBy|recorded)/.test(field) ? 'times' : 'summary';
 }
 
+function whereOf(field: string, composed: ComposedWorksheet): string {
+  const screen = screenOf(field);
+  if (screen === 'times') return 'Times and odometer';
+  const task = composed.worksheet.tasks.find(({ id }) => id === screen);
+  if (task !== undefined) return task.title ?? procedureFor(task.key).title;
+  return field.startsWith('photos/') ? 'Pictures' : 'The worksheet';
+}
+
 /** The entry exactly as it would be sealed now, and what keeps it from being sealed. */
 export async function reviewWorksheet(options: { person: PersonRow; draftId: string }): Promise<WorksheetReview> {
   const { person, draftId } = options;
@@ -53,6 +64,7 @@ export async function reviewWorksheet(options: { person: PersonRow; draftId: str
     composed,
     problems: Object.entries(composed?.problems ?? {}).map(([field, sentence]) => ({
       field,
+      where: composed === null ? '' : whereOf(field, composed),
       sentence,
       href: `${paths.worksheet(draftId)}/${screenOf(field)}`,
     })),

@@ -34,7 +34,11 @@ export default async function ReviewPage({ params }: { params: Promise<{ workshe
       <PageHead
         label={<UserText>{machine.name}</UserText>}
         title={newsOf(problems.length, gaps)}
-        note={`This is entry ${nextSeq} as it will read for ever. Once sealed it can be added to or struck, never edited.`}
+        note={
+          canSeal
+            ? `This is entry ${nextSeq} as it will read for ever. Once sealed it can be added to or struck, never edited.`
+            : 'Once this is put right, the entry is shown here as it will read for ever.'
+        }
         actions={
           <a className="link" href={paths.worksheet(worksheet)}>
             Back to the worksheet
