@@ -8,6 +8,7 @@ import { UserText } from '@/components/ui/user-text';
 import { paths } from '@/lib/paths';
 import { draftTitle, unfinishedStates } from './draft-words';
 import { useDraft, useGarage } from './garage-context';
+import { HashButton } from './hash-button';
 import { offlineProblem } from './offline-page';
 import type { OpenDraft } from './open-draft';
 import { StatusLine } from './status-line';
@@ -22,12 +23,12 @@ export function DraftList({ isPart = false }: { isPart?: boolean }) {
     <>
       {isPart ? null : <PageHead title={newsOf(worksheets.length, receipts.length)} />}
       <div className="mb-6 grid gap-2.5 sm:grid-cols-2">
-        <LinkButton size="big" look="main" href="#new-worksheet" prefetch={false}>
+        <HashButton size="big" look="main" href="#new-worksheet">
           Begin a worksheet
-        </LinkButton>
-        <LinkButton size="big" href="#new-receipt" prefetch={false}>
+        </HashButton>
+        <HashButton size="big" href="#new-receipt">
           Add a receipt
-        </LinkButton>
+        </HashButton>
       </div>
       <Missing />
       <Drafts title="Worksheets" drafts={worksheets} />

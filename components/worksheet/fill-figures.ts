@@ -32,6 +32,17 @@ export function specifiedFor(
   );
 }
 
+/** The reader's check of the quantity takes a fill this near to the capacity as filled to it. Common practice, no source. */
+export const fillTolerancePercent = 5;
+
+/** How a fill compares with what is specified; both ends of the tolerance belong to it. */
+export function judgeFill(total: Amount, specified: Amount): 'as specified' | 'near' | 'more' | 'less' {
+  const percent = convert(total.amount, total.unit, specified.unit).div(specified.amount).times(100).minus(100);
+  if (percent.isZero()) return 'as specified';
+  if (percent.abs().lte(fillTolerancePercent)) return 'near';
+  return percent.isPositive() ? 'more' : 'less';
+}
+
 /** Ends of the drawn rule: room above the specified figure, and above a fill that went beyond it. */
 export function ruleEnd(specified: number, value: number | undefined): number {
   const roomAboveFactor = 1.2;

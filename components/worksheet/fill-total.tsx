@@ -2,9 +2,9 @@
 
 import { ShortRule } from '@/components/rule/short-rule';
 import type { Amount, FluidPoint } from '@/lib/evidence/format';
-import { compareAmounts, formatAmount, formatConverted, units } from '@/lib/domain/units';
+import { formatAmount, formatConverted, units } from '@/lib/domain/units';
 import type { WorksheetFill } from '@/lib/domain/worksheet';
-import { companionUnit, drawnFigure, ruleEnd, specifiedFor } from './fill-figures';
+import { companionUnit, drawnFigure, fillTolerancePercent, judgeFill, ruleEnd, specifiedFor } from './fill-figures';
 
 interface FillTotalProps {
   fill: WorksheetFill | undefined;
@@ -37,20 +37,28 @@ export function FillTotal({ fill, spec, total }: FillTotalProps) {
   );
 }
 
+const judgements = {
+  'as specified': 'as specified',
+  near: `within ${fillTolerancePercent} % of it`,
+  more: 'more than specified',
+  less: 'less than specified so far',
+};
+
 function FillRule({ total, specified }: { total: Amount | undefined; specified: Amount }) {
   const { unit } = specified;
   const full = drawnFigure(specified, unit);
   const value = total && drawnFigure(total, unit);
   const words = `specified ${formatAmount(specified)}`;
-  const order = total ? compareAmounts(total, specified) : -1;
-  const judged = order === 0 ? 'as specified' : order > 0 ? 'more than specified' : 'less than specified';
+  const result = total && judgeFill(total, specified);
+  const judged = result ? judgements[result] : '';
+  const margin = (full * fillTolerancePercent) / 100;
   return (
     <ShortRule
       from={0}
       to={ruleEnd(full, value)}
-      band={{ min: full, max: full }}
+      band={{ min: full - margin, max: full + margin }}
       {...(value === undefined ? {} : { value })}
-      isMet={order === 0}
+      isMet={result === 'as specified' || result === 'near'}
       bandText={words}
       {...(total
         ? { valueText: `${formatConverted(total.amount, total.unit, companionUnit(total.unit))}, ${judged}` }

@@ -44,7 +44,7 @@ export function HoldPointScreen({ task, step }: HoldPointScreenProps) {
         <div className="grid w-full grid-cols-[minmax(0,2fr)_minmax(0,3fr)] gap-2.5 lg:max-w-xl">
           {doneAt === undefined ? (
             <Button size="big" onClick={() => leave(onward)}>
-              Not done
+              Leave open
             </Button>
           ) : (
             <Button size="big" onClick={() => void opened.set({ [`tasks/${task.id}/steps/${step}`]: null })}>

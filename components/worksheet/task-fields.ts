@@ -52,7 +52,7 @@ export function progressWords(task: WorksheetTask): string {
 export function nextScreen(worksheet: Worksheet, screen: string): { screen: string; text: string } {
   const order = [
     { screen: 'tasks', text: 'Choose tasks' },
-    { screen: 'start', text: 'Odometer and times' },
+    { screen: 'start', text: 'odometer and times' },
     ...worksheet.tasks.map((task) => ({ screen: task.id, text: taskTitle(task).toLowerCase() })),
     { screen: 'photos', text: 'photos' },
     { screen: 'summary', text: 'summary' },

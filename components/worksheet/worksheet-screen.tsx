@@ -1,5 +1,7 @@
 'use client';
 
+import { useEffect, useRef } from 'react';
+import { HashButton } from '@/components/garage/hash-button';
 import { worksheetRoles } from '@/components/garage/photo-roles';
 import { Photos } from '@/components/garage/photos';
 import { worksheetHash } from '@/components/garage/place';
@@ -38,6 +40,14 @@ export function WorksheetScreen({ opened, screen, step }: WorksheetScreenProps) 
 function Screen({ opened, screen, step }: WorksheetScreenProps) {
   const { worksheet, machine, id } = useWorksheet();
   const task = worksheet.tasks.find((one) => one.id === screen);
+  const heading = useRef<HTMLHeadingElement>(null);
+  const shown = useRef(screen);
+  useEffect(() => {
+    if (shown.current === screen) return;
+    shown.current = screen;
+    window.scrollTo(0, 0);
+    heading.current?.focus({ preventScroll: true });
+  }, [screen]);
   const names: Record<string, string> = {
     tasks: 'Choose tasks',
     start: 'Odometer and times',
@@ -52,7 +62,9 @@ function Screen({ opened, screen, step }: WorksheetScreenProps) {
           <p className="label">
             Worksheet, <UserText>{machine?.name ?? 'machine not on this phone'}</UserText>
           </p>
-          <h1>{task ? taskTitle(task) : (names[screen] ?? 'Worksheet')}</h1>
+          <h1 ref={heading} tabIndex={-1} className="outline-none">
+            {task ? taskTitle(task) : (names[screen] ?? 'Worksheet')}
+          </h1>
           <StatusLine opened={opened} />
         </header>
         {task ? <TaskScreen task={task} step={step} /> : <OtherScreen screen={screen} />}
@@ -82,13 +94,13 @@ function NextButton({ id, screen }: { id: string; screen: string }) {
   return (
     <>
       {isTask ? (
-        <LinkButton size="big" href={worksheetHash(id, 'photos')} prefetch={false}>
+        <HashButton size="big" href={worksheetHash(id, 'photos')}>
           Take a photo
-        </LinkButton>
+        </HashButton>
       ) : null}
-      <LinkButton size="big" look="main" href={worksheetHash(id, next.screen)} prefetch={false}>
+      <HashButton size="big" look="main" href={worksheetHash(id, next.screen)}>
         Next: {next.text}
-      </LinkButton>
+      </HashButton>
     </>
   );
 }

@@ -1,5 +1,6 @@
 'use client';
 
+import { useEffect, useRef } from 'react';
 import { worksheetHash } from '@/components/garage/place';
 import { progressWords, taskTitle } from './task-fields';
 import { useWorksheet } from './worksheet-context';
@@ -7,6 +8,10 @@ import { useWorksheet } from './worksheet-context';
 /** All screens of a worksheet: a row that scrolls on a phone, a column on a desk. */
 export function WorksheetScreens({ current }: { current: string }) {
   const { id, worksheet } = useWorksheet();
+  const here = useRef<HTMLAnchorElement>(null);
+  useEffect(() => {
+    here.current?.scrollIntoView({ block: 'nearest', inline: 'center' });
+  }, [current]);
   const screens = [
     { screen: 'tasks', text: 'Tasks', words: undefined },
     { screen: 'start', text: 'Odometer and times', words: undefined },
@@ -23,6 +28,7 @@ export function WorksheetScreens({ current }: { current: string }) {
             className="shrink-0 border-r border-line last:border-r-0 lg:border-r-0 lg:border-b lg:last:border-b"
           >
             <a
+              ref={screen === current ? here : null}
               href={worksheetHash(id, screen)}
               aria-current={screen === current ? 'step' : undefined}
               className="flex min-h-14 flex-col justify-center px-3 leading-tight font-medium aria-[current=step]:bg-petrol aria-[current=step]:text-petrol-ink lg:px-2"

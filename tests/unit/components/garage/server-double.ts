@@ -60,9 +60,9 @@ export class ServerDouble implements GarageApi {
       sentence: 'This text is too long.',
     }));
     return {
-      ok: true,
+      ok: true as const,
       value: { accepted: [...own], refused, changes: structuredClone(others), at: serverAt },
-    } as const;
+    };
   }
   async moveDraft() {
     return this.failing ?? ({ ok: true, value: {} } as const);

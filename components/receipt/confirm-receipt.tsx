@@ -1,0 +1,61 @@
+'use client';
+
+import { useState } from 'react';
+import { useDraftInScreen } from '@/components/garage/draft-context';
+import type { Failure } from '@/components/garage/garage-api';
+import { useGarage } from '@/components/garage/garage-context';
+import { photosOf } from '@/components/garage/photos';
+import { Dock } from '@/components/shell/dock';
+import { Button } from '@/components/ui/button';
+import { Notice } from '@/components/ui/notice';
+
+interface ConfirmReceiptProps {
+  onTry: () => void;
+  onRefused: (fields: Record<string, string>) => void;
+}
+
+function sentenceOf(failure: Failure): string {
+  if (failure.why === 'refused') return failure.sentence;
+  if (failure.why === 'not-signed-in') return 'Sign in to seal it. Everything is kept on this phone.';
+  return 'Sealing needs signal. Everything is kept on this phone; confirm it where there is some.';
+}
+
+/** Sealing the purchase on the shelf, once all of it has been sent. */
+export function ConfirmReceipt({ onTry, onRefused }: ConfirmReceiptProps) {
+  const { garage } = useGarage();
+  const { opened, view, problems } = useDraftInScreen();
+  const [isBusy, setIsBusy] = useState(false);
+  const [sentence, setSentence] = useState<string>();
+  const hasPhoto = photosOf(view).length > 0;
+  const count = Object.keys(problems).length;
+  async function confirm() {
+    onTry();
+    if (count > 0) {
+      setSentence(count === 1 ? 'One field needs another look.' : `${count} fields need another look.`);
+      return;
+    }
+    setIsBusy(true);
+    const answer = await garage?.confirmReceipt(opened);
+    setIsBusy(false);
+    if (!answer || answer.ok) return;
+    setSentence(sentenceOf(answer));
+    if (answer.why === 'refused') onRefused(answer.fields);
+  }
+  return (
+    <div className="mt-6">
+      {hasPhoto ? null : (
+        <p className="tone-warn mb-3">No photo or PDF yet: a reader will see a purchase without its paper.</p>
+      )}
+      {sentence ? (
+        <Notice tone="gap" isLive>
+          {sentence}
+        </Notice>
+      ) : null}
+      <Dock>
+        <Button size="big" look="seal" isBusy={isBusy} onClick={() => void confirm()}>
+          {isBusy ? 'Sealing' : 'Confirm and seal on the shelf'}
+        </Button>
+      </Dock>
+    </div>
+  );
+}
