@@ -1,4 +1,5 @@
 import type { Metadata } from 'next';
+import { connection } from 'next/server';
 import { PublicShell } from '@/components/shell/public-shell';
 import { LinkButton } from '@/components/ui/button';
 import { PageHead } from '@/components/ui/page-head';
@@ -7,7 +8,9 @@ import { paths } from '@/lib/paths';
 
 export const metadata: Metadata = { title: 'Not found' };
 
-export default function NotFound() {
+export default async function NotFound() {
+  // Its scripts carry a nonce, which only a page made for the request can have.
+  await connection();
   return (
     <PublicShell demo={env.isDemo ? 'demo' : 'none'}>
       <PageHead label="Not found" title="There is no such page, or it is not shared with you" />

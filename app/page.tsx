@@ -6,6 +6,9 @@ import { env } from '@/lib/env';
 import { paths } from '@/lib/paths';
 import { DueExample, ReaderExample, RecordExample, WorkExample } from './_landing/example';
 
+// Its scripts carry a nonce, which only a page made for the request can have.
+export const dynamic = 'force-dynamic';
+
 export default function LandingPage() {
   return (
     <PublicShell demo={env.isDemo ? 'demo' : 'none'} width="wide">

@@ -80,7 +80,7 @@ export const insertMailToken = (row: MailTokenRow, within: Within) => mailTokens
 export const findMailToken = (tokenHash: string, within: In = {}) => mailTokens.find({ tokenHash }, within);
 
 /** Marks a token as used. False when it was used before, so that of two at once only one goes on. */
-export async function useMailToken(tokenHash: string, at: string, within: Within) {
+export async function markMailTokenUsed(tokenHash: string, at: string, within: Within) {
   return (await mailTokens.update({ tokenHash, usedAt: null }, { usedAt: at }, within)) === 1;
 }
 

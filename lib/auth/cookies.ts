@@ -22,11 +22,22 @@ export function cookieOptions(name: string, days: number): SessionOptions {
 /** The cookie holds an id and nothing else; whether it still counts is decided by its row. */
 export const sessionCookieOptions = () => cookieOptions('witnessmark-session', longestDays);
 
-export async function sessionCookie(): Promise<IronSession<{ id?: string }>> {
-  return getIronSession(await cookies(), sessionCookieOptions());
+export function sessionCookie(): Promise<IronSession<{ id?: string }>> {
+  return openCookie(sessionCookieOptions());
 }
 
 /** Outlives a session: this device signed in as these people before, so guesses made elsewhere do not slow it down. */
-export async function knownDeviceCookie(): Promise<IronSession<{ id?: string; people?: string[] }>> {
-  return getIronSession(await cookies(), cookieOptions('witnessmark-device', 365));
+export function knownDeviceCookie(): Promise<IronSession<{ id?: string; people?: string[] }>> {
+  return openCookie(cookieOptions('witnessmark-device', 365));
+}
+
+/** A cookie that was not sealed here, or is damaged, counts as none. */
+async function openCookie<T extends object>(options: SessionOptions): Promise<IronSession<T>> {
+  const store = await cookies();
+  try {
+    return await getIronSession<T>(store, options);
+  } catch {
+    const write = store.set.bind(store) as (...given: unknown[]) => void;
+    return getIronSession<T>({ get: () => undefined, set: write }, options);
+  }
 }

@@ -9,7 +9,6 @@ export const emailField = z
   .max(254, 'An e-mail address has at most 254 characters.')
   .pipe(z.email('This is not an e-mail address. It should look like name@host.example.'));
 
-// eslint-disable-next-line no-control-regex -- control characters are exactly what is refused
 const controls = /[\u0000-\u001f\u007f-\u009f\u2028\u2029]/;
 
 export const nameField = z

@@ -1,7 +1,7 @@
 import 'server-only';
 import { createHash, randomBytes } from 'node:crypto';
 import type { Transaction } from '@/db/index';
-import { findMailToken, insertMailToken, useMailToken, type MailTokenRow } from '@/db/queries/people';
+import { findMailToken, insertMailToken, markMailTokenUsed, type MailTokenRow } from '@/db/queries/people';
 import { WitnessmarkError } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';
 
@@ -52,6 +52,6 @@ export async function spendMailToken(
 ): Promise<MailTokenRow> {
   const row = await readMailToken(token, purpose);
   if (row === null) throw deadLink();
-  if (!(await useMailToken(row.tokenHash, now().toISOString(), within))) throw deadLink();
+  if (!(await markMailTokenUsed(row.tokenHash, now().toISOString(), within))) throw deadLink();
   return row;
 }

@@ -48,6 +48,11 @@ export const passwordAgainLimits = (personId: string): Limit[] => [
 /** Links from a mail, tried one after another. */
 export const tokenLimits = (address: string): Limit[] => [{ key: key('mail-token', address), most: 50, minutes: 15 }];
 
+/** Guesses at the addresses of viewing links and invitations. */
+export const secretAddressLimits = (address: string): Limit[] => [
+  { key: key('secret-address', address), most: 50, minutes: 15 },
+];
+
 /**
  * Counts this attempt against every limit, before the work it allows, so that many at once cannot slip through.
  * Throws `too-many-attempts`; an attempt that is refused is not counted, or waiting would never help.

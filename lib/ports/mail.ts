@@ -44,7 +44,6 @@ export function composeMail({ to, subject, text }: Mail): SendMailOptions {
   if (!address.safeParse(to).success || /[\s,;:<>"()[\]\\]/.test(to)) {
     throw new WitnessmarkError('invalid-input', 'A mail goes to exactly one address, such as name@host.example.');
   }
-  // eslint-disable-next-line no-control-regex -- control characters are exactly what is refused
   if (/[\u0000-\u001f\u007f\u0085\u2028\u2029]/.test(subject) || subject.length === 0 || subject.length > 200) {
     throw new WitnessmarkError('invalid-input', 'The subject of a mail is one line of at most 200 characters.');
   }

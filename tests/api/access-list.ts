@@ -10,16 +10,19 @@ const ridersOfTheMachine: readonly Kind[] = ['helper', 'owner'];
 const ownerOnly: readonly Kind[] = ['owner'];
 const stewardOnly: readonly Kind[] = ['steward'];
 
-interface Reach {
+export interface Reach {
   who: readonly Kind[];
+  /** Those who may see the thing, and are told in words that they may not do this with it. */
+  told?: readonly Kind[];
   /** For what is guarded by an object: the address (and form or body) that names it. */
   at?: (world: AccessWorld) => string;
 }
 interface RouteReach extends Reach {
+  /** Answers what pages of other sites send: for programs, and it changes nothing of anybody. */
+  isCrossSite?: boolean;
   json?: (world: AccessWorld) => unknown;
 }
-interface ActionReach {
-  who: readonly Kind[];
+interface ActionReach extends Pick<Reach, 'who' | 'told'> {
   /** A page that uses the action. */
   on: (world: AccessWorld) => string;
   /** Good enough to reach the question of access; a form that is refused before it would prove nothing. */
@@ -39,6 +42,7 @@ export const pages: Record<string, Reach> = {
   '(rider)/start/page.tsx': { who: signedIn },
   '(rider)/account/page.tsx': { who: signedIn },
   '(rider)/machines/new/page.tsx': { who: signedIn },
+  '(rider)/machines/[machine]/page.tsx': { who: ridersOfTheMachine, at: ({ machine }) => `/machines/${machine}` },
   '(rider)/worksheets/[worksheet]/review/page.tsx': {
     who: ridersOfTheMachine,
     at: ({ worksheet }) => `/worksheets/${worksheet}/review`,
@@ -51,6 +55,18 @@ export const pages: Record<string, Reach> = {
 
 /** By method and file under app/. */
 export const routes: Record<string, RouteReach> = {
+  'GET api/health/route.ts': { who: everybody },
+  'GET api/log-keys/route.ts': { who: everybody },
+  'GET api/logs/[log]/checkpoint/route.ts': { who: everybody, at: ({ log }) => `/api/logs/${log}/checkpoint` },
+  'GET api/time-stamp/root.pem/route.ts': { who: everybody },
+  'POST api/time-stamp/route.ts': { who: everybody, isCrossSite: true },
+  'POST api/machines/[machine]/packets/route.ts': {
+    who: ownerOnly,
+    at: ({ machine }) => `/api/machines/${machine}/packets`,
+    json: () => ({ purpose: 'For the service desk' }),
+  },
+  'GET api/packets/[packet]/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}` },
+  'GET api/packets/[packet]/file/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}/file` },
   'GET api/garage/route.ts': { who: signedIn },
   'POST api/drafts/route.ts': {
     who: ridersOfTheMachine,
@@ -73,6 +89,7 @@ export const routes: Record<string, RouteReach> = {
   },
   'POST api/drafts/[draft]/confirm-receipt/route.ts': {
     who: ownerOnly,
+    told: ['helper'],
     at: ({ receipt }) => `/api/drafts/${receipt}/confirm-receipt`,
     json: () => ({}),
   },
@@ -99,6 +116,13 @@ export const actions: Record<string, ActionReach> = {
   '(public)/reset-password/[token]/actions.ts resetPasswordAction': {
     who: everybody,
     on: () => '/reset-password/no-such-token',
+  },
+  // Setting up a machine makes a new one; `authorise` guards only the way back to one that is there.
+  '(rider)/machines/new/actions.ts setUpMachine': { who: signedIn, on: () => '/machines/new' },
+  '(rider)/worksheets/[worksheet]/review/actions.ts seal': {
+    who: ownerOnly,
+    on: ({ worksheet }) => `/worksheets/${worksheet}/review`,
+    form: ({ worksheet }) => ({ worksheet, reviewed: 'what was shown' }),
   },
   '(rider)/account/actions.ts changeAccountAction': { who: signedIn, on: () => '/account' },
   '(rider)/account/actions.ts changePasswordAction': { who: signedIn, on: () => '/account' },

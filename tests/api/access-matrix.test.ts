@@ -2,9 +2,9 @@ import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { beforeAll, describe, expect, test } from 'vitest';
 import { actionBody, actionId } from '@/tests/setup/server-actions';
-import { useServer } from '@/tests/setup/server';
+import { cookieOf, useServer } from '@/tests/setup/server';
 import { useTestDatabase } from '@/tests/setup/test-database';
-import { actions, kinds, pages, routes, type Kind } from './access-list';
+import { actions, kinds, pages, routes, type Kind, type Reach } from './access-list';
 import { buildAccessWorld, type AccessWorld } from './access-world';
 
 useTestDatabase();
@@ -38,7 +38,7 @@ function addressOf(file: string): string {
   return `/${address}`;
 }
 
-type Verdict = 'reached' | 'asked to sign in' | 'hidden' | string;
+type Verdict = 'reached' | 'asked to sign in' | 'hidden' | 'told that they may not' | string;
 
 /** What an answer means. Pages that were already being streamed say it in their text instead of in the status. */
 function verdictOf(answer: { status: number; headers: Headers; body: string }): Verdict {
@@ -48,29 +48,34 @@ function verdictOf(answer: { status: number; headers: Headers; body: string }): 
   if (/^(https?:\/\/[^/]+)?\/sign-in\b(?!.*after=)/.test(away)) return 'asked to sign in';
   if (/NEXT_REDIRECT;\w+;\/sign-in\b(?!.*after=)/.test(body)) return 'asked to sign in';
   if (status === 404 || body.includes('NEXT_HTTP_ERROR_FALLBACK;404')) return 'hidden';
+  if (status === 403 && body.includes('"code":"forbidden"')) return 'told that they may not';
   if (status === 403 || status >= 500) return `${status} ${body.slice(0, 300)}`;
   return 'reached';
 }
 
-function expectedOf(who: readonly Kind[], kind: Kind): Verdict {
+function expectedOf({ who, told = [] }: Pick<Reach, 'who' | 'told'>, kind: Kind): Verdict {
   if (who.includes(kind)) return 'reached';
+  if (told.includes(kind)) return 'told that they may not';
   return kind === 'anonymous' ? 'asked to sign in' : 'hidden';
 }
+
+/** A session of its own for each question: some of what is asked ends sessions. */
+const cookieFor = async (kind: Kind) => (kind === 'anonymous' ? '' : cookieOf(world.people[kind]));
 
 async function ask(kind: Kind, address: string, init: RequestInit = {}): Promise<Verdict> {
   const answer = await fetch(server.url + address, {
     redirect: 'manual',
     ...init,
-    headers: { cookie: world.cookies[kind], origin: server.url, ...init.headers },
+    headers: { cookie: await cookieFor(kind), origin: server.url, ...init.headers },
   });
   return verdictOf({ status: answer.status, headers: answer.headers, body: await answer.text() });
 }
 
 /** One line for each kind of person; the whole is compared, so that a failure shows it all. */
-async function everybody(who: readonly Kind[], asked: (kind: Kind) => Promise<Verdict>) {
+async function everybody(reach: Pick<Reach, 'who' | 'told'>, asked: (kind: Kind) => Promise<Verdict>) {
   const found: Record<string, Verdict> = {};
   for (const kind of kinds) found[kind] = await asked(kind);
-  const expected = Object.fromEntries(kinds.map((kind) => [kind, expectedOf(who, kind)]));
+  const expected = Object.fromEntries(kinds.map((kind) => [kind, expectedOf(reach, kind)]));
   expect(found).toEqual(expected);
 }
 
@@ -96,15 +101,17 @@ describe('the list of who may reach what', () => {
 });
 
 describe('pages', () => {
-  for (const [file, { who, at }] of Object.entries(pages)) {
+  for (const [file, reach] of Object.entries(pages)) {
+    const { who, at } = reach;
     test(`${file} is reached by ${who.join(', ')}`, async () => {
-      await everybody(who, (kind) => ask(kind, at?.(world) ?? addressOf(file)));
+      await everybody(reach, (kind) => ask(kind, at?.(world) ?? addressOf(file)));
     });
   }
 });
 
 describe('routes', () => {
-  for (const [name, { who, at, json }] of Object.entries(routes)) {
+  for (const [name, reach] of Object.entries(routes)) {
+    const { who, at, json, isCrossSite } = reach;
     const [method = '', file = ''] = [name.slice(0, name.indexOf(' ')), name.slice(name.indexOf(' ') + 1)];
     const init = (): RequestInit =>
       json === undefined
@@ -112,13 +119,13 @@ describe('routes', () => {
         : { method, body: JSON.stringify(json(world)), headers: { 'content-type': 'application/json' } };
 
     test(`${name} is reached by ${who.join(', ')}`, async () => {
-      await everybody(who, (kind) => ask(kind, at?.(world) ?? addressOf(file), init()));
+      await everybody(reach, (kind) => ask(kind, at?.(world) ?? addressOf(file), init()));
     });
 
-    if (method === 'GET' || method === 'HEAD') continue;
+    if (method === 'GET' || method === 'HEAD' || isCrossSite) continue;
     test(`${name} refuses what a page of another site sends`, async () => {
       const { headers, ...rest } = init();
-      const foreign = { ...headers, cookie: world.cookies.owner, origin: 'https://elsewhere.example' };
+      const foreign = { ...headers, cookie: await cookieFor('owner'), origin: 'https://elsewhere.example' };
       const answer = await fetch(server.url + (at?.(world) ?? addressOf(file)), { ...rest, headers: foreign });
       expect(answer.status).toBe(403);
       expect(await answer.json()).toMatchObject({ code: 'cross-site' });
@@ -127,7 +134,8 @@ describe('routes', () => {
 });
 
 describe('server actions', () => {
-  for (const [name, { who, on, form }] of Object.entries(actions)) {
+  for (const [name, reach] of Object.entries(actions)) {
+    const { who, on, form } = reach;
     test(`${name} is reached by ${who.join(', ')}`, async () => {
       const [file = '', exported = ''] = name.split(' ');
       // A server under development knows an action only once its page was asked for.
@@ -135,7 +143,7 @@ describe('server actions', () => {
       await ask('owner', on(world));
       const id = actionId(`app/${file}`, exported);
       expect(id, 'the build does not know this action: no page uses it').toBeDefined();
-      await everybody(who, (kind) =>
+      await everybody(reach, (kind) =>
         ask(kind, on(world), {
           method: 'POST',
           headers: { 'next-action': id ?? '' },

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { drafts, files, uploads, type DraftRow } from '@/db/models/drafts';
 import { shops } from '@/db/models/machines';
+import { packets } from '@/db/models/proof';
 import { relations, type PersonRow, type RelationRow } from '@/db/models/people';
 import { shelvesOf } from '@/db/queries/shelves';
 import { blobStore } from '@/lib/ports/blob-store';
@@ -9,9 +10,8 @@ import { mailNames } from '@/lib/ports/mail-folder';
 import { sendMail } from '@/lib/ports/mail';
 import { createMachine } from '@/lib/services/create-machine';
 import { machineInput } from '@/lib/services/machine-input';
-import { cookieOf } from '@/tests/setup/server';
 import { makePerson } from '@/tests/setup/test-database';
-import { kinds, type Kind } from './access-list';
+import type { Kind } from './access-list';
 
 /** One machine with its owner and helper, their shelf, a shop with its technician, and people who have none of it. */
 export interface AccessWorld {
@@ -24,10 +24,12 @@ export interface AccessWorld {
   discarded: string;
   /** SHA-256 of a picture on the worksheet. */
   plate: string;
+  log: string;
+  /** A packet that could not be built, so that nothing waits for it. */
+  packet: string;
   /** File name of a mail. */
   mail: string;
   people: Record<Exclude<Kind, 'anonymous'>, PersonRow>;
-  cookies: Record<Kind, string>;
 }
 
 export async function buildAccessWorld(): Promise<AccessWorld> {
@@ -38,7 +40,7 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
     technician: await makePerson({ name: 'Teodora Lindqvist' }),
     steward: await makePerson({ name: 'Steward', isSteward: true }),
   };
-  const { machine } = await createMachine({ person: people.owner, input: sorrel() });
+  const { machine, log } = await createMachine({ person: people.owner, input: sorrel() });
   const shelf = (await shelvesOf(people.owner.id))[0]!.id;
   const shop = randomUUID();
   const at = now().toISOString();
@@ -76,16 +78,12 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
     worksheet,
     receipt,
     discarded,
+    log,
+    packet: await failedPacket(machine, people.owner.id),
     plate: await picture(worksheet, people.owner.id),
     mail: (await mailNames())[0]!,
     people,
-    cookies: await cookiesOf(people),
   };
-}
-
-async function cookiesOf(people: AccessWorld['people']): Promise<AccessWorld['cookies']> {
-  const pairs = kinds.map(async (kind) => [kind, kind === 'anonymous' ? '' : await cookieOf(people[kind])] as const);
-  return Object.fromEntries(await Promise.all(pairs)) as AccessWorld['cookies'];
 }
 
 async function relate(
@@ -104,6 +102,30 @@ async function relate(
     since,
     until: null,
   });
+}
+
+async function failedPacket(machineId: string, createdBy: string): Promise<string> {
+  const id = randomUUID();
+  const at = now().toISOString();
+  await packets.insert({
+    id,
+    machineId,
+    number: 'WM-TEST-0001',
+    purpose: 'For the service desk',
+    state: 'failed',
+    stage: '',
+    progress: 0,
+    error: 'The disk was full.',
+    createdBy,
+    createdAt: at,
+    finishedAt: at,
+    fileSha256: null,
+    bytes: null,
+    pages: null,
+    logSize: null,
+    linkId: null,
+  });
+  return id;
 }
 
 /** The stored bytes need not be a picture here: only who gets them is asked. */
@@ -135,7 +157,7 @@ function sorrel() {
     make: 'Corvane',
     model: 'Sorrel 1800',
     modelYear: '2022',
-    kind: 'big-air-cooled-v-twin',
+    kind: 'big V-twin tourer',
     vin: 'AAACRVSR3NA000417',
     distanceUnit: '[mi_i]',
     timeZone: 'UTC',

@@ -20,7 +20,7 @@ export function actionId(file: string, name: string): string | undefined {
 /** A form action's call as React sends it: the previous state and a form, in one multipart body. */
 export function actionBody(fields: Record<string, string>): FormData {
   const body = new FormData();
-  for (const [name, value] of Object.entries(fields)) body.append(`1_${name}`, value);
+  for (const [name, value] of Object.entries(fields)) body.append(`_1_${name}`, value);
   body.append('0', JSON.stringify([{ ok: false, fields: {}, typed: {} }, '$K1']));
   return body;
 }
