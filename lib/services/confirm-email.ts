@@ -4,6 +4,7 @@ import { findPerson, spendMailTokens, updatePerson } from '@/db/queries/people';
 import { deadLink, spendMailToken } from '@/lib/auth/mail-token';
 import { countAttempt, tokenLimits } from '@/lib/auth/throttle';
 import { now } from '@/lib/ports/clock';
+import { appointSteward } from './appoint-steward';
 import type { SignUpDetail } from './sign-up';
 
 /** Makes the account of a sign-up usable. Throws `gone` for a link that was used, is too old, or never was. */
@@ -18,4 +19,5 @@ export async function confirmEmail({ token, address }: { token: string; address:
     await updatePerson(personId, { ...chosen, emailConfirmedAt: at }, { transaction });
     await spendMailTokens(personId, 'confirm-email', at, { transaction });
   });
+  await appointSteward();
 }

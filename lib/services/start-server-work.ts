@@ -3,6 +3,8 @@ import { prepareDatabase } from '@/db/index';
 import { migrate } from '@/db/migrate';
 import { sweepIncomingBlobs } from '@/lib/ports/blob-store';
 import { ownCertificates } from '@/lib/ports/time-stamp-authority/own-certificates';
+import { appointSteward } from '@/lib/services/appoint-steward';
+import { resumePackets } from '@/lib/services/build-packet';
 import { publishedKeys } from '@/lib/services/log-keys';
 import { noticeRollbacks } from '@/lib/services/notice-rollback';
 import { kickStamping } from '@/lib/services/stamp-checkpoints';
@@ -18,6 +20,7 @@ const shared = globalThis as typeof globalThis & {
 const beforeFirstRequest: (() => Promise<unknown>)[] = [
   prepareDatabase,
   migrate,
+  appointSteward,
   // Made now, so that a key that cannot be used is said at the start and not at somebody's seal.
   async () => [publishedKeys(), ownCertificates()],
   reportRollbacks,
@@ -25,7 +28,7 @@ const beforeFirstRequest: (() => Promise<unknown>)[] = [
 ];
 
 /** What an earlier run left unfinished, taken up again in the background; none of it may hold up or stop the start. */
-const resumed: (() => void | Promise<void>)[] = [kickStamping];
+const resumed: (() => void | Promise<void>)[] = [kickStamping, resumePackets];
 
 /** Runs once per server. Safe to call again: later calls wait for the first. */
 export function startServerWork(): Promise<void> {
