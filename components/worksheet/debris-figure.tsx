@@ -8,9 +8,9 @@ export function DebrisFigure({ grade }: { grade: string }) {
     <svg
       aria-hidden="true"
       viewBox="0 0 48 40"
-      width="48"
-      height="40"
-      className="fill-none stroke-current stroke-[1.5]"
+      width="42"
+      height="35"
+      className="-mx-1 fill-none stroke-current stroke-[1.5]"
     >
       <path d="M8 26H40V32H8ZM15 32V38H33V32" />
       {grade === '1' ? fuzz.map((x, index) => <path key={x} d={`M${x} 26L${x + (index % 2 ? 2 : -1)} 21`} />) : null}

@@ -9,7 +9,7 @@ import { localDateOf } from '@/lib/domain/instants';
 import { hasLeft, proposeDraws, type Lot } from '@/lib/domain/shelf';
 import { compareAmounts, formatAmount, units, unitsOf } from '@/lib/domain/units';
 import { balanceLeft, drawnTotal, itemDraws, lotWords, suitableLots } from './draw-figures';
-import { pourSentence } from './fill-figures';
+import { pourSentence, readAmount } from './fill-figures';
 import { lotsBeside, useWorksheet } from './worksheet-context';
 
 export interface DrawEntryProps {
@@ -87,14 +87,15 @@ function DrawLine({ path, lot, lots, wanted }: DrawLineProps) {
   const { view } = useDraftInScreen();
   const unit = lot?.unit ?? '{piece}';
   const amount = view.fields[`${path}/amount`];
+  const drawn = readAmount({ ...(amount ? { amount } : {}), unit: lotUnit(view.fields[`${path}/unit`], unit) });
   const sentence = lot && wanted && amount === wanted.amount ? pourSentence(wanted, lot) : undefined;
   return (
     <div className="mt-2 border-b border-hair pb-2">
-      <p className="text-lg font-medium">{lot ? lotWords(lot) : 'A lot that is not on this phone'}</p>
+      <p className="text-lg font-medium">{lot ? lotWords(lot, drawn) : 'A lot that is not on this phone'}</p>
       {sentence ? <p className="tag">{sentence}</p> : null}
       <details className="mt-1">
         <summary className="flex min-h-11 items-center font-medium text-petrol underline underline-offset-4">
-          {amount ? `${amount} ${units[lotUnit(view.fields[`${path}/unit`], unit)].label} from it: change` : 'Change'}
+          {drawn ? `${formatAmount(drawn)} from it: change` : 'Change'}
         </summary>
         <div className="mt-2 space-y-3">
           <DraftSelect

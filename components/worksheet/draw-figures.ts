@@ -41,9 +41,12 @@ export function suitableLots(lots: readonly Lot[], wanted: { grade?: string; par
   return [...lots];
 }
 
-/** A lot in words, with what is left of it beside this worksheet's other draws. */
-export function lotWords(lot: Lot): string {
-  const left = new Decimal(lot.balance.amount).gt(0) ? `${formatAmount(lot.balance)} left` : 'nothing left';
+/** A lot in words, with what is left of it beside this worksheet's other draws, or once `drawn` has left it too. */
+export function lotWords(lot: Lot, drawn?: Amount): string {
+  const isAlike = drawn !== undefined && units[drawn.unit].dimension === units[lot.unit].dimension;
+  const balance = isAlike ? balanceAfter(lot.balance, [drawn]) : lot.balance;
+  const amount = new Decimal(balance.amount).gt(0) ? `${formatAmount(balance)} left` : 'nothing left';
+  const left = isAlike ? `${amount} after this` : amount;
   const grade = lot.grade && !lot.product.includes(lot.grade) ? ` ${lot.grade}` : '';
   return `Lot ${lot.seq}: ${lot.product}${grade}, bought ${formatLocalDate(lot.boughtOn.date)}, ${left}`;
 }
@@ -62,7 +65,7 @@ export function balanceLeft(state: {
       : `${formatAmount(wanted)} not from a lot yet. Left so, it is sealed as a gap.`;
   }
   const order = compareAmounts(drawn, wanted);
-  if (order === 0) return `All ${formatAmount(wanted)} from lots.`;
+  if (order === 0) return `Covered: ${formatAmount(wanted)} from lots.`;
   if (order > 0) return `${formatAmount(drawn)} drawn for ${formatAmount(wanted)} used. Correct one of the two.`;
   return `${formatAmount(balanceAfter(wanted, [drawn]))} not from a lot. Left so, it is sealed as a gap.`;
 }

@@ -20,7 +20,7 @@ export function InspectionEntry({ task, point }: { task: string; point: Inspecti
           hint={chosen?.text ?? 'What is on it before it is wiped.'}
           options={debrisGrades.map(({ grade: value, title }) => ({
             value,
-            label: title,
+            label: <span className="-mx-2 text-base whitespace-nowrap">{title}</span>,
             picture: <DebrisFigure grade={value} />,
           }))}
         />
