@@ -8,7 +8,7 @@ import { convert, formatAmount, isUnitCode, sumAmounts, units } from '@/lib/doma
 import type { Amount, Draw, Odometer, ScheduleItem } from '@/lib/evidence/format';
 import type { RecordView } from '@/lib/services/record-view';
 import { isService, purchasesOf, type PacketContent, type ServiceEntry } from './content';
-import { counted } from './words';
+import { counted, lowered, productWords } from './words';
 
 const promptDays = 7;
 
@@ -42,7 +42,7 @@ export interface PacketSummary {
 const isOpen = (entry: ServiceEntry) => entry.body !== null && entry.struckBy === null;
 
 /** What the record amounts to, from its opened entries. Struck services count for nothing. */
-export function summarise({ record, madeAt, zone }: PacketContent): PacketSummary {
+export function summarise({ record, madeAt, zone }: Pick<PacketContent, 'record' | 'madeAt' | 'zone'>): PacketSummary {
   const services = record.entries.filter(isService).filter(isOpen);
   const history = historyOf(record, localDateOf(madeAt, zone));
   const done = doneOf(services);
@@ -120,8 +120,6 @@ function doneOf(services: ServiceEntry[]): DoneService[] {
 }
 
 const mostNamed = 3;
-const lowered = (title: string) =>
-  /^\p{Lu}\p{Ll}/u.test(title) ? title.charAt(0).toLowerCase() + title.slice(1) : title;
 function listed(titles: string[], others: string): string {
   const named = titles.length > mostNamed + 1 ? titles.slice(0, mostNamed) : titles;
   const rest = titles.length - named.length;
@@ -172,7 +170,7 @@ function usesIn(services: ServiceEntry[]): Use[] {
       ...task.fills.map((fill) => ({
         ...fill,
         seq,
-        what: [fill.product ?? fill.pointTitle, fill.grade].filter(Boolean).join(', '),
+        what: productWords(fill.product ?? fill.pointTitle, fill.grade),
       })),
       ...task.parts.map((part) => ({ ...part, seq, what: [part.name, part.partNumber].filter(Boolean).join(', ') })),
     ]),
@@ -185,7 +183,7 @@ function usesOf(record: RecordView, services: ServiceEntry[]): UseSummary[] {
   const draws = uses.flatMap(({ seq, draws }) => draws.map((draw) => ({ ...draw, seq })));
   const lots = purchasesOf(record).flatMap(({ log, seq, body }) =>
     body.lines.map((line) => {
-      const what = [line.product, line.kind === 'fluid' ? line.grade : line.partNumber].filter(Boolean).join(', ');
+      const what = productWords(line.product, line.kind === 'fluid' ? line.grade : line.partNumber);
       const drawn = draws.filter(
         (one) => one.purchase.log === log && one.purchase.seq === seq && one.line === line.line,
       );

@@ -126,3 +126,13 @@ export function bytesWords(bytes: number): string {
 
 /** A measured distance to the whole unit, for reading. */
 export const roundedOf = ({ amount }: Amount): string => new Decimal(amount).toFixed(0);
+
+/** Inside a sentence; what does not begin like a plain word stays as it is. */
+export const lowered = (text: string): string =>
+  /^\p{Lu}\p{Ll}/u.test(text) ? text.charAt(0).toLowerCase() + text.slice(1) : text;
+
+/** A product with its grade, said once where the product's own name has it already. */
+export function productWords(product: string, grade: string | undefined): string {
+  if (grade === undefined || product.includes(grade.replace(/^SAE /, ''))) return product;
+  return `${product}, ${grade}`;
+}

@@ -5,7 +5,7 @@ import { write, type Transaction } from '@/db/index';
 import type { PersonRow } from '@/db/queries/people';
 import { insertPacket, isPacketNumberTaken, type PacketRow } from '@/db/queries/packets';
 import { authorise } from '@/lib/auth/guard';
-import { isAcceptableText, normaliseText } from '@/lib/evidence/text';
+import { isAcceptableText } from '@/lib/evidence/text';
 import { now } from '@/lib/ports/clock';
 import { kickPackets } from '@/lib/services/build-packet';
 
@@ -17,8 +17,8 @@ export const requestPacketInput = z.object({
     .string()
     .trim()
     .max(longestPurpose, `Keep the purpose under ${longestPurpose} characters.`)
-    .transform(normaliseText)
-    .refine(isAcceptableText, 'Leave out control and direction characters.')
+    .refine((text) => isAcceptableText(text.normalize('NFC')), 'Leave out control and direction characters.')
+    .transform((text) => text.normalize('NFC'))
     .default(''),
 });
 export type RequestPacketInput = z.infer<typeof requestPacketInput>;

@@ -216,11 +216,12 @@ function breakable(text: string): string[] {
         current = '';
         continue;
       }
-      current += segment;
-      if (/[-–—/@_]$/.test(segment) && current.length > 2) {
+      // "20W-50" stays whole; "side-stand" may be parted.
+      if (current.length > 2 && /[-–—/@_]$/.test(current) && !/^\d/.test(segment)) {
         tokens.push(current);
         current = '';
       }
+      current += segment;
     }
     if (current !== '') tokens.push(current);
   }

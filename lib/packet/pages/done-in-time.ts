@@ -12,7 +12,9 @@ import { roundedOf } from '../words';
 const labelWidth = 104;
 const unitWidth = 22;
 const ruleHeight = 17;
-const laneHeight = 26;
+const laneHeight = 23;
+/** More would push what was bought, and the gaps, from sight; the table below has every item. */
+const mostLanes = 8;
 const left = edges.left + labelWidth;
 const right = edges.right - unitWidth;
 
@@ -25,8 +27,7 @@ export function drawDoneInTime(sheet: Sheet, { history, now }: PacketSummary, it
   if (!(total > from)) return;
   const to = ruleEnd(from, total);
   const xOf = (figure: number) => left + ((figure - from) / (to - from)) * (right - left);
-  const most = Math.floor((edges.bottom - edges.top - 80) / laneHeight);
-  const lanes = items.slice(0, Math.min(most, 12));
+  const lanes = lanesOf(items);
   const height = ruleHeight + 14 + lanes.length * laneHeight;
   sheet.room(height);
   const { layer } = sheet;
@@ -52,6 +53,14 @@ export function drawDoneInTime(sheet: Sheet, { history, now }: PacketSummary, it
     },
   );
   sheet.y = top + height + 4;
+}
+
+/** Late items first to be kept, then as the schedule lists them. */
+function lanesOf(items: ItemSummary[]): ItemSummary[] {
+  if (items.length <= mostLanes) return items;
+  const ranked = [...items].sort((a, b) => b.summary.late - a.summary.late || b.summary.done - a.summary.done);
+  const kept = new Set(ranked.slice(0, mostLanes));
+  return items.filter((item) => kept.has(item));
 }
 
 function drawRule(sheet: Sheet, top: number, xOf: (figure: number) => number, from: number, to: number, unit: string) {

@@ -11,7 +11,7 @@ import { drawMark, markWords } from '../sheet/mark';
 import { drawPlates } from '../sheet/plates';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
-import { capacityWords, kindWords, odometerWords, performerWords, sentence } from '../words';
+import { capacityWords, kindWords, lowered, odometerWords, performerWords, sentence } from '../words';
 import { drawBody } from './entry-body';
 import { drawLeaf, provenCell } from './leaf';
 import { platesOf } from './plates-of';
@@ -154,21 +154,26 @@ function drawFollowing(sheet: Sheet, entry: EntryView, content: PacketContent): 
 
 function drawChecks(sheet: Sheet, { checks }: ServiceBody): void {
   if (checks.length === 0) return;
+  const answered = checks.filter(({ result }) => result !== 'not-applicable');
+  const others = checks.filter(({ result }) => result === 'not-applicable');
   sheet.heading('Reader’s checks, as they stood at sealing', { tag: 'H3', below: 60 });
-  const results = { met: 'met', gap: 'gap', 'not-applicable': 'does not apply' } as const;
-  drawTable(
-    sheet,
-    [
-      { title: 'Question', share: 3 },
-      { title: 'Answer', share: 1.2, type: types.strong },
-      { title: 'Detail', share: 5 },
-    ],
-    checks.map(({ key, result, detail }) => [
-      checkTitle(key),
-      { text: results[result], isGap: result === 'gap' },
-      detail,
-    ]),
+  if (answered.length > 0) {
+    drawTable(
+      sheet,
+      [
+        { title: 'Question', share: 3 },
+        { title: 'Answer', share: 0.9, type: types.strong },
+        { title: 'Detail', share: 6 },
+      ],
+      answered.map(({ key, result, detail }) => [checkTitle(key), { text: result, isGap: result === 'gap' }, detail]),
+    );
+  }
+  if (others.length === 0) return;
+  sheet.gap(4);
+  const words = others.map(({ key, detail }) =>
+    detail === '' ? checkTitle(key) : `${checkTitle(key)} (${lowered(detail)})`,
   );
+  sheet.paragraph(`Does not apply: ${words.join('; ')}.`, types.small);
 }
 
 function drawCountersignatures(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void {

@@ -7,7 +7,7 @@ import { purchasesOf, receiptAnchor, receiptName } from '../content';
 import { drawBoxes, type Cell } from '../sheet/boxes';
 import { types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
-import { amountsWords, gradeWords, metricWords } from '../words';
+import { amountsWords, gradeWords, metricWords, productWords } from '../words';
 
 /** One task of a service, or the same members of an addendum. */
 export function drawTask(sheet: Sheet, task: Partial<Task> & { title: string }, record: RecordView): void {
@@ -46,7 +46,9 @@ function fillCell(fill: Fill): Cell {
   const specified = specification === undefined ? undefined : `specified ${amountsWords(specification)}`;
   const missing = uncovered === undefined ? undefined : `${formatAmount(uncovered)} without a receipt`;
   return {
-    label: [`${pointTitle}, ${fillKind} fill`, product, grade].filter(Boolean).join(', '),
+    label: [`${pointTitle}, ${fillKind} fill`, product === undefined ? grade : productWords(product, grade)]
+      .filter(Boolean)
+      .join(', '),
     value: value === '' ? 'not stated' : value,
     kind: 'number',
     span: 2,
@@ -106,7 +108,7 @@ function drawDraws(sheet: Sheet, task: Partial<Task>, record: RecordView): void 
       { title: 'Receipt', share: 1.6 },
     ],
     draws.map((draw) => [
-      `${receiptName(draw.purchase)} line ${draw.line}: ${[draw.product, draw.grade].filter(Boolean).join(', ')}`,
+      `${receiptName(draw.purchase)} line ${draw.line}: ${productWords(draw.product, draw.grade)}`,
       formatLocalDate(draw.boughtOn),
       formatAmount({ amount: draw.amount, unit: draw.unit }),
       formatAmount(draw.balanceAfter),

@@ -1,11 +1,11 @@
 import 'server-only';
 import { formatLocalDate } from '@/lib/domain/instants';
 import { formatDistance, units } from '@/lib/domain/units';
-import type { Source, TermsBody } from '@/lib/evidence/format';
+import type { TermsBody } from '@/lib/evidence/format';
 import type { PacketContent } from '../content';
 import { drawBoxes } from '../sheet/boxes';
 import { types, type Sheet } from '../sheet/sheet';
-import { drawTable, type TableCell } from '../sheet/table';
+import { drawTable } from '../sheet/table';
 import { amountsWords, intervalWords, odometerWords, sourceWords } from '../words';
 
 /** The machine, its warranty, and the newest sealed terms, every figure with its source. */
@@ -59,11 +59,6 @@ function drawMachine(sheet: Sheet, { record, owner }: PacketContent): void {
   ]);
 }
 
-const sourceCell = (source: Source): TableCell => ({
-  text: sourceWords(source),
-  isGap: source.kind === 'common-practice',
-});
-
 function drawWarranty(sheet: Sheet, { warranty }: TermsBody): void {
   sheet.heading('Warranty');
   if (warranty.length === 0) {
@@ -84,7 +79,7 @@ function drawWarranty(sheet: Sheet, { warranty }: TermsBody): void {
       formatLocalDate(startsOn),
       months ?? 'no limit',
       (distances ?? []).map((distance) => formatDistance(distance)).join(', ') || 'no limit',
-      sourceCell(source),
+      sourceWords(source),
     ]),
   );
 }
@@ -105,7 +100,7 @@ function drawSchedule(sheet: Sheet, { schedule }: TermsBody): void {
       intervalWords(interval),
       intervalWords(firstService),
       intervalWords(grace),
-      sourceCell(source),
+      sourceWords(source),
     ]),
   );
 }
@@ -129,7 +124,7 @@ function drawSpecifications(sheet: Sheet, { fluidPoints, fasteners, parts }: Ter
         amountsWords(point.dryFill),
         [point.grade, point.standard].filter(Boolean).join(', '),
         [point.levelTemperature, point.levelPosition].filter(Boolean).join(', '),
-        sourceCell(point.source),
+        sourceWords(point.source),
       ]),
     );
   }
@@ -147,7 +142,7 @@ function drawSpecifications(sheet: Sheet, { fluidPoints, fasteners, parts }: Ter
         title,
         bands.map(({ min, max, unit }) => `${min === max ? min : `${min} to ${max}`} ${units[unit].label}`).join(', '),
         sequence ?? '',
-        sourceCell(source),
+        sourceWords(source),
       ]),
     );
   }
@@ -165,7 +160,7 @@ function drawSpecifications(sheet: Sheet, { fluidPoints, fasteners, parts }: Ter
         title,
         partNumbers.join(', '),
         quantity,
-        sourceCell(source),
+        sourceWords(source),
       ]),
     );
   }
