@@ -3,6 +3,8 @@ export const paths = {
   home: '/',
   method: '/method',
   verify: '/verify',
+  /** The one-file check for a reader's own computer. */
+  verifyProgram: '/verify.mjs',
   privacy: '/method#what-is-kept',
 
   signUp: '/sign-up',
@@ -41,11 +43,15 @@ export const paths = {
   /** A shop's answer to an invitation. The token is swapped for a cookie at the first visit. */
   invitation: (token: string) => `/countersign/${token}`,
   invitationAnswer: (invitation: string) => `/countersign/answer/${invitation}`,
+  invitationEnded: (invitation: string) => `/countersign/answer/${invitation}/ended`,
+  invitationFile: (invitation: string, sha256: string, kind: 'thumb' | 'plate' | 'copy') =>
+    `/countersign/answer/${invitation}/files/${sha256}/${kind}`,
   shop: (shop: string) => `/shops/${shop}`,
 
   /** What a viewing link's reader sees. */
   viewingLink: (token: string) => `/v/${token}`,
   viewing: (link: string) => `/view/${link}`,
+  viewingEnded: (link: string) => `/view/${link}/ended`,
   viewingEntry: (link: string, seq: number) => `/view/${link}/entries/${seq}`,
 
   steward: '/steward',
