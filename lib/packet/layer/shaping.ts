@@ -35,15 +35,12 @@ export const missingWidth = 620;
 
 /** NFC; lone surrogates made visible, controls and direction overrides taken out, tabs made spaces. Newlines stay. */
 export function cleanText(text: string): string {
-  return (
-    text
-      .replace(/\p{Surrogate}/gu, '\ufffd')
-      .normalize('NFC')
-      .replace(/\r\n?/g, '\n')
-      .replace(/\t/g, ' ')
-      // eslint-disable-next-line no-control-regex
-      .replace(/[\u0000-\u0009\u000b-\u001f\u007f-\u009f\u202a-\u202e\u2066-\u2069\ufeff]/g, '')
-  );
+  return text
+    .replace(/\p{Surrogate}/gu, '\ufffd')
+    .normalize('NFC')
+    .replace(/\r\n?/g, '\n')
+    .replace(/\t/g, ' ')
+    .replace(/[\u0000-\u0009\u000b-\u001f\u007f-\u009f\u202a-\u202e\u2066-\u2069\ufeff]/g, '');
 }
 
 /** fontkit's own types leave out the last three parameters. */

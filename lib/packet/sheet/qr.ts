@@ -9,7 +9,7 @@ const quietModules = 4;
 /** A QR code with its quiet zone in a square of `size` points. Runs of modules are drawn as one bar. */
 export function drawQr(sheet: Sheet, text: string, alt: string, x: number, y: number, size: number): void {
   const { modules } = QRCode.create(text, { errorCorrectionLevel: 'M' });
-  const module = size / (modules.size + 2 * quietModules);
+  const edge = size / (modules.size + 2 * quietModules);
   const { layer } = sheet;
   layer.tag(
     'Figure',
@@ -21,9 +21,9 @@ export function drawQr(sheet: Sheet, text: string, alt: string, x: number, y: nu
           let end = column;
           while (end < modules.size && modules.get(row, end) === 1) end++;
           if (end > column) {
-            const [left, top] = [x + (column + quietModules) * module, y + (row + quietModules) * module];
+            const [left, top] = [x + (column + quietModules) * edge, y + (row + quietModules) * edge];
             // A hair of overlap keeps a viewer's rounding from leaving white lines between rows.
-            layer.rect(left, top, (end - column) * module, module * 1.02, { fill: '#000000' });
+            layer.rect(left, top, (end - column) * module, edge * 1.02, { fill: '#000000' });
           }
           column = Math.max(end, column + 1);
         }
