@@ -37,7 +37,7 @@ async function openCookie<T extends object>(options: SessionOptions): Promise<Ir
   try {
     return await getIronSession<T>(store, options);
   } catch {
-    const write = store.set.bind(store) as (...given: unknown[]) => void;
-    return getIronSession<T>({ get: () => undefined, set: write }, options);
+    const blank = { get: () => undefined, set: store.set.bind(store) as typeof store.set };
+    return getIronSession<T>(blank, options);
   }
 }

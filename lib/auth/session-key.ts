@@ -36,7 +36,7 @@ function makeKey(file: string): string {
   mkdirSync(path.dirname(file), { recursive: true, mode: 0o700 });
   const key = randomBytes(48).toString('base64url');
   const temporary = `${file}.${process.pid}.${randomBytes(4).toString('hex')}`;
-  const descriptor = openSync(temporary, 'wx', 0o600);
+  const descriptor = openSync(/* turbopackIgnore: true */ temporary, 'wx', 0o600);
   writeSync(descriptor, `${key}\n`);
   fsyncSync(descriptor);
   closeSync(descriptor);
