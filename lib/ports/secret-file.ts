@@ -49,7 +49,7 @@ function makeFile(file: string, text: string): void {
   const folder = path.dirname(file);
   mkdirSync(folder, { recursive: true, mode: 0o700 });
   const temporary = `${file}.${randomUUID()}`;
-  const descriptor = openSync(temporary, 'wx', ownerOnly);
+  const descriptor = openSync(/* turbopackIgnore: true */ temporary, 'wx', ownerOnly);
   try {
     writeSync(descriptor, text);
     fsyncSync(descriptor);
