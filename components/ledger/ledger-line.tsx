@@ -22,20 +22,36 @@ export interface LedgerLineProps {
   words: string;
   wordsTone?: Tone | undefined;
   isStruck?: boolean | undefined;
+  /** Set smaller, for lines that say something about the record itself. */
+  isQuiet?: boolean | undefined;
 }
 
 const thumbsShown = 3;
 
 /** One entry of a record. A desk reads it as columns; on a phone date and odometer stand above the title. */
 export function LedgerLine(props: LedgerLineProps) {
-  const { seq, href, date, dateTime, odometer, title, detail, detailTone = 'soft', mark, words, isStruck } = props;
+  const {
+    seq,
+    href,
+    date,
+    dateTime,
+    odometer,
+    title,
+    detail,
+    detailTone = 'soft',
+    mark,
+    words,
+    isStruck,
+    isQuiet,
+  } = props;
   const thumbs = props.thumbs ?? [];
   const hidden = thumbs.length - thumbsShown;
   return (
     <li
       className={classes(
         'kept-together relative grid grid-cols-[2.75rem_minmax(0,1fr)_6rem] border-b border-hair py-3 last:border-b-0',
-        'lg:min-h-24 lg:grid-cols-[4rem_7.5rem_7.25rem_minmax(0,1fr)_auto_7.5rem] lg:items-center lg:py-2.5',
+        isQuiet ? 'lg:min-h-20' : 'lg:min-h-24',
+        'lg:grid-cols-[4rem_7.5rem_7.25rem_minmax(0,1fr)_auto_7.5rem] lg:items-center lg:py-2.5',
         href && 'hover:bg-paper has-focus-visible:bg-paper',
       )}
     >
@@ -50,7 +66,13 @@ export function LedgerLine(props: LedgerLineProps) {
         <span className="figure text-xl lg:text-[1.375rem]">{odometer}</span>
       </div>
       <div className="col-start-2 row-start-2 min-w-0 pl-3 lg:col-start-4 lg:row-start-1 lg:pr-4 lg:pl-0">
-        <p className={classes('text-[1.0625rem] leading-snug font-semibold', isStruck && 'font-medium text-soft')}>
+        <p
+          className={classes(
+            'leading-snug',
+            isQuiet ? 'font-medium' : 'text-[1.0625rem] font-semibold',
+            isStruck && 'font-medium text-soft',
+          )}
+        >
           {href ? (
             <Link href={href} className="after:absolute after:inset-0 hover:underline underline-offset-4 decoration-1">
               <StruckText isStruck={isStruck}>{title}</StruckText>
@@ -72,7 +94,7 @@ export function LedgerLine(props: LedgerLineProps) {
         </div>
       ) : null}
       <div className="col-start-3 row-span-3 row-start-1 flex flex-col items-center gap-1 self-center px-1 text-center lg:col-start-6 lg:row-span-1">
-        <WitnessMark {...mark} title={null} size={52} />
+        <WitnessMark {...mark} title={null} size={isQuiet ? 48 : 52} />
         <span className={classes('text-sm leading-tight', toneClasses[props.wordsTone ?? 'soft'])}>{words}</span>
       </div>
     </li>

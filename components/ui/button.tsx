@@ -48,3 +48,8 @@ export function Button({ look, size, isWide, isBusy, className, onClick, ...rest
 export function LinkButton({ look, size, isWide, className, ...rest }: LinkButtonProps) {
   return <Link {...rest} className={buttonClasses({ look, size, isWide }, className)} />;
 }
+
+/** An ordinary link that looks like a button: for what is no page of this application's router, such as the garage. */
+export function AnchorButton({ look, size, isWide, className, ...rest }: ComponentPropsWithRef<'a'> & Looks) {
+  return <a {...rest} className={buttonClasses({ look, size, isWide }, className)} />;
+}

@@ -89,8 +89,8 @@ export async function readShelf({
     log: logView(stored),
     name: opening?.name ?? 'Shelf',
     entries: opened.map((entry): ShelfEntryView => {
-      const { kind, leaf, leafHash, values } = entry;
-      const base = { log: leaf.log, seq: leaf.seq, kind, sealedAt: leaf.sealedAt, leafHash };
+      const { kind, leaf, leafHash, values, tokens } = entry;
+      const base = { log: leaf.log, seq: leaf.seq, kind, sealedAt: leaf.sealedAt, leafHash, tokens };
       if (kind === 'opening')
         return { ...base, ...(opening === undefined ? {} : { opening }), author: authorOf(entry) };
       const purchase = kind === 'purchase' ? purchaseView(leaf.log, entry, []) : null;

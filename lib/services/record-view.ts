@@ -102,6 +102,7 @@ export interface ShelfEntryView {
   kind: EntryKind;
   sealedAt: string;
   leafHash: string;
+  tokens: TokenView[];
   opening?: ShelfOpeningBody;
   purchase?: PurchaseView;
   /** The body of every other kind: disposal, correction, strike, handover. Undefined when withheld. */

@@ -1,0 +1,38 @@
+import type { AttachmentRole, TermsBody } from '@/lib/evidence/format';
+import type { LogView, PurchaseView } from '@/lib/services/record-view';
+
+/** What a page knows of the record around one entry. */
+export interface EntryFacts {
+  /** IANA name; times of the server are shown in it. */
+  zone: string;
+  log: LogView;
+  /** The purchases the record draws from. */
+  purchases: PurchaseView[];
+  termsBySeq: Map<number, TermsBody>;
+}
+
+export type FileKind = 'thumb' | 'plate' | 'copy' | 'original';
+
+/** Addresses differ by who reads; undefined where this reader has none. */
+export interface EntryLinks {
+  /** `sha256` is the original's. */
+  file: (sha256: string, kind: FileKind) => string | undefined;
+  entry?: (seq: number) => string | undefined;
+  receipt?: (log: string, seq: number) => string | undefined;
+}
+
+/** Roles shown first: what the work looked like, then papers. */
+export const plateOrder: AttachmentRole[] = [
+  'odometer',
+  'as-found',
+  'magnet',
+  'part',
+  'as-left',
+  'work-order',
+  'lab-report',
+  'manual-page',
+  'document',
+  'receipt-front',
+  'receipt-back',
+  'receipt-page',
+];

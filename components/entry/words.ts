@@ -1,0 +1,91 @@
+import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
+import { convert, Decimal, formatAmount, units } from '@/lib/domain/units';
+import type { Amount, Attachment, AttachmentRole, AuthorPart, CountersignCapacity } from '@/lib/evidence/format';
+import type { EntryView, TokenView } from '@/lib/services/record-view';
+
+export const roleWords: Record<AttachmentRole, string> = {
+  'receipt-front': 'Receipt, front',
+  'receipt-back': 'Receipt, back',
+  'receipt-page': 'Receipt, page',
+  odometer: 'Odometer',
+  'as-found': 'As found',
+  'as-left': 'As left',
+  magnet: 'Magnet',
+  part: 'Part',
+  'manual-page': 'Manual page',
+  'work-order': 'Work order',
+  'lab-report': 'Laboratory report',
+  document: 'Document',
+};
+
+export const capacityWords: Record<CountersignCapacity, string> = {
+  'did-the-work': 'did the work',
+  inspected: 'inspected the finished work',
+  'was-present': 'was present',
+  'checked-papers': 'checked the papers only',
+};
+
+export const stateWords: Record<EntryView['state'], string> = {
+  sealed: 'sealed',
+  countersigned: 'countersigned',
+  waiting: 'stamp to come',
+  struck: 'struck',
+};
+
+export function authorWords({ name, role, sealedBy }: AuthorPart): string {
+  const words = `${name}, ${role}`;
+  return sealedBy === undefined || sealedBy === name ? words : `${words}; sealed by ${sealedBy}`;
+}
+
+/** How a picture or paper is drawn small. */
+export function plateKind({ role, mediaType }: Attachment): 'pdf' | 'receipt' | 'photo' {
+  if (mediaType === 'application/pdf') return 'pdf';
+  return role.startsWith('receipt') ? 'receipt' : 'photo';
+}
+
+/** The camera's word and the server's clock, kept apart. */
+export function takenWords({ takenAt, receivedAt }: Attachment, zone: string): string {
+  const received = `received ${formatInstant(receivedAt, zone)}`;
+  if (takenAt === undefined) return `No time in the file; ${received}`;
+  const [date = '', time = ''] = takenAt.local.split(/[T ]/);
+  const day = /^\d{4}-\d{2}-\d{2}$/.test(date) ? formatLocalDate(date) : date;
+  const offset = takenAt.offset === undefined ? 'zone not known' : `UTC${takenAt.offset}`;
+  return `Camera’s word: ${day} ${time.slice(0, 5)}, ${offset}; ${received}`;
+}
+
+/** The time an entry is proven to have existed by, as far as it is proven to anybody but this installation. */
+export function provenWords(tokens: readonly TokenView[], zone: string): { words: string; note: string } {
+  const earliest = [...tokens].sort((a, b) => a.genTime.localeCompare(b.genTime));
+  const independent = earliest.find(({ isOwnAuthority }) => !isOwnAuthority);
+  if (independent !== undefined) {
+    return {
+      words: `No later than ${formatInstant(independent.genTime, zone)}`,
+      note: `Time stamp of ${independent.authority}`,
+    };
+  }
+  const [own] = earliest;
+  if (own === undefined) return { words: 'Not proven', note: 'The time stamp is still to come' };
+  return {
+    words: 'Not proven',
+    note: `Stamped ${formatInstant(own.genTime, zone)} by this installation’s own test authority, not independent`,
+  };
+}
+
+/** `4.26 L` for measures that are not metric; undefined where nothing is gained. */
+export function metricWords({ amount, unit }: Amount): string | undefined {
+  const target = { volume: 'L', torque: 'N.m' } as const;
+  const { dimension } = units[unit];
+  if (dimension !== 'volume' && dimension !== 'torque') return undefined;
+  const metric = target[dimension];
+  if (unit === metric || unit === 'mL') return undefined;
+  const value = convert(amount, unit, metric).toFixed(units[metric].decimals, Decimal.ROUND_HALF_UP);
+  return formatAmount({ amount: value, unit: metric });
+}
+
+/** `1234567` as `1.2 MB`. */
+export function bytesWords(bytes: number): string {
+  if (bytes < 1000) return `${bytes} bytes`;
+  return bytes < 1_000_000 ? `${Math.round(bytes / 1000)} kB` : `${(bytes / 1_000_000).toFixed(1)} MB`;
+}
+
+export const counted = (count: number, one: string, many: string): string => `${count} ${count === 1 ? one : many}`;
