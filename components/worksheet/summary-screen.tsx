@@ -4,6 +4,7 @@ import { photosOf } from '@/components/garage/photos';
 import { useDraftInScreen } from '@/components/garage/draft-context';
 import { worksheetHash } from '@/components/garage/place';
 import { Notice } from '@/components/ui/notice';
+import { formatLocalDate, isLocalDate } from '@/lib/domain/instants';
 import { formatAmount, formatDistance, parseNumber } from '@/lib/domain/units';
 import type { WorksheetTask } from '@/lib/domain/worksheet';
 import { Box, Boxes } from '@/components/ui/box';
@@ -48,8 +49,8 @@ export function SummaryScreen() {
         <Box label="Odometer" isMeasure>
           {value?.ok && odometer.unit ? formatDistance({ value: value.amount, unit: odometer.unit }) : 'Not entered'}
         </Box>
-        <Box label="Begun">{[startedAt.date, startedAt.time].filter(Boolean).join(' ') || 'Not entered'}</Box>
-        <Box label="Finished">{[finishedAt.date, finishedAt.time].filter(Boolean).join(' ') || 'Not entered'}</Box>
+        <Box label="Begun">{momentWords(startedAt)}</Box>
+        <Box label="Finished">{momentWords(finishedAt)}</Box>
       </Boxes>
       {worksheet.tasks.map((task) => (
         <TaskSummary key={task.id} task={task} />
@@ -61,6 +62,11 @@ export function SummaryScreen() {
       <MoveOrDiscard />
     </div>
   );
+}
+
+function momentWords({ date, time }: { date?: string; time?: string }): string {
+  if (date === undefined || !isLocalDate(date)) return 'Not entered';
+  return time === undefined ? formatLocalDate(date) : `${formatLocalDate(date)}, ${time}`;
 }
 
 function screenOf(field: string): string {
