@@ -16,7 +16,9 @@ export const colours = {
 } as const;
 export type Colour = (typeof colours)[keyof typeof colours];
 
+/** A number as PDF operators take it. Throws for what is no number: a broken drawing must not become a broken file. */
 export const figure = (value: number): string => {
+  if (!Number.isFinite(value)) throw new RangeError(`${value} cannot be drawn.`);
   const text = value.toFixed(3).replace(/\.?0+$/, '');
   return text === '-0' ? '0' : text;
 };

@@ -23,7 +23,7 @@ export function drawQr(sheet: Sheet, text: string, alt: string, x: number, y: nu
           if (end > column) {
             const [left, top] = [x + (column + quietModules) * edge, y + (row + quietModules) * edge];
             // A hair of overlap keeps a viewer's rounding from leaving white lines between rows.
-            layer.rect(left, top, (end - column) * module, edge * 1.02, { fill: '#000000' });
+            layer.rect(left, top, (end - column) * edge, edge * 1.02, { fill: '#000000' });
           }
           column = Math.max(end, column + 1);
         }

@@ -15,7 +15,11 @@ describe('readJpegSize', () => {
   });
 
   it('reads a grey picture as one channel', async () => {
-    expect(readJpegSize(await plain(8, 9).toColourspace('b-w').jpeg().toBuffer())).toEqual({ width: 8, height: 9, channels: 1 });
+    expect(readJpegSize(await plain(8, 9).toColourspace('b-w').jpeg().toBuffer())).toEqual({
+      width: 8,
+      height: 9,
+      channels: 1,
+    });
   });
 
   it('refuses four channels, for a packet holds no CMYK', async () => {
