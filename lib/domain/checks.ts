@@ -66,7 +66,7 @@ const gap = (details: readonly string[]): Verdict => ({ result: 'gap', detail: d
  * The reader's checks of a service, each answered or named as a gap. Only what can be known at sealing is judged: time
  * stamps, countersignatures and "bought enough" are computed when the record is read.
  *
- * @example serviceChecks(sources).filter(({ result }) => result === 'gap').map(({ detail }) => detail) // ['No receipt for the pads']
+ * @example serviceChecks(sources).filter(({ result }) => result === 'gap').map(({ detail }) => detail) // ['No receipt for the Tarn front brake pads']
  */
 export function serviceChecks(sources: CheckSources): ReaderCheck[] {
   const verdicts: Record<CheckKey, Verdict> = {
@@ -116,7 +116,7 @@ function receipts(sources: CheckSources): Verdict {
   if (isByTrade && hasWorkOrder) return met('Covered by the work order');
   const uses = [
     ...fills.map(({ pointTitle, draws, uncovered }) => ({ name: `${lowered(pointTitle)} fill`, draws, uncovered })),
-    ...parts.map(({ name, draws, uncovered }) => ({ name: lowered(name), draws, uncovered })),
+    ...parts.map(({ name, draws, uncovered }) => ({ name: partInSentence(sources, name), draws, uncovered })),
   ];
   const missing = uses.flatMap(({ name, draws, uncovered }) => {
     if (draws.length === 0) return [`No receipt for the ${name}`];
@@ -124,6 +124,10 @@ function receipts(sources: CheckSources): Verdict {
   });
   return missing.length === 0 ? met('Every fluid and part is drawn from a receipt') : gap(missing);
 }
+
+// A title of the spec sheet is a plain noun; anything else may be a product's name, which keeps its capitals.
+const partInSentence = ({ terms }: CheckSources, name: string): string =>
+  terms.parts.some(({ title }) => sameText(title, name)) ? lowered(name) : name;
 
 function boughtBeforeUse(sources: CheckSources): Verdict {
   const draws = [...fillsOf(sources), ...partsOf(sources)].flatMap((use) => use.draws);
@@ -167,7 +171,9 @@ function gradeAndPartNumber(sources: CheckSources): Verdict {
     if (specified.length === 0) continue;
     judged += 1;
     if (partNumber === undefined)
-      gaps.push(`No part number recorded for the ${lowered(name)}; ${specified.join(' or ')} is specified`);
+      gaps.push(
+        `No part number recorded for the ${partInSentence(sources, name)}; ${specified.join(' or ')} is specified`,
+      );
     else if (!specified.some((one) => sameText(one, partNumber))) {
       gaps.push(`${name}: part number ${partNumber} used, ${specified.join(' or ')} specified`);
     }

@@ -73,14 +73,18 @@ describe('serviceChecks', () => {
   });
 
   it('names a part without a receipt, and what a receipt does not cover', () => {
-    const pads = { name: 'Pads', quantity: '2', draws: [] };
-    expect(check('receipts', withTask({ parts: [pads] }))).toEqual(['gap', 'No receipt for the pads']);
+    const pads = { name: 'Front brake pads', quantity: '2', draws: [] };
+    expect(check('receipts', withTask({ parts: [pads] }))).toEqual(['gap', 'No receipt for the front brake pads']);
     const short = { ...fill, uncovered: qt('0.5') };
     expect(check('receipts', withTask({ fills: [short] }))).toEqual([
       'gap',
       'No receipt for 0.5 US qt of the engine fill',
     ]);
     expect(check('receipts', withTask({ fills: [], parts: [] }))[0]).toBe('not-applicable');
+  });
+  it('leaves a product’s name its capitals', () => {
+    const pads = { name: 'Tarn front brake pads', quantity: '2', draws: [] };
+    expect(check('receipts', withTask({ parts: [pads] }))[1]).toBe('No receipt for the Tarn front brake pads');
   });
   it('takes a workshop’s work order for its fluids, but not without the paper', () => {
     const shop = withBody({
