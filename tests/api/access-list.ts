@@ -43,6 +43,28 @@ export const pages: Record<string, Reach> = {
   '(rider)/account/page.tsx': { who: signedIn },
   '(rider)/machines/new/page.tsx': { who: signedIn },
   '(rider)/machines/[machine]/page.tsx': { who: ridersOfTheMachine, at: ({ machine }) => `/machines/${machine}` },
+  '(rider)/machines/[machine]/record/page.tsx': {
+    who: ridersOfTheMachine,
+    at: ({ machine }) => `/machines/${machine}/record`,
+  },
+  '(rider)/machines/[machine]/record/[seq]/page.tsx': {
+    who: ridersOfTheMachine,
+    at: ({ machine }) => `/machines/${machine}/record/0`,
+  },
+  '(rider)/machines/[machine]/schedule/page.tsx': {
+    who: ridersOfTheMachine,
+    at: ({ machine }) => `/machines/${machine}/schedule`,
+  },
+  '(rider)/machines/[machine]/spec-sheet/page.tsx': {
+    who: ridersOfTheMachine,
+    at: ({ machine }) => `/machines/${machine}/spec-sheet`,
+  },
+  '(rider)/machines/[machine]/settings/page.tsx': {
+    who: ridersOfTheMachine,
+    at: ({ machine }) => `/machines/${machine}/settings`,
+  },
+  '(rider)/shelves/[shelf]/page.tsx': { who: ridersOfTheMachine, at: ({ shelf }) => `/shelves/${shelf}` },
+  '(rider)/shelves/[shelf]/[seq]/page.tsx': { who: ridersOfTheMachine, at: ({ shelf }) => `/shelves/${shelf}/0` },
   '(rider)/worksheets/[worksheet]/review/page.tsx': {
     who: ridersOfTheMachine,
     at: ({ worksheet }) => `/worksheets/${worksheet}/review`,
