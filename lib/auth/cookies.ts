@@ -32,7 +32,7 @@ export function knownDeviceCookie(): Promise<IronSession<{ id?: string; people?:
 }
 
 /** A cookie that was not sealed here, or is damaged, counts as none. */
-async function openCookie<T extends object>(options: SessionOptions): Promise<IronSession<T>> {
+export async function openCookie<T extends object>(options: SessionOptions): Promise<IronSession<T>> {
   const store = await cookies();
   try {
     return await getIronSession<T>(store, options);

@@ -1,7 +1,6 @@
 import 'server-only';
-import { getIronSession, type IronSession } from 'iron-session';
-import { cookies } from 'next/headers';
-import { cookieOptions } from './cookies';
+import type { IronSession } from 'iron-session';
+import { cookieOptions, openCookie } from './cookies';
 
 /** What a secret address was swapped for: ids whose rows decide, at every request, whether they still count. */
 export interface ReaderCookie {
@@ -12,8 +11,10 @@ export interface ReaderCookie {
 const keptDays = 30;
 const mostKept = 50;
 
-export async function readerCookie(): Promise<IronSession<ReaderCookie>> {
-  return getIronSession<ReaderCookie>(await cookies(), cookieOptions('witnessmark-reader', keptDays));
+export const readerCookieOptions = () => cookieOptions('witnessmark-reader', keptDays);
+
+export function readerCookie(): Promise<IronSession<ReaderCookie>> {
+  return openCookie<ReaderCookie>(readerCookieOptions());
 }
 
 /** Remembers that this browser came with the right address. */

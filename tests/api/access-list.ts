@@ -9,6 +9,7 @@ const signedIn: readonly Kind[] = ['stranger', 'helper', 'owner', 'technician', 
 const ridersOfTheMachine: readonly Kind[] = ['helper', 'owner'];
 const ownerOnly: readonly Kind[] = ['owner'];
 const stewardOnly: readonly Kind[] = ['steward'];
+const technicianOnly: readonly Kind[] = ['technician'];
 
 export interface Reach {
   who: readonly Kind[];
@@ -16,6 +17,8 @@ export interface Reach {
   told?: readonly Kind[];
   /** For what is guarded by an object: the address (and form or body) that names it. */
   at?: (world: AccessWorld) => string;
+  /** Somebody not signed in is told "not found" too, instead of being asked to sign in. */
+  isHiddenFromStrangers?: true;
 }
 interface RouteReach extends Reach {
   /** Answers what pages of other sites send: for programs, and it changes nothing of anybody. */
@@ -69,6 +72,21 @@ export const pages: Record<string, Reach> = {
     who: ridersOfTheMachine,
     at: ({ worksheet }) => `/worksheets/${worksheet}/review`,
   },
+  '(rider)/machines/[machine]/proof/page.tsx': { who: ownerOnly, at: ({ machine }) => `/machines/${machine}/proof` },
+  '(rider)/machines/[machine]/record/[seq]/countersign/page.tsx': {
+    who: ownerOnly,
+    at: ({ machine }) => `/machines/${machine}/record/0/countersign`,
+  },
+  '(rider)/shops/[shop]/page.tsx': { who: technicianOnly, at: ({ shop }) => `/shops/${shop}` },
+  '(public)/verify/page.tsx': { who: everybody },
+  '(public)/method/page.tsx': { who: everybody },
+  // Everybody's browser came by the address here; what one that did not is told stands in proof.test.ts.
+  'view/[link]/page.tsx': { who: everybody, at: ({ link }) => `/view/${link}` },
+  'view/[link]/entries/[seq]/page.tsx': { who: everybody, at: ({ link }) => `/view/${link}/entries/0` },
+  'countersign/answer/[invitation]/page.tsx': {
+    who: everybody,
+    at: ({ invitation }) => `/countersign/answer/${invitation}`,
+  },
   '(steward)/steward/page.tsx': { who: stewardOnly },
   '(steward)/steward/shops/page.tsx': { who: stewardOnly },
   '(steward)/steward/mail/page.tsx': { who: stewardOnly },
@@ -119,6 +137,29 @@ export const routes: Record<string, RouteReach> = {
     who: ridersOfTheMachine,
     at: ({ worksheet }) => `/api/uploads?id=${crypto.randomUUID()}&draft=${worksheet}&name=plate.jpg`,
   },
+  'GET v/[token]/route.ts': { who: everybody, at: ({ linkToken }) => `/v/${linkToken}` },
+  'GET view/[link]/ended/route.ts': { who: everybody, at: ({ link }) => `/view/${link}/ended` },
+  'GET countersign/[token]/route.ts': {
+    who: everybody,
+    at: ({ invitationToken }) => `/countersign/${invitationToken}`,
+  },
+  'GET countersign/answer/[invitation]/ended/route.ts': {
+    who: everybody,
+    at: ({ invitation }) => `/countersign/answer/${invitation}/ended`,
+  },
+  'GET api/view/[link]/files/[sha256]/[kind]/route.ts': {
+    who: everybody,
+    at: ({ link, plate }) => `/api/view/${link}/files/${plate}/thumb`,
+  },
+  'GET api/view/[link]/packet/route.ts': { who: everybody, at: ({ link }) => `/api/view/${link}/packet` },
+  'GET api/view/[link]/record.json/route.ts': { who: everybody, at: ({ link }) => `/api/view/${link}/record.json` },
+  'GET countersign/answer/[invitation]/files/[sha256]/[kind]/route.ts': {
+    // The picture stands on another entry than the one that was asked about.
+    who: [],
+    isHiddenFromStrangers: true,
+    at: ({ invitation, plate }) => `/countersign/answer/${invitation}/files/${plate}/thumb`,
+  },
+  'GET (public)/verify.mjs/route.ts': { who: everybody },
   'GET api/files/[sha256]/[kind]/route.ts': {
     who: ridersOfTheMachine,
     at: ({ machine, plate }) => `/api/files/${plate}/copy?for=${machine}`,
@@ -145,6 +186,43 @@ export const actions: Record<string, ActionReach> = {
     who: ownerOnly,
     on: ({ worksheet }) => `/worksheets/${worksheet}/review`,
     form: ({ worksheet }) => ({ worksheet, reviewed: 'what was shown' }),
+  },
+  '(rider)/machines/[machine]/proof/actions.ts buildPacketAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/proof`,
+    form: ({ machine }) => ({ machine, purpose: '' }),
+  },
+  '(rider)/machines/[machine]/proof/actions.ts makeLinkAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/proof`,
+    form: ({ machine }) => ({ machine, label: 'A third reader', lasts: '30-days' }),
+  },
+  '(rider)/machines/[machine]/proof/actions.ts revokeLinkAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/proof`,
+    form: ({ spareLink }) => ({ link: spareLink }),
+  },
+  'countersign/answer/[invitation]/actions.ts answerAction': {
+    who: technicianOnly,
+    on: ({ invitation }) => `/countersign/answer/${invitation}`,
+    form: ({ invitation, shop }) => ({ invitation, shop, answer: 'decline', reason: '' }),
+  },
+  // Entry 0 is no service, which the owner is told and nobody else learns.
+  '(rider)/machines/[machine]/record/[seq]/countersign/actions.ts inviteAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/record/0/countersign`,
+    form: ({ machine }) => ({ machine, seq: '0', email: 'workshop@halyard.example', message: '' }),
+  },
+  '(rider)/machines/[machine]/record/[seq]/countersign/actions.ts withdrawAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/record/0/countersign`,
+    // It is answered by now, which the owner is told.
+    form: ({ invitation }) => ({ invitation }),
+  },
+  'countersign/answer/[invitation]/actions.ts nameShopAction': {
+    who: signedIn,
+    on: ({ invitation }) => `/countersign/answer/${invitation}`,
+    form: ({ invitation }) => ({ invitation, name: 'A shop', address: '1 Quay Street, Halyard' }),
   },
   '(rider)/account/actions.ts changeAccountAction': { who: signedIn, on: () => '/account' },
   '(rider)/account/actions.ts changePasswordAction': { who: signedIn, on: () => '/account' },

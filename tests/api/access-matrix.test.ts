@@ -2,7 +2,7 @@ import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
 import { beforeAll, describe, expect, test } from 'vitest';
 import { actionBody, actionId } from '@/tests/setup/server-actions';
-import { cookieOf, useServer } from '@/tests/setup/server';
+import { cookieOf, readerCookieOf, useServer } from '@/tests/setup/server';
 import { useTestDatabase } from '@/tests/setup/test-database';
 import { actions, kinds, pages, routes, type Kind, type Reach } from './access-list';
 import { buildAccessWorld, type AccessWorld } from './access-world';
@@ -53,14 +53,19 @@ function verdictOf(answer: { status: number; headers: Headers; body: string }): 
   return 'reached';
 }
 
-function expectedOf({ who, told = [] }: Pick<Reach, 'who' | 'told'>, kind: Kind): Verdict {
+type Asked = Pick<Reach, 'who' | 'told' | 'isHiddenFromStrangers'>;
+
+function expectedOf({ who, told = [], isHiddenFromStrangers }: Asked, kind: Kind): Verdict {
   if (who.includes(kind)) return 'reached';
   if (told.includes(kind)) return 'told that they may not';
-  return kind === 'anonymous' ? 'asked to sign in' : 'hidden';
+  return kind === 'anonymous' && isHiddenFromStrangers !== true ? 'asked to sign in' : 'hidden';
 }
 
-/** A session of its own for each question: some of what is asked ends sessions. */
-const cookieFor = async (kind: Kind) => (kind === 'anonymous' ? '' : cookieOf(world.people[kind]));
+/** A session of its own for each question: some of what is asked ends sessions. Every browser came by the addresses. */
+const cookieFor = async (kind: Kind) => {
+  const reader = await readerCookieOf({ links: [world.link], invitations: [world.invitation] });
+  return kind === 'anonymous' ? reader : `${await cookieOf(world.people[kind])}; ${reader}`;
+};
 
 async function ask(kind: Kind, address: string, init: RequestInit = {}): Promise<Verdict> {
   const answer = await fetch(server.url + address, {
@@ -72,7 +77,7 @@ async function ask(kind: Kind, address: string, init: RequestInit = {}): Promise
 }
 
 /** One line for each kind of person; the whole is compared, so that a failure shows it all. */
-async function everybody(reach: Pick<Reach, 'who' | 'told'>, asked: (kind: Kind) => Promise<Verdict>) {
+async function everybody(reach: Asked, asked: (kind: Kind) => Promise<Verdict>) {
   const found: Record<string, Verdict> = {};
   for (const kind of kinds) found[kind] = await asked(kind);
   const expected = Object.fromEntries(kinds.map((kind) => [kind, expectedOf(reach, kind)]));

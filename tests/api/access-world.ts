@@ -1,14 +1,21 @@
 import { randomUUID } from 'node:crypto';
+import { mkdirSync, writeFileSync } from 'node:fs';
+import path from 'node:path';
 import { drafts, files, uploads, type DraftRow } from '@/db/models/drafts';
 import { shops } from '@/db/models/machines';
-import { packets } from '@/db/models/proof';
 import { relations, type PersonRow, type RelationRow } from '@/db/models/people';
+import { invitations, packets } from '@/db/models/proof';
+import { findEntry } from '@/db/queries/entries';
 import { shelvesOf } from '@/db/queries/shelves';
+import { newSecretAddress } from '@/lib/auth/secret-address';
 import { blobStore } from '@/lib/ports/blob-store';
 import { now } from '@/lib/ports/clock';
 import { mailNames } from '@/lib/ports/mail-folder';
 import { sendMail } from '@/lib/ports/mail';
+import { appendEntry } from '@/lib/services/append-entry';
+import { packetFile } from '@/lib/services/build-packet';
 import { createMachine } from '@/lib/services/create-machine';
+import { createViewingLink } from '@/lib/services/create-viewing-link';
 import { machineInput } from '@/lib/services/machine-input';
 import { makePerson } from '@/tests/setup/test-database';
 import type { Kind } from './access-list';
@@ -29,6 +36,13 @@ export interface AccessWorld {
   packet: string;
   /** File name of a mail. */
   mail: string;
+  /** Two viewing links of the machine; everybody's browser came by the first. `spare` is the one the test may revoke. */
+  link: string;
+  spareLink: string;
+  linkToken: string;
+  /** An invitation to the opening of the machine's record; everybody's browser came by its address. */
+  invitation: string;
+  invitationToken: string;
   people: Record<Exclude<Kind, 'anonymous'>, PersonRow>;
 }
 
@@ -71,6 +85,14 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
     return id;
   }
 
+  const plate = await picture(worksheet, people.owner.id);
+  const shared = { machineId: machine, by: people.owner.id, expiresAt: null };
+  const link = await createViewingLink({ ...shared, label: 'A reader' });
+  const spare = await createViewingLink({ ...shared, label: 'Another reader' });
+  const invitation = await invite({ machine, log, owner: people.owner, email: people.technician.email });
+  await sealPlate({ log, owner: people.owner, sha256: plate });
+  await readyPacket(machine, people.owner.id);
+
   return {
     machine,
     shelf,
@@ -80,8 +102,13 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
     discarded,
     log,
     packet: await failedPacket(machine, people.owner.id),
-    plate: await picture(worksheet, people.owner.id),
+    plate,
     mail: (await mailNames())[0]!,
+    link: link.id,
+    spareLink: spare.id,
+    linkToken: link.token,
+    invitation: invitation.id,
+    invitationToken: invitation.token,
     people,
   };
 }
@@ -101,6 +128,79 @@ async function relate(
     relation,
     since,
     until: null,
+  });
+}
+
+async function invite(options: { machine: string; log: string; owner: PersonRow; email: string }) {
+  const { token, tokenHash } = newSecretAddress();
+  const id = randomUUID();
+  await invitations.insert({
+    id,
+    logId: options.log,
+    seq: 0,
+    machineId: options.machine,
+    email: options.email,
+    tokenHash,
+    invitedBy: options.owner.id,
+    message: '',
+    createdAt: now().toISOString(),
+    expiresAt: '2099-01-01T00:00:00.000Z',
+    openedAt: null,
+    remindedAt: null,
+    withdrawnAt: null,
+    answeredAt: null,
+    answeredBy: null,
+    shopId: null,
+    outcome: null,
+    declineReason: null,
+    answerSeq: null,
+  });
+  return { id, token };
+}
+
+/** Readers get only what an opened part names, so the picture stands on an addendum to the opening. */
+async function sealPlate({ log, owner, sha256 }: { log: string; owner: PersonRow; sha256: string }) {
+  const opening = await findEntry(log, 0);
+  const file = { sha256, bytes: 25, mediaType: 'image/jpeg' };
+  await appendEntry({
+    log,
+    kind: 'addendum',
+    by: owner.id,
+    idempotencyKey: randomUUID(),
+    refersTo: { seq: 0, leafHash: opening!.leafHash },
+    parts: async () => ({
+      author: { person: owner.id, name: owner.name, role: 'owner' },
+      body: { text: 'The drain plug, photographed later.' },
+      attachments: [
+        { ...file, role: 'part', receivedAt: now().toISOString(), caption: '', copy: { ...file, removed: [] } },
+      ],
+    }),
+  });
+}
+
+/** A packet as its row says; what the file holds is not asked here. */
+async function readyPacket(machineId: string, createdBy: string): Promise<void> {
+  const number = 'WM-TEST-2345';
+  mkdirSync(path.dirname(packetFile(number)), { recursive: true });
+  writeFileSync(packetFile(number), 'a packet');
+  const at = now().toISOString();
+  await packets.insert({
+    id: randomUUID(),
+    machineId,
+    number,
+    purpose: '',
+    state: 'ready',
+    stage: 'Ready',
+    progress: 100,
+    error: null,
+    createdBy,
+    createdAt: at,
+    finishedAt: at,
+    fileSha256: null,
+    bytes: 8,
+    pages: 1,
+    logSize: 1,
+    linkId: null,
   });
 }
 

@@ -8,6 +8,7 @@ import { afterAll, beforeAll } from 'vitest';
 import { write } from '@/db/index';
 import { insertSession, type PersonRow } from '@/db/queries/people';
 import { sessionCookieOptions } from '@/lib/auth/cookies';
+import { readerCookieOptions, type ReaderCookie } from '@/lib/auth/reader-cookie';
 import { sessionEnd } from '@/lib/auth/session-life';
 import { env } from '@/lib/env';
 
@@ -85,6 +86,12 @@ export async function cookieOf(person: PersonRow): Promise<string> {
   await write((transaction) => insertSession({ ...row, expiresAt: sessionEnd(start).toISOString() }, { transaction }));
   const { cookieName, password, ttl } = sessionCookieOptions();
   return `${cookieName}=${await sealData({ id }, { password, ttl: ttl ?? 0 })}`;
+}
+
+/** The Cookie header of a browser that came by the addresses of these viewing links and invitations. */
+export async function readerCookieOf(came: ReaderCookie): Promise<string> {
+  const { cookieName, password, ttl } = readerCookieOptions();
+  return `${cookieName}=${await sealData(came, { password, ttl: ttl ?? 0 })}`;
 }
 
 async function untilAnswering(server: TestServer, child: ChildProcess): Promise<void> {
