@@ -1,3 +1,4 @@
+import { metricWords } from '@/components/entry/words';
 import { Box, Boxes } from '@/components/ui/box';
 import { UserText } from '@/components/ui/user-text';
 import { formatLocalDate, formatLocalMoment } from '@/lib/domain/instants';
@@ -18,10 +19,11 @@ export function drawWords(draw: Draw): string {
 }
 
 function fillNotes(fill: Fill): string[] {
+  const sum = fill.amounts.length === 0 ? undefined : sumAmounts(fill.amounts);
+  const isMixed = new Set(fill.amounts.map(({ unit }) => unit)).size > 1;
   const parts = [
-    fill.amounts.length > 1 && new Set(fill.amounts.map(({ unit }) => unit)).size > 1
-      ? `together ${formatAmount(sumAmounts(fill.amounts))}`
-      : undefined,
+    sum === undefined || !isMixed ? undefined : `together ${formatAmount(sum)}`,
+    sum && metricWords(sum),
     fill.specification === undefined ? undefined : `specified ${fill.specification.map(formatAmount).join(' / ')}`,
     ...fill.draws.map(drawWords),
     fill.uncovered === undefined ? undefined : `${formatAmount(fill.uncovered)} without a receipt`,

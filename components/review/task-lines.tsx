@@ -1,3 +1,4 @@
+import { metricWords } from '@/components/entry/words';
 import { Definition, type DefinitionItem } from '@/components/ui/definition';
 import { UserText } from '@/components/ui/user-text';
 import { formatInstant } from '@/lib/domain/instants';
@@ -7,10 +8,12 @@ import { formatAmount } from '@/lib/domain/units';
 import type { Inspection, PartUse, Task, Torque } from '@/lib/evidence/format';
 import { drawWords } from './service-boxes';
 
-function torqueWords({ specification, tool }: Torque): string {
+function torqueWords({ specification, tool, ...torque }: Torque): string {
   const band = specification?.map(formatBand).join(' / ');
   const calibrated = tool?.calibratedOn === undefined ? '' : `, calibrated ${tool.calibratedOn}`;
-  return [band && `specified ${band}`, tool && `${tool.name}${calibrated}`].filter(Boolean).join('; ');
+  return [metricWords(torque), band && `specified ${band}`, tool && `${tool.name}${calibrated}`]
+    .filter(Boolean)
+    .join('; ');
 }
 
 function partWords({ partNumber, draws, uncovered }: PartUse): string {

@@ -1,5 +1,6 @@
 import Link from 'next/link';
 import { Sheet } from '@/components/ui/box';
+import { classes } from '@/components/ui/classes';
 import { UserText } from '@/components/ui/user-text';
 import { formatLocalDate } from '@/lib/domain/instants';
 import { convert, formatAmount } from '@/lib/domain/units';
@@ -61,7 +62,7 @@ export function LotList({ lots, shelf, label }: LotListProps) {
             <p className="relative border border-edge bg-sheet px-3 py-1.5 font-medium tabular-nums">
               <span
                 aria-hidden="true"
-                className="absolute inset-y-0 left-0 border-r border-edge bg-steel"
+                className={classes('absolute inset-y-0 left-0 border-edge bg-steel', share(lot) < 100 && 'border-r')}
                 style={{ width: `${share(lot)}%` }}
               />
               <span className="relative">{leftWords(lot)}</span>
