@@ -47,7 +47,7 @@ function workDone({ startedAt, finishedAt }: ServiceBody): string {
 export function ServiceBoxes({ body }: { body: ServiceBody }) {
   const fills = body.tasks.flatMap((task) => task.fills);
   return (
-    <Boxes columns={3} label="The work">
+    <Boxes columns={3} isOneColumnOnPhone label="The work">
       <Box label="Work done" note={`Time zone ${body.finishedAt.zone}`}>
         {workDone(body)}
       </Box>
