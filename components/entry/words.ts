@@ -85,7 +85,7 @@ export function metricWords({ amount, unit }: Amount): string | undefined {
 /** `1234567` as `1.2 MB`. */
 export function bytesWords(bytes: number): string {
   if (bytes < 1000) return `${bytes} bytes`;
-  return bytes < 1_000_000 ? `${Math.round(bytes / 1000)} kB` : `${(bytes / 1_000_000).toFixed(1)} MB`;
+  return bytes < 999_500 ? `${Math.round(bytes / 1000)} kB` : `${(bytes / 1_000_000).toFixed(1)} MB`;
 }
 
 export const counted = (count: number, one: string, many: string): string => `${count} ${count === 1 ? one : many}`;
