@@ -2,6 +2,7 @@ import 'server-only';
 import { invitationsOfMachine } from '@/db/queries/invitations';
 import { waitingStamps } from '@/db/queries/lots';
 import type { MachineRow } from '@/db/models/machines';
+import type { CheckKey } from '@/lib/domain/checks';
 import { formatInstant, formatLocalDate, localDateOf } from '@/lib/domain/instants';
 import { now } from '@/lib/ports/clock';
 import type { SealedHistory } from './read-history';
@@ -16,6 +17,8 @@ export interface Waiting {
 
 /** Gaps of older entries are history; those of the latest can still be mended by an addendum. */
 const latestServices = 3;
+/** A missing paper can be added; work done late stays late. */
+const mendable = new Set<string>(['receipts', 'grade-and-part-number', 'odometer-photographed'] satisfies CheckKey[]);
 
 /** What waits for somebody: shops that were asked, time stamps to come, gaps an addendum can mend. */
 export async function whatWaits(options: { machine: MachineRow; history: SealedHistory }): Promise<Waiting[]> {
@@ -44,7 +47,7 @@ export async function whatWaits(options: { machine: MachineRow; history: SealedH
   });
   const gaps = history.services.slice(-latestServices).flatMap(({ seq, body }) =>
     body.checks
-      .filter(({ result }) => result === 'gap')
+      .filter(({ key, result }) => result === 'gap' && mendable.has(key))
       .map(({ detail }): Waiting => ({
         kind: 'gap',
         seq,
