@@ -2,7 +2,6 @@ import Link from 'next/link';
 import { LinkButton } from '@/components/ui/button';
 import { Definition } from '@/components/ui/definition';
 import { whatIsShown } from '@/lib/evidence/format';
-import { groupFingerprint } from '@/lib/domain/hash-words';
 import { paths } from '@/lib/paths';
 import type { Viewing } from '@/lib/services/read-viewing';
 import { MonoCopy } from './mono-copy';
@@ -67,7 +66,7 @@ export function CheckItYourself({ viewing }: { viewing: Viewing }) {
               term: 'Fingerprint of the key',
               detail: (
                 <>
-                  <span className="font-mono text-sm">{groupFingerprint(log.fingerprint)}</span>
+                  <span className="font-mono text-sm">{log.fingerprint}</span>
                   <span className="tag block">
                     Compare it with one you got another way: a mail about this record, or an older packet. From this
                     page alone it proves nothing.

@@ -2,7 +2,6 @@ import type { ReactNode } from 'react';
 import { WitnessMark, type MarkState } from '@/components/mark/witness-mark';
 import { Definition } from '@/components/ui/definition';
 import { Hash } from '@/components/ui/hash';
-import { groupFingerprint } from '@/lib/domain/hash-words';
 import { paths } from '@/lib/paths';
 import { MonoCopy } from './mono-copy';
 
@@ -55,7 +54,7 @@ export function KeyTable({ keys }: KeyTableProps) {
           <>
             <MonoCopy text={verifierKey} what="verifier key" />
             <span className="label mt-1">Fingerprint</span>
-            <span className="font-mono text-sm">{groupFingerprint(fingerprint)}</span>
+            <span className="font-mono text-sm">{fingerprint}</span>
           </>
         ),
       }))}

@@ -62,7 +62,8 @@ describe('a reader who checks a file in the browser, without a connection', () =
   it('takes a fingerprint from paper, in groups, as the key', async () => {
     await check(record);
     await page.getByText('Add a key you trust').click();
-    const groups = publishedKeys()[0]!.fingerprint.match(/.{4}/g)!.join(' ');
+    const groups = publishedKeys()[0]!.fingerprint;
+    expect(groups).toMatch(/^([0-9a-f]{4} ){15}[0-9a-f]{4}$/);
     await page.getByLabel('Key, or its fingerprint').fill(groups);
     await page.getByRole('button', { name: 'Check again with these' }).click();
     await page.getByText('the key you gave').waitFor();

@@ -82,7 +82,8 @@ function listedKeys(bundleText: string): string[] {
 
 function fingerprintOf(key: string): string | null {
   try {
-    return fingerprint(parseVerifierKey(key).publicKey);
+    // It comes in groups, as people compare it.
+    return fingerprint(parseVerifierKey(key).publicKey).replace(/\s+/g, '');
   } catch {
     return null;
   }

@@ -50,6 +50,11 @@ export function FindingReport({ name, finding, container, published }: FindingRe
             {titles[outcome]}
           </h2>
           <p className={outcome === 'unchanged' ? '' : 'tone-gap'}>{finding.sentence}</p>
+          {outcome === 'unchanged' && finding.key?.source === 'file' ? (
+            <p className="tone-warn">
+              The key is the file’s own: it fits itself, and who made it is still to be established.
+            </p>
+          ) : null}
         </div>
       </header>
       <Alterations alterations={alterations} logs={logs} />

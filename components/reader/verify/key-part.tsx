@@ -1,5 +1,4 @@
 import { Definition } from '@/components/ui/definition';
-import { groupFingerprint } from '@/lib/domain/hash-words';
 import type { Finding } from '@/lib/evidence/finding';
 import type { PublishedKeys } from './use-published-keys';
 
@@ -31,7 +30,7 @@ export function KeyPart({ usedKey, published }: KeyPartProps) {
           },
           {
             term: 'Fingerprint',
-            detail: <span className="font-mono text-sm">{groupFingerprint(usedKey.fingerprint)}</span>,
+            detail: <span className="font-mono text-sm">{usedKey.fingerprint}</span>,
           },
           {
             term: 'Verifier key',

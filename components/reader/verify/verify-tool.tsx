@@ -48,7 +48,7 @@ export function VerifyTool() {
           </Button>
           <LoadWords at={state.at} />
         </div>
-        <details className="border-b border-line pb-4" open={refused !== null || undefined}>
+        <details open={refused !== null || undefined}>
           <summary className="link inline-flex min-h-11 items-center">
             Add a key you trust, or an older file of the same record
           </summary>
