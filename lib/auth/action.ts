@@ -49,7 +49,7 @@ export function formAction<S extends z.ZodType>(
       unstable_rethrow(error);
       const refusal = asRefusal(error);
       if (refusal.code === 'not-found') nextNotFound();
-      return { ok: false, message: refusal.message, fields: refusal.fields, typed };
+      return { ok: false, message: refusal.message, code: refusal.code, fields: refusal.fields, typed };
     }
   };
 }

@@ -184,6 +184,7 @@ export const actions: Record<string, ActionReach> = {
   '(rider)/machines/new/actions.ts setUpMachine': { who: signedIn, on: () => '/machines/new' },
   '(rider)/worksheets/[worksheet]/review/actions.ts seal': {
     who: ownerOnly,
+    told: ['helper'],
     on: ({ worksheet }) => `/worksheets/${worksheet}/review`,
     form: ({ worksheet }) => ({ worksheet, reviewed: 'what was shown' }),
   },

@@ -48,7 +48,8 @@ function verdictOf(answer: { status: number; headers: Headers; body: string }): 
   if (/^(https?:\/\/[^/]+)?\/sign-in\b(?!.*after=)/.test(away)) return 'asked to sign in';
   if (/NEXT_REDIRECT;\w+;\/sign-in\b(?!.*after=)/.test(body)) return 'asked to sign in';
   if (status === 404 || body.includes('NEXT_HTTP_ERROR_FALLBACK;404')) return 'hidden';
-  if (status === 403 && body.includes('"code":"forbidden"')) return 'told that they may not';
+  // In a route's problem JSON, or in what an action returns.
+  if (body.includes('"code":"forbidden"')) return 'told that they may not';
   if (status === 403 || status >= 500) return `${status} ${body.slice(0, 300)}`;
   return 'reached';
 }
