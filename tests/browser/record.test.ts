@@ -46,6 +46,8 @@ beforeAll(async () => {
   await sealWorksheet({ person, draftId, reviewed: composed!.fingerprint });
   browser = await chromium.launch({ executablePath: '/usr/bin/chromium', args: ['--no-sandbox', '--disable-gpu'] });
   page = await (await browser.newContext({ viewport: { width: 1280, height: 860 } })).newPage();
+  // Well under the test's own limit, so that a slow machine is told by what it waited for.
+  page.setDefaultTimeout(90_000);
 });
 afterAll(() => browser.close());
 
