@@ -7,6 +7,8 @@ const config = {
   images: { unoptimized: true },
   // `npm run check` checks the types of everything, tests and scripts too; a start need not wait for it again.
   typescript: { ignoreBuildErrors: true },
+  // Writing the cache takes longer than the seconds it saves a second build.
+  experimental: { turbopackFileSystemCacheForBuild: false },
   poweredByHeader: false,
   devIndicators: false,
   reactStrictMode: true,

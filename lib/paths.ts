@@ -26,7 +26,6 @@ export const paths = {
   specSheet: (machine: string) => `/machines/${machine}/spec-sheet`,
   machineSettings: (machine: string) => `/machines/${machine}/settings`,
   proof: (machine: string) => `/machines/${machine}/proof`,
-  atTheDesk: (machine: string) => `/machines/${machine}/at-the-desk`,
   /** One rider's shelf (a household may have one). */
   shelf: (shelf: string) => `/shelves/${shelf}`,
   shelfEntry: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}`,
