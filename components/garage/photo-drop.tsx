@@ -19,12 +19,12 @@ const pictures = {
   'image/heic': ['.heic', '.heif'],
 };
 
-function reasonOf({ file, errors }: FileRejection): { name: string; why: string } {
+function reasonOf({ file, errors }: FileRejection, hasPdf: boolean): { name: string; why: string } {
   const code = errors[0]?.code;
   const why =
     code === 'file-too-large'
       ? 'is larger than 40 MB. Take it again at a smaller size.'
-      : 'is not a JPEG, PNG, WebP or HEIC picture or a PDF. Choose another file.';
+      : `is not a JPEG, PNG, WebP or HEIC picture${hasPdf ? ' or a PDF' : ''}. Choose another file.`;
   return { name: file.name, why };
 }
 
@@ -36,7 +36,7 @@ export function PhotoDrop({ onFiles, takeText, hasPdf = false }: PhotoDropProps)
     maxSize: mostBytes,
     noClick: true,
     noKeyboard: true,
-    onDrop: (accepted, rejected) => onFiles(accepted, rejected.map(reasonOf)),
+    onDrop: (accepted, rejected) => onFiles(accepted, rejected.map((one) => reasonOf(one, hasPdf))),
   });
   useEffect(() => {
     function paste(event: ClipboardEvent) {

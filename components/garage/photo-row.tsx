@@ -8,18 +8,9 @@ import { paths } from '@/lib/paths';
 import type { AttachmentRole } from '@/lib/evidence/format';
 import { useDraftInScreen } from './draft-context';
 import { DraftChoice, DraftText } from './draft-fields';
-import type { KeptFile, UploadAnswer } from './draft-store';
 import { useGarage } from './garage-context';
 import { roleWords } from './photo-roles';
-
-/** A photo of the draft: on this device, on the server, or both. */
-export interface Photo {
-  id: string;
-  name: string;
-  mediaType: string;
-  file?: KeptFile;
-  upload?: UploadAnswer;
-}
+import type { Photo } from './photos-of';
 
 const megabytes = (bytes: number): string => `${(bytes / 1_000_000).toFixed(1)} MB`;
 

@@ -4,7 +4,7 @@ import { useState } from 'react';
 import { useDraftInScreen } from '@/components/garage/draft-context';
 import type { Failure } from '@/components/garage/garage-api';
 import { useGarage } from '@/components/garage/garage-context';
-import { photosOf } from '@/components/garage/photos';
+import { photosOf } from '@/components/garage/photos-of';
 import { Dock } from '@/components/shell/dock';
 import { Button } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';

@@ -6,7 +6,7 @@ import { useDraft, useGarage } from '@/components/garage/garage-context';
 import type { OpenDraft } from '@/components/garage/open-draft';
 import { receiptRoles } from '@/components/garage/photo-roles';
 import { Photos } from '@/components/garage/photos';
-import type { Photo } from '@/components/garage/photo-row';
+import type { Photo } from '@/components/garage/photos-of';
 import { StatusLine } from '@/components/garage/status-line';
 import { receiptFrom, receiptProblems, type Fields } from '@/lib/domain/receipt';
 import { ConfirmReceipt } from './confirm-receipt';

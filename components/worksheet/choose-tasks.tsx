@@ -3,10 +3,9 @@
 import { useDraftInScreen } from '@/components/garage/draft-context';
 import { mintId } from '@/components/garage/mint-id';
 import { Checkbox } from '@/components/ui/checkbox';
-import { procedures, type Procedure } from '@/lib/domain/procedures';
-import type { ScheduleItem } from '@/lib/evidence/format';
+import { procedureFor, procedures, type Procedure } from '@/lib/domain/procedures';
 import type { WorksheetTask } from '@/lib/domain/worksheet';
-import { newTaskFields, workFor } from './task-fields';
+import { newTaskFields, workFor, type NamedItem } from './task-fields';
 import { useWorksheet } from './worksheet-context';
 
 interface Offer {
@@ -15,33 +14,36 @@ interface Offer {
   words?: string;
   isDue: boolean;
   procedure: Procedure;
-  item?: ScheduleItem;
+  item?: NamedItem;
 }
 
 const isSame = (task: WorksheetTask, offer: Offer): boolean =>
   offer.procedure.key === 'free' ? task.scheduleItem === offer.item?.item : task.key === offer.procedure.key;
 
+const isSameWork = (one: Offer, other: Offer): boolean =>
+  one.procedure.key === other.procedure.key && (one.procedure.key !== 'free' || one.item?.item === other.item?.item);
+
 /** Tasks by one tap each: what is due first, then all there are. */
 export function ChooseTasks() {
   const { machine, worksheet } = useWorksheet();
   const schedule = machine?.terms?.schedule ?? [];
-  const due = (machine?.due ?? []).flatMap(({ item, words, isDue }): Offer[] => {
-    const line = schedule.find((one) => one.item === item);
-    if (!line) return [];
+  const due = (machine?.due ?? []).map(({ item, title, words, isDue }): Offer => {
+    // An item the terms on this phone do not have yet is offered all the same, under the name the server gave it.
+    const line = schedule.find((one) => one.item === item) ?? ({ item, title, action: 'other' } as const);
     const work = workFor(line);
-    const title = work.procedure.key === 'free' ? line.title : work.procedure.title;
-    return [{ key: `item-${item}`, title, words, isDue, ...work }];
+    const name = work.procedure.key === 'free' ? line.title : work.procedure.title;
+    return { key: `item-${item}`, title: name, words, isDue, ...work };
   });
   // Two items may be done by one procedure; it is offered once, with the more pressing words.
-  const byWork = due.filter((offer, index) => due.findIndex((one) => one.title === offer.title) === index);
+  const byWork = due.filter((offer, index) => due.findIndex((one) => isSameWork(one, offer)) === index);
   const rest = procedures
     .filter(({ key }) => key !== 'free' && !byWork.some(({ procedure }) => procedure.key === key))
     .map((procedure): Offer => ({ key: procedure.key, title: procedure.title, isDue: false, procedure }));
   const others = worksheet.tasks.filter((task) => ![...byWork, ...rest].some((offer) => isSame(task, offer)));
   return (
     <div className="space-y-6">
-      <Offers title="Due first" offers={byWork} emptyText="Nothing is scheduled for this machine." />
-      <Offers title="Other tasks" offers={rest} />
+      <Offers title="Soonest due first" offers={byWork} emptyText="Nothing is scheduled for this machine." />
+      {rest.length === 0 ? null : <Offers title="Other tasks" offers={rest} />}
       <OtherWork tasks={others} />
     </div>
   );
@@ -92,7 +94,7 @@ function OfferLine({ offer }: { offer: Offer }) {
 function OtherWork({ tasks }: { tasks: readonly WorksheetTask[] }) {
   const { opened } = useDraftInScreen();
   const { worksheet } = useWorksheet();
-  const free = procedures.find(({ key }) => key === 'free');
+  const free = procedureFor('free');
   return (
     <fieldset>
       <legend className="figure mb-1 text-xl">Other work</legend>
@@ -107,18 +109,16 @@ function OtherWork({ tasks }: { tasks: readonly WorksheetTask[] }) {
             />
           </li>
         ))}
-        {free ? (
-          <li className="border-b border-line">
-            <Checkbox
-              size="big"
-              checked={false}
-              onChange={() => void opened.set(newTaskFields(mintId(), { procedure: free }, worksheet.tasks.length + 1))}
-              label={
-                <span className="font-medium">{tasks.length === 0 ? 'Something else' : 'Something else again'}</span>
-              }
-            />
-          </li>
-        ) : null}
+        <li className="border-b border-line">
+          <Checkbox
+            size="big"
+            checked={false}
+            onChange={() => void opened.set(newTaskFields(mintId(), { procedure: free }, worksheet.tasks.length + 1))}
+            label={
+              <span className="font-medium">{tasks.length === 0 ? 'Something else' : 'Something else again'}</span>
+            }
+          />
+        </li>
       </ul>
     </fieldset>
   );

@@ -1,48 +1,102 @@
 'use client';
 
 import { useDraftInScreen, useDraftSet } from '@/components/garage/draft-context';
-import { DraftFigure, DraftSelect, RemoveItem } from '@/components/garage/draft-fields';
 import { mintId } from '@/components/garage/mint-id';
 import { Button } from '@/components/ui/button';
 import type { Amount } from '@/lib/evidence/format';
 import { localDateOf } from '@/lib/domain/instants';
-import { hasLeft, proposeDraws, type Lot } from '@/lib/domain/shelf';
-import { compareAmounts, formatAmount, units, unitsOf } from '@/lib/domain/units';
-import { balanceLeft, drawnTotal, itemDraws, lotWords, suitableLots } from './draw-figures';
-import { pourSentence, readAmount } from './fill-figures';
+import { hasLeft, proposeDraws, type Lot, type LotDraw } from '@/lib/domain/shelf';
+import { compareAmounts, formatAmount, sumAmounts } from '@/lib/domain/units';
+import { balanceLeft, drawnTotal, itemDraws, lotWords, stillWanted, suitableLots } from './draw-figures';
+import { DrawLine } from './draw-line';
+import { readAmount } from './fill-figures';
 import { lotsBeside, useWorksheet } from './worksheet-context';
 
 export interface DrawEntryProps {
   /** `tasks/<id>/fills/<id>` or `tasks/<id>/parts/<id>`. */
   item: string;
   kind: Lot['kind'];
+  /** What is filled or fitted, as the spec sheet names it. */
+  title: string;
   wanted: Amount | undefined;
   grade?: string;
   partNumbers?: readonly string[];
 }
 
-/** Where it came from: the oldest suitable lots are proposed, others can be chosen, and no lot is an answer too. */
-export function DrawEntry({ item, kind, wanted, grade, partNumbers }: DrawEntryProps) {
+/** Where it came from: the oldest suitable lots are proposed, any other can be chosen, and no lot is an answer too. */
+export function DrawEntry({ item, kind, title, wanted, grade, partNumbers }: DrawEntryProps) {
   const { worksheet, lots, machine } = useWorksheet();
+  const draws = itemDraws(worksheet, item);
+  const take = useTake(item, kind);
+  const here = lotsBeside(lots, worksheet, item).filter((lot) => lot.kind === kind);
+  const free = lotsBeside(lots, worksheet).filter((lot) => lot.kind === kind);
+  const day = worksheet.finishedAt.date ?? localDateOf(new Date().toISOString(), machine?.timeZone ?? 'UTC');
+  const drawn = wanted && drawnTotal(draws, wanted.unit);
+  const left = wanted && stillWanted(wanted, drawn);
+  const suitable = suitableLots(free, { title, ...(grade ? { grade } : {}), ...(partNumbers ? { partNumbers } : {}) });
+  const proposed = left ? proposeDraws(suitable, left, day).draws : [];
+  const others = left ? free.filter((lot) => hasLeft(lot) && !proposed.some((one) => one.lot.key === lot.key)) : [];
+  const isOver = wanted && drawn && compareAmounts(drawn, wanted) > 0;
+  return (
+    <div className="border border-line bg-sheet p-3">
+      <p className="label">From the shelf</p>
+      {draws.map((draw) => (
+        <DrawLine
+          key={draw.id}
+          path={`${item}/draws/${draw.id}`}
+          lot={here.find(({ key }) => key === draw.lot)}
+          lots={here}
+          wanted={wanted}
+        />
+      ))}
+      <p className={isOver ? 'tone-gap mt-1.5' : 'mt-1.5'} aria-live="polite">
+        {balanceLeft({ wanted, drawn, lots: free.filter(hasLeft).length })}
+      </p>
+      {proposed.length > 0 ? (
+        <Button size="big" isWide className="mt-2" onClick={() => take(proposed)}>
+          Take {proposed.map(takeWords).join(' and ')}, {proposed[0]?.lot.product}
+        </Button>
+      ) : null}
+      {left && others.length > 0 ? (
+        <details className="mt-2">
+          <summary className="flex min-h-14 items-center font-medium text-petrol underline underline-offset-4">
+            {proposed.length > 0 ? 'From another lot' : 'Choose a lot'}
+          </summary>
+          <ul className="space-y-2">
+            {others.map((lot) => (
+              <li key={lot.key}>
+                <Button size="big" isWide onClick={() => take(proposeDraws([lot], left, day).draws)}>
+                  {lotWords(lot)}
+                </Button>
+              </li>
+            ))}
+          </ul>
+        </details>
+      ) : null}
+    </div>
+  );
+}
+
+const takeWords = ({ lot, amount, unit }: LotDraw) => `${formatAmount({ amount, unit })} from lot ${lot.seq}`;
+
+/** Enters draws: a lot drawn from already gives more, and the first one names the product where nobody has. */
+function useTake(item: string, kind: Lot['kind']): (proposed: readonly LotDraw[]) => void {
+  const { worksheet } = useWorksheet();
   const { view } = useDraftInScreen();
   const setAll = useDraftSet();
-  const draws = itemDraws(worksheet, item);
-  const here = lotsBeside(lots, worksheet, item).filter((lot) => lot.kind === kind);
-  const day = worksheet.finishedAt.date ?? localDateOf(new Date().toISOString(), machine?.timeZone ?? 'UTC');
-  const suitable = suitableLots(here, { ...(grade ? { grade } : {}), ...(partNumbers ? { partNumbers } : {}) });
-  const proposal = wanted && proposeDraws(suitable, wanted, day);
-  const drawn = wanted && drawnTotal(draws, wanted.unit);
-  const isCovered = wanted && drawn && compareAmounts(drawn, wanted) === 0;
-
-  function take() {
-    const old = draws.map((draw): [string, string] => [`${item}/draws/${draw.id}/removed`, 'yes']);
-    const added = (proposal?.draws ?? []).flatMap(({ lot, amount, unit }, index): [string, string][] => {
-      const at = `${item}/draws/${mintId()}`;
+  return (proposed) => {
+    const draws = itemDraws(worksheet, item);
+    const fields = proposed.flatMap(({ lot, amount, unit }, index): [string, string][] => {
+      const same = draws.find((draw) => draw.lot === lot.key);
+      const before = same && readAmount(same);
+      const at = `${item}/draws/${same?.id ?? mintId()}`;
+      const sum = before ? sumAmounts([before, { amount, unit }], unit) : { amount, unit };
       return [
-        [`${at}/lot`, lot.key], [`${at}/amount`, amount], [`${at}/unit`, unit], [`${at}/position`, String(index + 1)],
+        [`${at}/lot`, lot.key], [`${at}/amount`, sum.amount], [`${at}/unit`, sum.unit],
+        ...(same ? [] : [[`${at}/position`, String(draws.length + index + 1)] as [string, string]]),
       ]; // prettier-ignore
     });
-    const lot = proposal?.draws[0]?.lot;
+    const lot = proposed[0]?.lot;
     const named: [string, string][] = [];
     if (lot && kind === 'fluid' && !view.fields[`${item}/product`]) {
       named.push([`${item}/product`, lot.product]);
@@ -51,77 +105,6 @@ export function DrawEntry({ item, kind, wanted, grade, partNumbers }: DrawEntryP
     if (lot?.partNumber && kind === 'part' && !view.fields[`${item}/partNumber`]) {
       named.push([`${item}/partNumber`, lot.partNumber]);
     }
-    setAll(Object.fromEntries([...old, ...added, ...named]));
-  }
-
-  return (
-    <div className="border border-line bg-sheet p-3">
-      <p className="label">From the shelf</p>
-      {draws.map((draw) => {
-        const lot = here.find(({ key }) => key === draw.lot);
-        return <DrawLine key={draw.id} path={`${item}/draws/${draw.id}`} lot={lot} lots={here} wanted={wanted} />;
-      })}
-      <p className="mt-1.5" aria-live="polite">
-        {balanceLeft({ wanted, drawn, suitable: suitable.filter(hasLeft).length })}
-      </p>
-      {proposal && proposal.draws.length > 0 && !isCovered ? (
-        <Button size="big" isWide className="mt-2" onClick={take}>
-          Take{' '}
-          {proposal.draws
-            .map(({ lot, amount, unit }) => `${formatAmount({ amount, unit })} from lot ${lot.seq}`)
-            .join(', ')}
-        </Button>
-      ) : null}
-    </div>
-  );
-}
-
-interface DrawLineProps {
-  path: string;
-  lot: Lot | undefined;
-  lots: readonly Lot[];
-  wanted: Amount | undefined;
-}
-
-function DrawLine({ path, lot, lots, wanted }: DrawLineProps) {
-  const { view } = useDraftInScreen();
-  const unit = lot?.unit ?? '{piece}';
-  const amount = view.fields[`${path}/amount`];
-  const drawn = readAmount({ ...(amount ? { amount } : {}), unit: lotUnit(view.fields[`${path}/unit`], unit) });
-  const sentence = lot && wanted && amount === wanted.amount ? pourSentence(wanted, lot) : undefined;
-  return (
-    <div className="mt-2 border-b border-hair pb-2">
-      <p className="text-lg font-medium">{lot ? lotWords(lot, drawn) : 'A lot that is not on this phone'}</p>
-      {sentence ? <p className="tag">{sentence}</p> : null}
-      <details className="mt-1">
-        <summary className="flex min-h-11 items-center font-medium text-petrol underline underline-offset-4">
-          {drawn ? `${formatAmount(drawn)} from it: change` : 'Change'}
-        </summary>
-        <div className="mt-2 space-y-3">
-          <DraftSelect
-            path={`${path}/lot`}
-            label="Lot"
-            options={[
-              { value: '', label: 'Choose a lot' },
-              ...lots.map((one) => ({ value: one.key, label: lotWords(one) })),
-            ]}
-          />
-          <DraftFigure
-            path={`${path}/amount`}
-            unitPath={`${path}/unit`}
-            usualUnit={unit}
-            offered={unitsOf(units[unit].dimension).filter(
-              (code) => code === unit || code === wanted?.unit || code === 'mL',
-            )}
-            label="Taken from it"
-          />
-          <RemoveItem path={path}>Not from this lot</RemoveItem>
-        </div>
-      </details>
-    </div>
-  );
-}
-
-function lotUnit(kept: string | undefined, fallback: Lot['unit']): Lot['unit'] {
-  return kept !== undefined && kept in units ? (kept as Lot['unit']) : fallback;
+    setAll(Object.fromEntries([...fields, ...named]));
+  };
 }

@@ -5,7 +5,7 @@ import { DraftItem, useDraftInScreen, useDraftSet } from '@/components/garage/dr
 import { ClearItem, DraftChoice, DraftFigure, DraftText, RemoveItem } from '@/components/garage/draft-fields';
 import { Button } from '@/components/ui/button';
 import type { FluidPoint } from '@/lib/evidence/format';
-import { isUnitCode } from '@/lib/domain/units';
+import { formatAmount, isUnitCode } from '@/lib/domain/units';
 import type { WorksheetFill } from '@/lib/domain/worksheet';
 import { DrawEntry } from './draw-entry';
 import { FillTotal } from './fill-total';
@@ -24,7 +24,6 @@ export function FillEntry({ task, point }: { task: string; point: string }) {
     <DraftItem path={path} seed={{ point, fillKind: isDryOnly ? 'dry' : 'wet' }}>
       <fieldset className="space-y-4">
         <legend className="figure mb-2 text-xl">{spec?.title ?? point}, fill</legend>
-        <FillTotal fill={fill} spec={spec} total={total} />
         <FillAmounts path={path} fill={fill} spec={spec} />
         {spec?.dryFill ? (
           <DraftChoice
@@ -37,7 +36,13 @@ export function FillEntry({ task, point }: { task: string; point: string }) {
             ]}
           />
         ) : null}
-        <DrawEntry item={path} kind="fluid" wanted={total} {...(spec?.grade ? { grade: spec.grade } : {})} />
+        <DrawEntry
+          item={path}
+          kind="fluid"
+          title={spec?.title ?? point}
+          wanted={total}
+          {...(spec?.grade ? { grade: spec.grade } : {})}
+        />
         <div className="grid gap-3 sm:grid-cols-2">
           <DraftText path={`${path}/product`} label="Product" />
           <DraftText
@@ -86,7 +91,7 @@ function FillAmounts({ path, fill, spec }: FillAmountsProps) {
         offered={offered}
         label="First fill"
         {...(spec?.startWith?.[0]
-          ? { hint: `Start with ${spec.startWith[0].amount} of it, the rest after the level check.` }
+          ? { hint: `Start with ${formatAmount(spec.startWith[0])}, the rest after the level check.` }
           : {})}
       />
       {topUps.map(({ id }, index) => (
@@ -101,6 +106,7 @@ function FillAmounts({ path, fill, spec }: FillAmountsProps) {
           <RemoveItem path={amountPath(id)}>Remove top-up {index + 1}</RemoveItem>
         </div>
       ))}
+      <FillTotal fill={fill} spec={spec} total={fillTotal(fill?.amounts ?? [])} />
       <Button size="big" isWide onClick={addTopUp}>
         Add a top-up
       </Button>

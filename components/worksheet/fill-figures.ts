@@ -1,4 +1,5 @@
 import type { Amount, FluidPoint, UnitCode } from '@/lib/evidence/format';
+import { fillTolerancePercent } from '@/lib/domain/checks';
 import { pourFrom, type Lot } from '@/lib/domain/shelf';
 import { convert, Decimal, formatAmount, parseNumber, sumAmounts, units } from '@/lib/domain/units';
 import type { WorksheetAmount } from '@/lib/domain/worksheet';
@@ -31,9 +32,6 @@ export function specifiedFor(
     printed.find((amount) => units[amount.unit].dimension === units[unit].dimension)
   );
 }
-
-/** The reader's check of the quantity takes a fill this near to the capacity as filled to it. Common practice, no source. */
-export const fillTolerancePercent = 5;
 
 /** How a fill compares with what is specified; both ends of the tolerance belong to it. */
 export function judgeFill(total: Amount, specified: Amount): 'as specified' | 'near' | 'more' | 'less' {

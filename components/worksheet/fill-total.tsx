@@ -1,10 +1,11 @@
 'use client';
 
 import { ShortRule } from '@/components/rule/short-rule';
+import { fillTolerancePercent } from '@/lib/domain/checks';
 import type { Amount, FluidPoint } from '@/lib/evidence/format';
 import { formatAmount, formatConverted, units } from '@/lib/domain/units';
 import type { WorksheetFill } from '@/lib/domain/worksheet';
-import { companionUnit, drawnFigure, fillTolerancePercent, judgeFill, ruleEnd, specifiedFor } from './fill-figures';
+import { companionUnit, drawnFigure, judgeFill, readAmount, ruleEnd, specifiedFor } from './fill-figures';
 
 interface FillTotalProps {
   fill: WorksheetFill | undefined;
@@ -12,21 +13,22 @@ interface FillTotalProps {
   total: Amount | undefined;
 }
 
-/** The running total, large, over the rule with what is specified. */
+/** The running total, large once there are several amounts, over the rule with what is specified. */
 export function FillTotal({ fill, spec, total }: FillTotalProps) {
   const kind = fill?.fillKind ?? (spec?.wetFill || !spec?.dryFill ? 'wet' : 'dry');
   const printed = (kind === 'dry' ? spec?.dryFill : spec?.wetFill) ?? [];
   const specified = total ? specifiedFor(spec, kind, total.unit) : printed[0];
+  // With one amount the figure stands right above, as typed.
+  const isSum = (fill?.amounts ?? []).flatMap((amount) => readAmount(amount) ?? []).length > 1;
   return (
     <div>
-      <p className="label">Filled, {kind} fill, so far</p>
-      <p
-        className="mt-1.5 flex min-h-16 items-baseline gap-2 border-[1.5px] border-petrol bg-sheet px-3 py-1.5"
-        aria-live="polite"
-      >
-        <span className="figure text-[2.75rem]">{total?.amount ?? '0'}</span>
-        <span className="text-2xl text-soft">{units[total?.unit ?? specified?.unit ?? 'mL'].label}</span>
-      </p>
+      {total && isSum ? (
+        <p className="flex items-baseline gap-2 border-b border-ink pb-1" aria-live="polite">
+          <span className="label mr-auto">Filled, {kind} fill, so far</span>
+          <span className="figure text-[2.75rem]">{total.amount}</span>
+          <span className="text-2xl text-soft">{units[total.unit].label}</span>
+        </p>
+      ) : null}
       {specified ? <FillRule total={total} specified={specified} /> : null}
       {total && !specified ? (
         <p className="tag mt-1.5">

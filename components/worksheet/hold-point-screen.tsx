@@ -2,14 +2,22 @@
 
 import { useDraftInScreen } from '@/components/garage/draft-context';
 import { worksheetHash } from '@/components/garage/place';
+import { TakePhoto } from '@/components/garage/take-photo';
 import { clockTime } from '@/components/garage/status-words';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
-import { procedureFor } from '@/lib/domain/procedures';
+import { procedureFor, type HoldPoint } from '@/lib/domain/procedures';
+import type { AttachmentRole } from '@/lib/evidence/format';
 import type { WorksheetTask } from '@/lib/domain/worksheet';
 import { RecordEntry } from './record-entry';
 import { taskTitle } from './task-fields';
 import { useWorksheet } from './worksheet-context';
+
+function photoRole({ records, key }: HoldPoint): AttachmentRole {
+  if (records?.inspection?.startsWith('Magnet')) return 'magnet';
+  if (records?.part !== undefined) return 'part';
+  return key === 'support' || key === 'open-fill-point' ? 'as-found' : 'as-left';
+}
 
 interface HoldPointScreenProps {
   task: WorksheetTask;
@@ -38,7 +46,7 @@ export function HoldPointScreen({ task, step }: HoldPointScreenProps) {
       isOpen
       isFull
       title={point.title}
-      closeText="Task"
+      closeText="All hold points"
       onClose={() => leave(back)}
       actions={
         <div className="grid w-full grid-cols-[minmax(0,2fr)_minmax(0,3fr)] gap-2.5 lg:max-w-xl">
@@ -70,9 +78,12 @@ export function HoldPointScreen({ task, step }: HoldPointScreenProps) {
           </p>
         ) : null}
         {point.leaves && doneAt === undefined ? <p className="tag mt-3">From here on: {point.leaves.state}</p> : null}
+        <div className="mt-5">
+          <TakePhoto isWide role={photoRole(point)} />
+        </div>
         {point.records ? (
           <div className="mt-6">
-            <RecordEntry task={task.id} procedure={procedure} records={point.records} />
+            <RecordEntry task={task.id} procedure={procedure} records={point.records} isAlone />
           </div>
         ) : null}
       </div>

@@ -14,6 +14,7 @@ export function PartEntry({ task, part }: { task: string; part: string }) {
   const path = `tasks/${task}/parts/${part}`;
   const name = spec?.title ?? part.replaceAll('-', ' ').replace(/^./, (letter) => letter.toUpperCase());
   const quantity = useDraftField(`${path}/quantity`);
+  const named = useDraftField(`${path}/name`);
   const isFitted = quantity.value !== '';
   const read = parseNumber(quantity.value);
   const isFree = spec === undefined && isUuid(part);
@@ -23,7 +24,12 @@ export function PartEntry({ task, part }: { task: string; part: string }) {
         <legend className="figure mb-2 text-xl">{isFree ? 'Part' : name}</legend>
         {isFree ? <DraftText path={`${path}/name`} label="Name" /> : null}
         {isFitted || isFree ? (
-          <PartFitted path={path} part={part} amount={read.ok ? read.amount : undefined} />
+          <PartFitted
+            path={path}
+            part={part}
+            title={isFree ? named.value : name}
+            amount={read.ok ? read.amount : undefined}
+          />
         ) : (
           <FitNow path={path} quantity={spec?.quantity ?? '1'} />
         )}
@@ -43,7 +49,14 @@ function FitNow({ path, quantity }: { path: string; quantity: string }) {
   );
 }
 
-function PartFitted({ path, part, amount }: { path: string; part: string; amount: string | undefined }) {
+interface PartFittedProps {
+  path: string;
+  part: string;
+  title: string;
+  amount: string | undefined;
+}
+
+function PartFitted({ path, part, title, amount }: PartFittedProps) {
   const { machine } = useWorksheet();
   const spec = machine?.terms?.parts.find((one) => one.part === part);
   const numbers = spec?.partNumbers ?? [];
@@ -61,6 +74,7 @@ function PartFitted({ path, part, amount }: { path: string; part: string; amount
       <DrawEntry
         item={path}
         kind="part"
+        title={title}
         wanted={amount === undefined ? undefined : { amount, unit: '{piece}' }}
         {...(numbers.length > 0 ? { partNumbers: numbers } : {})}
       />

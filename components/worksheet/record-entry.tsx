@@ -11,13 +11,15 @@ interface RecordEntryProps {
   task: string;
   procedure: Procedure;
   records: NonNullable<HoldPoint['records']>;
+  /** On a screen of its own a level check takes the top-ups it leads to; beside the fill they would stand twice. */
+  isAlone?: boolean;
 }
 
-/** What a hold point asks to be entered. A level check also takes the top-ups it leads to. */
-export function RecordEntry({ task, procedure, records }: RecordEntryProps) {
+/** What a hold point asks to be entered. */
+export function RecordEntry({ task, procedure, records, isAlone = false }: RecordEntryProps) {
   const { fill, torque, inspection, part, levelCheck } = records;
   const seen = procedure.inspections.find(({ subject }) => subject === inspection);
-  const topUp = levelCheck !== undefined && fill === undefined && procedure.fluidPoints.includes(levelCheck);
+  const isFilled = procedure.holdPoints.some(({ records: one }) => one?.fill !== undefined && one.fill === levelCheck);
   return (
     <div className="space-y-6">
       {inspection === undefined ? null : (
@@ -27,7 +29,7 @@ export function RecordEntry({ task, procedure, records }: RecordEntryProps) {
       {torque === undefined ? null : <TorqueEntry task={task} fastener={torque} />}
       {part === undefined ? null : <PartEntry task={task} part={part} />}
       {levelCheck === undefined ? null : <LevelCheckEntry task={task} point={levelCheck} />}
-      {topUp && procedure.holdPoints.some(({ records: one }) => one?.fill === levelCheck) ? (
+      {isAlone && levelCheck !== undefined && fill === undefined && isFilled ? (
         <FillEntry task={task} point={levelCheck} />
       ) : null}
     </div>

@@ -1,6 +1,6 @@
 'use client';
 
-import { photosOf } from '@/components/garage/photos';
+import { photosOf } from '@/components/garage/photos-of';
 import { useDraftInScreen } from '@/components/garage/draft-context';
 import { worksheetHash } from '@/components/garage/place';
 import { Notice } from '@/components/ui/notice';

@@ -2,10 +2,13 @@ import { procedureFor, procedureOfItem, type Procedure } from '@/lib/domain/proc
 import type { ScheduleItem } from '@/lib/evidence/format';
 import type { Worksheet, WorksheetTask } from '@/lib/domain/worksheet';
 
+/** What of a schedule item a task needs. */
+export type NamedItem = Pick<ScheduleItem, 'item' | 'title' | 'action'>;
+
 /** What a new task starts with. `position` keeps tasks in the order they were chosen. */
 export function newTaskFields(
   id: string,
-  chosen: { procedure: Procedure; item?: ScheduleItem },
+  chosen: { procedure: Procedure; item?: NamedItem },
   position: number,
 ): Record<string, string> {
   const { procedure, item } = chosen;
@@ -23,7 +26,7 @@ export function newTaskFields(
 }
 
 /** How a schedule item is done: by its procedure, else as other work under the item's own name. */
-export function workFor(item: ScheduleItem): { procedure: Procedure; item: ScheduleItem } {
+export function workFor(item: NamedItem): { procedure: Procedure; item: NamedItem } {
   return { procedure: procedureOfItem(item.item) ?? procedureFor('free'), item };
 }
 

@@ -5,7 +5,7 @@ import { ClearItem, DraftFigure, DraftText } from '@/components/garage/draft-fie
 import { ShortRule } from '@/components/rule/short-rule';
 import type { UnitCode } from '@/lib/evidence/format';
 import { checkTorque, formatBand } from '@/lib/domain/torque';
-import { formatAmount, formatConverted, isUnitCode } from '@/lib/domain/units';
+import { formatConverted, isUnitCode } from '@/lib/domain/units';
 import { drawnFigure, readAmount } from './fill-figures';
 import { useWorksheet } from './worksheet-context';
 
@@ -73,7 +73,7 @@ function TorqueJudgement({ path, bands }: { path: string; bands: { min: string; 
       {torque && shown && shown.result !== 'within' ? (
         <p role="status" className="tone-warn">
           {shown.sentence}{' '}
-          {shown.result === 'no-band' ? '' : `Set ${formatAmount(torque)} right, or leave it: it is sealed as it is.`}
+          {shown.result === 'no-band' ? '' : 'Check the wrench and the figure; left so, it is sealed as it is.'}
         </p>
       ) : null}
     </>

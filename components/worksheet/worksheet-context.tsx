@@ -74,8 +74,8 @@ export function drawsOf(worksheet: Worksheet): { item: string; draw: WorksheetDr
   ]);
 }
 
-/** Lots with what this worksheet takes elsewhere already taken off. */
-export function lotsBeside(lots: readonly Lot[], worksheet: Worksheet, item: string): Lot[] {
+/** Lots with what this worksheet takes already taken off; with `item`, only what it takes elsewhere. */
+export function lotsBeside(lots: readonly Lot[], worksheet: Worksheet, item?: string): Lot[] {
   const others = drawsOf(worksheet).filter((one) => one.item !== item);
   return lots.map((lot) => {
     const taken = others.flatMap(({ draw }) => {

@@ -5,6 +5,7 @@ import { HashButton } from '@/components/garage/hash-button';
 import { worksheetRoles } from '@/components/garage/photo-roles';
 import { Photos } from '@/components/garage/photos';
 import { worksheetHash } from '@/components/garage/place';
+import { TakePhoto } from '@/components/garage/take-photo';
 import { StatusLine } from '@/components/garage/status-line';
 import { useDraft, useGarage } from '@/components/garage/garage-context';
 import type { OpenDraft } from '@/components/garage/open-draft';
@@ -12,11 +13,12 @@ import { Dock } from '@/components/shell/dock';
 import { LinkButton } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { UserText } from '@/components/ui/user-text';
+import { procedureFor } from '@/lib/domain/procedures';
 import { paths } from '@/lib/paths';
 import { ChooseTasks } from './choose-tasks';
 import { StartScreen } from './start-screen';
 import { SummaryScreen } from './summary-screen';
-import { nextScreen, taskTitle } from './task-fields';
+import { nextScreen, taskProgress, taskTitle } from './task-fields';
 import { TaskScreen } from './task-screen';
 import { useWorksheet, WorksheetProvider } from './worksheet-context';
 import { WorksheetScreens } from './worksheet-screens';
@@ -74,12 +76,14 @@ function Screen({ opened, screen, step }: WorksheetScreenProps) {
   );
 }
 
+const asFound = () => 'as-found' as const;
+
 function OtherScreen({ screen }: { screen: string }) {
   switch (screen) {
     case 'start':
       return <StartScreen />;
     case 'photos':
-      return <Photos roles={worksheetRoles} takeText="Take a photo" nextRole={() => 'as-found'} />;
+      return <Photos roles={worksheetRoles} takeText="Take a photo" nextRole={asFound} />;
     case 'summary':
       return <SummaryScreen />;
     default:
@@ -90,17 +94,21 @@ function OtherScreen({ screen }: { screen: string }) {
 function NextButton({ id, screen }: { id: string; screen: string }) {
   const { worksheet } = useWorksheet();
   const next = nextScreen(worksheet, screen);
-  const isTask = worksheet.tasks.some((task) => task.id === screen);
+  const task = worksheet.tasks.find((one) => one.id === screen);
+  const nextPoint = task && taskProgress(task).next;
+  const open = task && procedureFor(task.key).holdPoints.find(({ key }) => key === nextPoint);
   return (
     <>
-      {isTask ? (
-        <HashButton size="big" href={worksheetHash(id, 'photos')}>
-          Take a photo
+      {task ? <TakePhoto role={open === undefined ? 'as-left' : 'as-found'} /> : null}
+      {task && open ? (
+        <HashButton size="big" look="main" href={worksheetHash(id, task.id, open.key)}>
+          Go on: {open.title.replace(/^./, (letter) => letter.toLowerCase())}
         </HashButton>
-      ) : null}
-      <HashButton size="big" look="main" href={worksheetHash(id, next.screen)}>
-        Next: {next.text}
-      </HashButton>
+      ) : (
+        <HashButton size="big" look="main" href={worksheetHash(id, next.screen)}>
+          Next: {next.text}
+        </HashButton>
+      )}
     </>
   );
 }

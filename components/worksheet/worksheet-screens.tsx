@@ -21,7 +21,7 @@ export function WorksheetScreens({ current }: { current: string }) {
   ];
   return (
     <nav aria-label="Screens of this worksheet" className="not-printed -mx-4 mb-4 overflow-x-auto px-4 lg:mx-0 lg:px-0">
-      <ol className="flex border-y border-line lg:block lg:border-b-0">
+      <ol className="flex w-max min-w-full border-y border-line lg:block lg:w-auto lg:border-b-0">
         {screens.map(({ screen, text, words }) => (
           <li
             key={screen}

@@ -43,7 +43,7 @@ export interface ReaderCheck extends Check {
 
 const loggedSoonDays = 7;
 /** A fill this far from a printed capacity still counts as filled to it. Common practice, no source. */
-const fillTolerancePercent = 5;
+export const fillTolerancePercent = 5;
 
 export interface CheckSources {
   /** The service; its own `checks` are not looked at. */

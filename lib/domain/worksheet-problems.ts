@@ -76,10 +76,11 @@ function timeProblems({ startedAt, finishedAt, zone }: Worksheet, now: string): 
 }
 
 function odometerProblems(
-  { odometer, engineHours, finishedAt }: Worksheet,
+  { odometer, engineHours, startedAt, finishedAt }: Worksheet,
   { readings = [] }: ProblemContext,
 ): Problems {
   const problems: Problems = {};
+  const day = finishedAt.date ?? startedAt.date;
   if (engineHours !== undefined) {
     const hours = parseNumber(engineHours);
     if (!hours.ok) problems.engineHours = hours.error;
@@ -99,9 +100,10 @@ function odometerProblems(
   else if (odometer.unit === undefined) problems['odometer/unit'] = 'Choose the odometer’s unit: km or mi.';
   else if (units[odometer.unit].dimension !== 'distance')
     problems['odometer/unit'] = 'An odometer counts km or mi. Choose one of them.';
-  else if (finishedAt.date !== undefined && isLocalDate(finishedAt.date)) {
+  // Doubted from the day the work begins, while the machine is still there to be looked at again.
+  else if (day !== undefined && isLocalDate(day)) {
     const { unit, instrument } = odometer;
-    const doubt = readingProblem({ on: finishedAt.date, value: value.amount, unit, instrument }, readings);
+    const doubt = readingProblem({ on: day, value: value.amount, unit, instrument }, readings);
     if (doubt !== undefined) problems['odometer/value'] = doubt;
   }
   return problems;
