@@ -45,11 +45,11 @@ async function keepPage(response) {
 }
 
 async function garagePage(event) {
+  const fromServer = fetch(event.request);
+  // Asked for at once: after the kept page has been given, the browser would not let the worker live for it.
+  const copy = fromServer.then((response) => response.clone());
+  event.waitUntil(copy.then(keepPage).catch(() => undefined));
   const kept = await caches.match(pagePath, { cacheName });
-  const fromServer = fetch(event.request).then((response) => {
-    event.waitUntil(keepPage(response.clone()).catch(() => undefined));
-    return response;
-  });
   if (!kept) return fromServer;
   // A bar of signal that carries nothing is as good as none.
   const tooLong = new Promise((resolve) => setTimeout(() => resolve(kept), patienceInMilliseconds));

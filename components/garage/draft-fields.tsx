@@ -67,7 +67,10 @@ export function DraftFigure({ path, unitPath, offered, usualUnit, ...rest }: Fig
   const choice =
     unitPath && offered
       ? {
-          units: offered.map((code) => ({ code, label: units[code].label })),
+          units: offered.map((code) => ({
+            code,
+            label: <span className="whitespace-nowrap">{units[code].label}</span>,
+          })),
           unitName: unitPath,
           unitValue: unit.value || usualUnit || '',
           onUnitChange: unit.set,

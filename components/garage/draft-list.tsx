@@ -17,11 +17,15 @@ import { StatusLine } from './status-line';
 export function DraftList({ isPart = false }: { isPart?: boolean }) {
   const { view } = useGarage();
   const open = view.drafts.filter(({ view: { draft } }) => draft.state === 'open');
+  // A fresh device has no list yet; an empty one would say that nothing is open.
+  const isKnown = open.length > 0 || view.snapshot !== undefined || view.signal !== 'unknown';
   const worksheets = open.filter(({ view: { draft } }) => draft.kind === 'worksheet');
   const receipts = open.filter(({ view: { draft } }) => draft.kind === 'receipt');
   return (
     <>
-      {isPart ? null : <PageHead title={newsOf(worksheets.length, receipts.length)} />}
+      {isPart ? null : (
+        <PageHead title={isKnown ? newsOf(worksheets.length, receipts.length) : 'Fetching your worksheets'} />
+      )}
       <div className="mb-6 grid gap-2.5 sm:grid-cols-2">
         <HashButton size="big" look="main" href="#new-worksheet">
           Begin a worksheet

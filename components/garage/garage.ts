@@ -135,8 +135,9 @@ export class Garage {
     const answer = isOnServer ? await this.parts.api.discardDraft(id) : ({ ok: true, value: undefined } as const);
     // Discarded on another device already, or no longer shared: there is nothing left to discard.
     const isGone = !answer.ok && answer.why === 'refused' && ['conflict', 'not-found'].includes(answer.code);
-    if (answer.ok || isGone) await this.forget(id);
-    return answer;
+    if (!answer.ok && !isGone) return answer;
+    await this.forget(id);
+    return { ok: true, value: undefined };
   }
 
   /** Moves a worksheet to another machine. Needs the server once the server knows it. */

@@ -36,7 +36,11 @@ export function PhotoDrop({ onFiles, takeText, hasPdf = false }: PhotoDropProps)
     maxSize: mostBytes,
     noClick: true,
     noKeyboard: true,
-    onDrop: (accepted, rejected) => onFiles(accepted, rejected.map((one) => reasonOf(one, hasPdf))),
+    onDrop: (accepted, rejected) =>
+      onFiles(
+        accepted,
+        rejected.map((one) => reasonOf(one, hasPdf)),
+      ),
   });
   useEffect(() => {
     function paste(event: ClipboardEvent) {

@@ -12,7 +12,8 @@ import { useGarage } from './garage-context';
 import { roleWords } from './photo-roles';
 import type { Photo } from './photos-of';
 
-const megabytes = (bytes: number): string => `${(bytes / 1_000_000).toFixed(1)} MB`;
+const sizeWords = (bytes: number): string =>
+  bytes < 100_000 ? `${Math.ceil(bytes / 1000)} kB` : `${(bytes / 1_000_000).toFixed(1)} MB`;
 
 export function PhotoRow({ photo, roles }: { photo: Photo; roles: readonly AttachmentRole[] }) {
   const { opened } = useDraftInScreen();
@@ -67,8 +68,8 @@ export function PhotoRow({ photo, roles }: { photo: Photo; roles: readonly Attac
 
 function whereWords({ file, upload }: Photo, share: number | undefined): string {
   if (file?.state === 'refused') return 'Refused';
-  if (upload ?? file?.answer) return `On the server, ${megabytes((upload ?? file?.answer)?.bytes ?? 0)}`;
-  const size = megabytes(file?.bytes ?? 0);
+  if (upload ?? file?.answer) return `On the server, ${sizeWords((upload ?? file?.answer)?.bytes ?? 0)}`;
+  const size = sizeWords(file?.bytes ?? 0);
   return share === undefined ? `Kept on this phone, ${size}` : `On its way, ${size}`;
 }
 
@@ -76,13 +77,14 @@ function PhotoPicture({ photo }: { photo: Photo }) {
   const { view } = useDraftInScreen();
   const [local, setLocal] = useState<string>();
   const { file } = photo;
-  const blob = file?.blob;
+  // A browser that lost a picture's bytes gives back something that is no blob.
+  const blob = file?.blob instanceof Blob && photo.mediaType.startsWith('image/') ? file.blob : undefined;
   useEffect(() => {
-    if (!blob || !photo.mediaType.startsWith('image/')) return;
+    if (!blob) return;
     const url = URL.createObjectURL(blob);
     setLocal(url);
     return () => URL.revokeObjectURL(url);
-  }, [blob, photo.mediaType]);
+  }, [blob]);
   const answer = photo.upload ?? file?.answer;
   const source = blob
     ? local

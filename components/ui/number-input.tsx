@@ -1,4 +1,4 @@
-import type { ComponentPropsWithRef } from 'react';
+import type { ComponentPropsWithRef, ReactNode } from 'react';
 import type { ControlSize } from './button';
 import { classes } from './classes';
 import { controlClasses, Field, type FieldProps } from './field';
@@ -7,7 +7,7 @@ import { Segments } from './segments';
 export interface UnitOption {
   /** UCUM code, as it goes into the record. */
   code: string;
-  label: string;
+  label: ReactNode;
 }
 
 export type NumberInputProps = Omit<ComponentPropsWithRef<'input'>, 'size' | 'type' | 'children' | 'inputMode'> &

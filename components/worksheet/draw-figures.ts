@@ -3,7 +3,7 @@ import { formatLocalDate } from '@/lib/domain/instants';
 import { balanceAfter, hasLeft, type Lot } from '@/lib/domain/shelf';
 import { compareAmounts, Decimal, formatAmount, sumAmounts, units } from '@/lib/domain/units';
 import type { Worksheet, WorksheetDraw } from '@/lib/domain/worksheet';
-import { readAmount } from './fill-figures';
+import { readableAmount, readAmount } from './fill-figures';
 
 /** The draws of one item, named by its path. */
 export function itemDraws(worksheet: Worksheet, item: string): WorksheetDraw[] {
@@ -57,7 +57,7 @@ export function suitableLots(
 export function lotWords(lot: Lot, drawn?: Amount): string {
   const isAlike = drawn !== undefined && units[drawn.unit].dimension === units[lot.unit].dimension;
   const balance = isAlike ? balanceAfter(lot.balance, [drawn]) : lot.balance;
-  const amount = new Decimal(balance.amount).gt(0) ? `${formatAmount(balance)} left` : 'nothing left';
+  const amount = new Decimal(balance.amount).gt(0) ? `${readableAmount(balance)} left` : 'nothing left';
   const left = isAlike ? `${amount} after this` : amount;
   const grade = lot.grade && !plain(lot.product).includes(plain(lot.grade)) ? ` ${lot.grade}` : '';
   return `Lot ${lot.seq}: ${lot.product}${grade}, bought ${formatLocalDate(lot.boughtOn.date)}, ${left}`;

@@ -1,7 +1,7 @@
 import type { Amount, FluidPoint, UnitCode } from '@/lib/evidence/format';
 import { fillTolerancePercent } from '@/lib/domain/checks';
 import { pourFrom, type Lot } from '@/lib/domain/shelf';
-import { convert, Decimal, formatAmount, parseNumber, sumAmounts, units } from '@/lib/domain/units';
+import { convert, Decimal, formatAmount, formatConverted, parseNumber, sumAmounts, units } from '@/lib/domain/units';
 import type { WorksheetAmount } from '@/lib/domain/worksheet';
 
 /** An amount as typed, once it can be read; undefined while it cannot. */
@@ -54,6 +54,14 @@ export function companionUnit(unit: UnitCode): UnitCode {
   return unit === '[foz_us]' || unit === '[foz_br]' ? 'mL' : 'L';
 }
 
+/** For reading off a bottle: what a conversion leaves with many decimals is rounded, and says so. */
+export function readableAmount({ amount, unit }: Amount): string {
+  if (new Decimal(amount).decimalPlaces() <= 3) return formatAmount({ amount, unit });
+  const least = new Decimal(10).pow(-units[unit].decimals);
+  if (new Decimal(amount).abs().lt(least)) return `less than ${formatConverted(least, unit, unit)}`;
+  return `about ${formatConverted(amount, unit, unit)}`;
+}
+
 /**
  * How an amount comes out of the bottles of a lot, in one sentence.
  *
@@ -65,14 +73,15 @@ export function pourSentence(wanted: Amount, lot: Pick<Lot, 'containerSize' | 's
   const { containers, pourOff } = pourFrom(wanted, size);
   const isWhole = new Decimal(pourOff.amount).isZero();
   const bottle = formatAmount(size);
-  const stays = `${formatAmount(pourOff)} ${pourOff.amount === '1' ? 'stays' : 'stay'} in lot ${lot.seq}.`;
+  const rest = readableAmount(pourOff).replace(/^[al]/, (letter) => letter.toUpperCase());
+  const stays = `${rest} ${pourOff.amount === '1' ? 'stays' : 'stay'} in lot ${lot.seq}.`;
   if (containers === 1) {
     return isWhole
       ? `From a ${bottle} bottle: all of it.`
-      : `From a ${bottle} bottle: pour off ${formatAmount(pourOff)}, then all of it. ${stays}`;
+      : `From a ${bottle} bottle: pour off ${readableAmount(pourOff)}, then all of it. ${stays}`;
   }
   if (isWhole) return `${containers} whole bottles of ${bottle}.`;
-  return `${containers - 1} whole ${containers === 2 ? 'bottle' : 'bottles'} of ${bottle}; from the next pour off ${formatAmount(pourOff)}, then all of it. ${stays}`;
+  return `${containers - 1} whole ${containers === 2 ? 'bottle' : 'bottles'} of ${bottle}; from the next pour off ${readableAmount(pourOff)}, then all of it. ${stays}`;
 }
 
 /** A figure for a drawing only; never for a decision. */

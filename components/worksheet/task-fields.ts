@@ -1,9 +1,9 @@
 import { procedureFor, procedureOfItem, type Procedure } from '@/lib/domain/procedures';
-import type { ScheduleItem } from '@/lib/evidence/format';
+import type { ScheduleItem, Task } from '@/lib/evidence/format';
 import type { Worksheet, WorksheetTask } from '@/lib/domain/worksheet';
 
 /** What of a schedule item a task needs. */
-export type NamedItem = Pick<ScheduleItem, 'item' | 'title' | 'action'>;
+export type NamedItem = Pick<ScheduleItem, 'item' | 'title'> & { action: Task['action'] };
 
 /** What a new task starts with. `position` keeps tasks in the order they were chosen. */
 export function newTaskFields(

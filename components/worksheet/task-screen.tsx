@@ -30,7 +30,7 @@ export function TaskScreen({ task, step }: { task: WorksheetTask; step: string |
       {task.key === 'free' ? <DraftText path={`tasks/${task.id}/title`} label="What was done" /> : null}
       <HoldPoints task={task} />
       {step === undefined ? (
-        <div className="grid gap-x-10 gap-y-8 lg:grid-cols-2">
+        <div className="gap-10 *:mb-8 *:break-inside-avoid lg:columns-2">
           {withoutRepeats(recorded).map((records) => (
             <RecordEntry key={JSON.stringify(records)} task={task.id} procedure={procedure} records={records} />
           ))}

@@ -108,10 +108,13 @@ function fillOf({ id, node }: { id: string; node: FieldNode }): WorksheetFill {
     id,
     ...texts(node, ['point', 'product', 'grade']),
     ...present({ fillKind: oneOf<'wet' | 'dry'>(textAt(node, 'fillKind'), ['wet', 'dry']) }),
-    amounts: itemsOf(node, 'amounts').map((item) => ({
-      ...amountOf(item),
-      step: oneOf(textAt(item.node, 'step'), ['first', 'top-up']) ?? 'first',
-    })),
+    // The first fill reads first, whichever was written down before the other.
+    amounts: itemsOf(node, 'amounts')
+      .map((item) => ({
+        ...amountOf(item),
+        step: oneOf<'first' | 'top-up'>(textAt(item.node, 'step'), ['first', 'top-up']) ?? 'first',
+      }))
+      .sort((a, b) => Number(a.step === 'top-up') - Number(b.step === 'top-up')),
     draws: drawsOf(node),
   };
 }

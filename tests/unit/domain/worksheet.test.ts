@@ -90,4 +90,13 @@ describe('worksheetFrom', () => {
       value: '5',
     });
   });
+
+  it('reads the first fill before its top-ups, whichever was entered first', () => {
+    const { tasks } = worksheetFrom({
+      'tasks/t/key': 'engine-oil',
+      'tasks/t/fills/engine/amounts/a/amount': '0.5', 'tasks/t/fills/engine/amounts/a/step': 'top-up', 'tasks/t/fills/engine/amounts/a/position': '2',
+      'tasks/t/fills/engine/amounts/first/amount': '4',
+    }); // prettier-ignore
+    expect(tasks[0]?.fills[0]?.amounts.map(({ amount }) => amount)).toEqual(['4', '0.5']);
+  });
 });
