@@ -8,7 +8,6 @@ export default defineConfig({
   ssr: { resolve: { conditions: ['react-server', 'node', 'import', 'default'] } },
   test: {
     environment: 'node',
-    include: ['tests/**/*.test.ts'],
     setupFiles: [path.join(root, 'tests/setup/data-folder.ts'), path.join(root, 'tests/setup/unexpected-console.ts')],
     testTimeout: 30_000,
     hookTimeout: 60_000,
