@@ -52,12 +52,20 @@ const secretPath = /^\/(?:confirm-email|reset-password|countersign|v|view)\//;
 export function pageHeaders({ pathname, isSecure }: { pathname: string; isSecure: boolean }): Record<string, string> {
   return {
     'x-content-type-options': 'nosniff',
-    // `strict-origin` keeps the Origin header, which `no-referrer` would blank and forms are checked by.
-    'referrer-policy': secretPath.test(pathname) ? 'strict-origin' : 'same-origin',
+    'referrer-policy': referrerPolicy(pathname),
     'permissions-policy': 'camera=(self), microphone=(), geolocation=(), payment=(), usb=(), browsing-topics=()',
     'cross-origin-opener-policy': 'same-origin',
     'x-frame-options': 'DENY',
     ...(secretPath.test(pathname) ? { 'x-robots-tag': 'noindex' } : {}),
     ...(isSecure ? { 'strict-transport-security': 'max-age=63072000' } : {}),
   };
+}
+
+/**
+ * A swap address has no form and says nothing at all. On other pages with a secret in their address `strict-origin`
+ * keeps the Origin header, which `no-referrer` would blank and forms are checked by.
+ */
+function referrerPolicy(pathname: string): string {
+  if (/^\/(v|countersign)\/[A-Za-z0-9_-]+$/.test(pathname)) return 'no-referrer';
+  return secretPath.test(pathname) ? 'strict-origin' : 'same-origin';
 }
