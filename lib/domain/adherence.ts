@@ -184,6 +184,7 @@ function short({ amount, unit }: Amount): string {
 export interface AdherenceSummary {
   /** How often the item was done. */
   done: number;
+  /** The longest distance and the longest time, of any intervals that have a limit; not always of the same one. */
   longestDistance?: Amount;
   longestMonths: number;
   longestDays: number;
@@ -203,7 +204,9 @@ export function adherenceSummary(intervals: readonly AdherenceInterval[]): Adher
   const judged = intervals.filter(({ result }) => result !== 'before-record');
   const late = judged.filter(({ result }) => result === 'late');
   const count = (result: AdherenceResult): number => judged.filter((one) => one.result === result).length;
-  const longest = judged.reduce<Amount | undefined>((most, { distance }) => {
+  // Where nothing is prescribed any more, nothing can be too long.
+  const limited = judged.filter(({ result }) => result !== 'no-limit');
+  const longest = limited.reduce<Amount | undefined>((most, { distance }) => {
     if (distance === undefined) return most;
     if (most === undefined) return distance;
     return convert(distance.amount, distance.unit, most.unit).gt(most.amount) ? distance : most;
@@ -211,8 +214,8 @@ export function adherenceSummary(intervals: readonly AdherenceInterval[]): Adher
   return {
     done: intervals.filter(({ to }) => to.what === 'done').length,
     ...(longest === undefined ? {} : { longestDistance: longest }),
-    longestMonths: Math.max(0, ...judged.map(({ months }) => months)),
-    longestDays: Math.max(0, ...judged.map(({ days }) => days)),
+    longestMonths: Math.max(0, ...limited.map(({ months }) => months)),
+    longestDays: Math.max(0, ...limited.map(({ days }) => days)),
     late: late.length,
     withinGrace: count('within-grace'),
     notKnown: count('not-known'),

@@ -108,7 +108,7 @@ const lowered = (text: string): string => text.charAt(0).toLowerCase() + text.sl
 function receipts(sources: CheckSources): Verdict {
   const fills = fillsOf(sources);
   const parts = partsOf(sources);
-  if (fills.length + parts.length === 0) return notApplicable('No fluid or part was used');
+  if (fills.length + parts.length === 0) return notApplicable('No fluid or part is recorded');
   const { body, attachments } = sources;
   const isByTrade = body.performedBy.some(({ capacity }) => capacity === 'shop' || capacity === 'dealer');
   const hasWorkOrder = attachments.some(({ role }) => role === 'work-order');
@@ -157,31 +157,33 @@ const plainText = (text: string): string =>
 
 function gradeAndPartNumber(sources: CheckSources): Verdict {
   const gaps: string[] = [];
-  let judged = 0;
+  const kept: string[] = [];
+  const unnamed: string[] = [];
   for (const { point, pointTitle, grade } of fillsOf(sources)) {
     const specified = sources.terms.fluidPoints.find((one) => one.point === point)?.grade;
-    if (specified === undefined) continue;
-    judged += 1;
-    if (grade === undefined) gaps.push(`No grade recorded for the ${lowered(pointTitle)}; ${specified} is specified`);
+    if (specified === undefined) unnamed.push(`the ${lowered(pointTitle)} fill`);
+    else if (grade === undefined)
+      gaps.push(`No grade recorded for the ${lowered(pointTitle)}; ${specified} is specified`);
     else if (!sameText(grade, specified)) gaps.push(`${pointTitle}: ${grade} used, ${specified} specified`);
+    else kept.push(`${pointTitle}: ${grade}, as specified`);
   }
   for (const { name, partNumber } of partsOf(sources)) {
     const specified =
       sources.terms.parts.find(({ part, title }) => sameText(title, name) || part === name)?.partNumbers ?? [];
-    if (specified.length === 0) continue;
-    judged += 1;
-    if (partNumber === undefined)
+    if (specified.length === 0) unnamed.push(`the ${partInSentence(sources, name)}`);
+    else if (partNumber === undefined)
       gaps.push(
         `No part number recorded for the ${partInSentence(sources, name)}; ${specified.join(' or ')} is specified`,
       );
     else if (!specified.some((one) => sameText(one, partNumber))) {
       gaps.push(`${name}: part number ${partNumber} used, ${specified.join(' or ')} specified`);
-    }
+    } else kept.push(`${name}: part number ${partNumber}, as specified`);
   }
   if (gaps.length > 0) return gap(gaps);
-  return judged === 0
-    ? notApplicable('The spec sheet names no grade or part number for this work')
-    : met('As the spec sheet names them');
+  if (kept.length === 0) return notApplicable('The spec sheet names no grade or part number for this work');
+  // What nothing is specified for was not compared, and a reader is told so.
+  const others = [...new Set(unnamed)].join(', ');
+  return met([...kept, ...(others === '' ? [] : [`The spec sheet names none for ${others}`])].join('. '));
 }
 
 function quantity(sources: CheckSources): Verdict {

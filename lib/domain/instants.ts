@@ -3,10 +3,6 @@ import { addDays as addDaysTo, addMonths as addMonthsTo, differenceInCalendarDay
 import type { LocalMoment } from '@/lib/evidence/format';
 
 const shortMonths = ['Jan', 'Feb', 'Mar', 'Apr', 'May', 'Jun', 'Jul', 'Aug', 'Sep', 'Oct', 'Nov', 'Dec'] as const;
-const longMonths = [
-  'January', 'February', 'March', 'April', 'May', 'June',
-  'July', 'August', 'September', 'October', 'November', 'December',
-] as const; // prettier-ignore
 const millisecondsInMinute = 60_000;
 const minutesInHour = 60;
 const hoursInDay = 24;
@@ -164,14 +160,15 @@ export function formatLocalDate(date: string): string {
 }
 
 /**
- * An expected date in words, the year only when it is not this one.
+ * An expected date in words, short enough for a lane; the year only when it is not this one.
  *
- * @example formatExpectedDate('2026-05-02', '2026-04-18') // '2 May'
+ * @throws RangeError when the date is not one
+ * @example formatExpectedDate('2027-01-31', '2026-12-01') // '31 Jan 2027'
  */
 export function formatExpectedDate(date: string, today: string): string {
   const day = plain(date);
   const year = date.slice(0, 4) === today.slice(0, 4) ? '' : ` ${day.getFullYear()}`;
-  return `${day.getDate()} ${longMonths[day.getMonth()]}${year}`;
+  return `${day.getDate()} ${shortMonths[day.getMonth()]}${year}`;
 }
 
 /**

@@ -23,7 +23,7 @@ export interface WarrantyState {
  * printed distance is taken as an odometer figure. The warranty's own text decides; this only counts.
  *
  * @example warrantyState(term, readings, { now: '2026-04-12T16:14:00.000Z', zone: 'America/Denver' }).sentence
- * // 'Ends by time on 14 Jun 2026; by distance at 24,000 mi, about 20 August 2027.'
+ * // 'Ends by time on 14 Jun 2026; by distance at 24,000 mi, about 20 Aug 2027.'
  */
 export function warrantyState(
   term: WarrantyTerm,

@@ -115,7 +115,13 @@ describe('adherenceOf', () => {
 
   it('has no opinion on an item without a limit', () => {
     const once = { ...item, interval: {} };
-    expect(resultsOf([at('2023-07-04', '990')], history('2024-06-01', '6202'), once)).toEqual(['in-time', 'no-limit']);
+    const kept = adherenceOf(once, [at('2023-07-04', '990')], history('2024-06-01', '6202'));
+    expect(kept.map(({ result }) => result)).toEqual(['in-time', 'no-limit']);
+    // The 5,212 mi since then have no limit to be long by.
+    expect(adherenceSummary(kept)).toMatchObject({
+      longestDistance: kept[0]?.distance,
+      longestMonths: kept[0]?.months,
+    });
     expect(
       adherenceSummary(adherenceOf({ ...once, firstService: undefined }, [], history('2024-06-01', '10'))).sentence,
     ).toBe('no limit is prescribed');

@@ -119,6 +119,15 @@ describe('serviceChecks', () => {
     );
     expect(check('grade-and-part-number', withTask({ fills: [], parts: [] }))[0]).toBe('not-applicable');
   });
+  it('says which grades and part numbers it compared, and for what the spec sheet names none', () => {
+    expect(check('grade-and-part-number', {})[1]).toBe(
+      'Engine: SAE 20W-50, as specified. Oil filter: part number TN-2204, as specified',
+    );
+    const pads = { ...filter, name: 'Tarn front brake pads', partNumber: 'TN-5102' };
+    expect(check('grade-and-part-number', withTask({ parts: [pads] }))[1]).toBe(
+      'Engine: SAE 20W-50, as specified. The spec sheet names none for the Tarn front brake pads',
+    );
+  });
 
   // 5 % of the printed 4.5 US qt either way.
   it.each([

@@ -67,6 +67,7 @@ describe.each(['Pacific/Auckland', 'UTC', 'America/Los_Angeles'])('plain dates o
     expect(formatInstant('2025-10-20T00:04:11.000Z', 'Pacific/Auckland')).toBe('20 Oct 2025 13:04');
     expect(formatExpectedDate('2026-05-02', '2026-04-18')).toBe('2 May');
     expect(formatExpectedDate('2027-05-02', '2026-04-18')).toBe('2 May 2027');
+    expect(formatExpectedDate('2027-01-31', '2026-12-01')).toBe('31 Jan 2027');
   });
 });
 

@@ -166,7 +166,7 @@ describe('dueOf', () => {
   });
   it('gives each limit when no riding rate is known', () => {
     const due = dueOf(engineOil, [doneAt('2026-04-01', '14000')], history([mi('2026-04-11', '14360')], '2026-04-12'));
-    expect(due.sentence).toBe('in 4,640 mi or by 1 April 2027');
+    expect(due.sentence).toBe('in 4,640 mi or by 1 Apr 2027');
     expect(due.first).toBeUndefined();
   });
   it('goes on over a replaced odometer and says what the new one will show', () => {

@@ -24,12 +24,12 @@ describe('warrantyState', () => {
   it('says which limit comes first, with the day each is expected', () => {
     const state = warrantyState(term, readings, at('2026-02-10'));
     expect(state).toMatchObject({ endsOn: '2026-06-14', first: 'time', hasEnded: false, expectedOn: '2029-01-05' });
-    expect(state.sentence).toBe('Ends by time on 14 Jun 2026; by distance at 24,000 mi, about 5 January 2029.');
+    expect(state.sentence).toBe('Ends by time on 14 Jun 2026; by distance at 24,000 mi, about 5 Jan 2029.');
     const near = { ...term, distances: [{ amount: '13500', unit: '[mi_i]' as const }] };
     expect(warrantyState(near, readings, at('2026-02-10'))).toMatchObject({
       first: 'distance',
       expectedOn: '2026-02-20',
-      sentence: 'Ends by distance at 13,500 mi, about 20 February; by time on 14 Jun 2026.',
+      sentence: 'Ends by distance at 13,500 mi, about 20 Feb; by time on 14 Jun 2026.',
     });
   });
   it.each([
