@@ -3,7 +3,7 @@ import { Sheet } from '@/components/ui/box';
 import { UserText } from '@/components/ui/user-text';
 
 export interface RecordGapsProps {
-  gaps: { seq: number | null; sentence: string }[];
+  gaps: { seq: number | null; isWhole?: true; sentence: string }[];
   hrefOf: (seq: number) => string;
 }
 
@@ -21,13 +21,13 @@ export function RecordGaps({ gaps, hrefOf }: RecordGapsProps) {
       ) : (
         <Sheet>
           <ol role="list" className="divide-y divide-hair">
-            {gaps.map(({ seq, sentence }, index) => (
+            {gaps.map(({ seq, isWhole, sentence }, index) => (
               <li
                 key={index}
                 className="relative grid grid-cols-[4.5rem_minmax(0,1fr)] hover:bg-paper sm:grid-cols-[6rem_minmax(0,1fr)]"
               >
                 <span className="label border-r border-margin px-3 py-2.5 text-right">
-                  {seq === null ? 'Now' : `Entry ${seq}`}
+                  {seq === null ? (isWhole === true ? 'Record' : 'Now') : `Entry ${seq}`}
                 </span>
                 <span className="min-w-0 px-3 py-2.5">
                   {seq === null ? (

@@ -47,7 +47,7 @@ export async function drawPacket(content: PacketContent, file: FileHandle, progr
   }
   const purchases = purchasesOf(record);
   purchases.forEach((purchase, i) => {
-    if (i === 0) beginPart(sheet, 'Receipts', 'receipts');
+    if (i === 0) beginPart(sheet, 'Receipts', 'receipts', receiptsNote(record));
     drawReceipt(sheet, purchase, content);
   });
   drawVerification(sheet, content);
@@ -67,12 +67,24 @@ export async function drawPacket(content: PacketContent, file: FileHandle, progr
   return { pages: layer.pageCount, ...written, missing: [...layer.missing] };
 }
 
-function beginPart(sheet: Sheet, title: string, anchor: string): void {
+function beginPart(sheet: Sheet, title: string, anchor: string, note?: string): void {
   sheet.newPage();
   sheet.anchor(anchor);
   sheet.layer.bookmark(title, 0, edges.top);
   sheet.paragraph(title, types.h1, { tag: 'H1' });
+  if (note !== undefined) sheet.paragraph(note, types.small);
   sheet.gap(-10);
+}
+
+/** Numbers are missing from the row on purpose, and a reader is told why before asking. */
+function receiptsNote({ shelves }: PacketContent['record']): string {
+  const printed = shelves.reduce((sum, { purchases }) => sum + purchases.length, 0);
+  const lines = shelves.reduce((sum, { log }) => sum + log.size, 0);
+  return (
+    `R and a number is the receipt’s line in the shelf’s log. Printed here: the ${printed} purchases this record draws ` +
+    `from, of ${lines} lines of the shelf; the others are withheld, named and counted in record.json. ` +
+    'A receipt shows that something was bought; that it went into this machine is the owner’s word.'
+  );
 }
 
 function attachmentsOf({ files, recordJson, madeAt, number }: PacketContent): AttachedFile[] {

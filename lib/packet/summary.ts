@@ -5,8 +5,8 @@ import { latestReading, type OdometerReading } from '@/lib/domain/odometer';
 import type { DoneService, MachineHistory } from '@/lib/domain/schedule-limits';
 import { balanceAfter, lotAmount } from '@/lib/domain/shelf';
 import { convert, formatAmount, isUnitCode, sumAmounts, units } from '@/lib/domain/units';
-import type { Amount, Draw, Odometer, ScheduleItem } from '@/lib/evidence/format';
-import type { RecordView } from '@/lib/services/record-view';
+import type { Amount, Draw, Odometer, ScheduleItem, Source } from '@/lib/evidence/format';
+import type { EntryView, RecordView } from '@/lib/services/record-view';
 import { isService, purchasesOf, type PacketContent, type ServiceEntry } from './content';
 import { counted, lowered, productWords } from './words';
 
@@ -25,8 +25,10 @@ export interface UseSummary {
   uncovered: string;
 }
 export interface Gap {
-  /** Null: it stands open now, and no entry ended it. */
+  /** Null: it stands open now, or is about the record as a whole. */
   seq: number | null;
+  /** Not one entry's, and no work mends it. */
+  isWhole?: true;
   sentence: string;
 }
 export interface PacketSummary {
@@ -39,6 +41,7 @@ export interface PacketSummary {
   counts: { entries: string; prompt: string; proven: string; countersigned: string };
 }
 
+const isStampedByOthers = ({ tokens }: EntryView) => tokens.some(({ isOwnAuthority }) => !isOwnAuthority);
 const isOpen = (entry: ServiceEntry) => entry.body !== null && entry.struckBy === null;
 
 /** What the record amounts to, from its opened entries. Struck services count for nothing. */
@@ -56,7 +59,7 @@ export function summarise({ record, madeAt, zone }: Pick<PacketContent, 'record'
     history,
     now: latestReading(history.readings, history.today),
     uses: usesOf(record, services),
-    gaps: gapsOf(items, services),
+    gaps: [...wholeGaps(record), ...gapsOf(items, services)],
     counts: countsOf(record, services),
   };
 }
@@ -131,8 +134,8 @@ function listed(titles: string[], others: string): string {
 function headlineOf(items: ItemSummary[], services: number): string {
   const late = items.filter(({ summary }) => summary.late > 0);
   const kept = items.filter(({ summary, intervals }) => {
-    const isJudged = intervals.some(({ result }) => result === 'in-time' || result === 'within-grace');
-    return summary.late === 0 && summary.notKnown === 0 && isJudged;
+    const isJudged = intervals.some(({ result }) => result === 'in-time');
+    return summary.late === 0 && summary.withinGrace === 0 && summary.notKnown === 0 && isJudged;
   });
   const keptWords =
     kept.length === 0
@@ -190,21 +193,22 @@ function usesOf(record: RecordView, services: ServiceEntry[]): UseSummary[] {
       return { what, receipt: `${log} ${seq}`, bought: boughtIn(line), drawn };
     }),
   );
-  const drawnLots = lots.filter(({ drawn, bought }) => drawn.length > 0 && bought !== null);
-  const covered = [...new Set(drawnLots.map(({ what }) => what))].map((what) => {
-    const same = drawnLots.filter((lot) => lot.what === what);
+  const used = new Set(lots.filter(({ drawn }) => drawn.length > 0).map(({ what }) => what));
+  // Every line of the receipts printed here counts as bought, so that adding them up gives the same figure.
+  const covered = [...used].map((what) => {
+    const same = lots.filter((lot) => lot.what === what && lot.bought !== null);
     const drawn = same.flatMap((lot) => lot.drawn);
     const bought = sumSafely(same.flatMap((lot) => lot.bought ?? []));
-    const used = sumSafely(drawn, bought?.unit);
+    const drawnSum = sumSafely(drawn, bought?.unit);
     const receipts = new Set(same.map(({ receipt }) => receipt)).size;
     const times = new Set(drawn.map(({ seq }) => seq)).size;
     const isComparable =
-      bought !== null && used !== null && units[bought.unit].dimension === units[used.unit].dimension;
+      bought !== null && drawnSum !== null && units[bought.unit].dimension === units[drawnSum.unit].dimension;
     return {
       what,
       bought: `${amountWords(bought)}, ${counted(receipts, 'receipt', 'receipts')}`,
-      used: `${amountWords(used)}, ${counted(times, 'service', 'services')}`,
-      left: isComparable ? amountWords(balanceAfter(bought, [used])) : '',
+      used: `${amountWords(drawnSum)}, ${counted(times, 'service', 'services')}`,
+      left: isComparable ? amountWords(balanceAfter(bought, [drawnSum])) : '',
       uncovered: '',
     };
   });
@@ -239,6 +243,41 @@ function sumSafely(amounts: Amount[], unit?: Amount['unit']): Amount | null {
 }
 const amountWords = (amount: Amount | null) => (amount === null ? 'several kinds' : formatAmount(amount));
 
+/** What a sceptical reader asks before looking at any entry: whose limits, whose clock, and what was withdrawn. */
+function wholeGaps({ entries, terms }: RecordView): Gap[] {
+  const whole = (sentence: string): Gap => ({ seq: null, isWhole: true, sentence });
+  const stamped = entries.filter(isStampedByOthers).length;
+  const struck = entries.filter(({ struckBy }) => struckBy !== null).map(({ seq }) => seq);
+  const named = struck.length === 1 ? `Entry ${struck[0]} is` : `Entries ${listed(struck.map(String), 'others')} are`;
+  return [
+    ...(stamped === 0
+      ? [whole('No time is proven independently: every time here is this installation’s own word.')]
+      : []),
+    ...sourceGaps(terms).map(whole),
+    ...(struck.length === 0
+      ? []
+      : [whole(`${named} struck: withdrawn with a reason, still readable, not counted here.`)]),
+  ];
+}
+
+function sourceGaps(terms: RecordView['terms']): string[] {
+  if (terms === null) return ['No terms are opened, so nothing is said of what was due.'];
+  const { schedule, fluidPoints, fasteners, parts, warranty } = terms;
+  const isUnnamed = ({ source: { kind, title } }: { source: Source }) =>
+    kind === 'common-practice' || title === undefined;
+  const limits = schedule.filter(isUnnamed).length;
+  const lines = [...fluidPoints, ...fasteners, ...parts];
+  const figures = lines.filter(isUnnamed).length;
+  const own = warranty.filter(isUnnamed).map(({ title }) => title);
+  return [
+    ...(limits === 0
+      ? []
+      : [`${limits} of ${schedule.length} limits of the schedule name no source: “in time” is by the owner’s terms.`]),
+    ...(figures === 0 ? [] : [`${figures} of ${lines.length} lines of the spec sheet name no source.`]),
+    ...own.map((title) => `The limits of the ${title} name no source.`),
+  ];
+}
+
 /** Checks that say the same as an interval of the schedule, which is judged here by the newest terms. */
 const intervalCheck = 'within-interval';
 
@@ -265,7 +304,7 @@ function countsOf(record: RecordView, services: ServiceEntry[]): PacketSummary['
   const prompt = services.filter(
     ({ body, sealedAt }) => body !== null && delayInDays(body.finishedAt, sealedAt) <= promptDays,
   );
-  const stamped = record.entries.filter(({ tokens }) => tokens.some(({ isOwnAuthority }) => !isOwnAuthority)).length;
+  const stamped = record.entries.filter(isStampedByOthers).length;
   const countersigned = services.filter(({ countersignatures }) => countersignatures.length > 0).length;
   return {
     entries: `${opened} of ${record.log.size}`,

@@ -8,6 +8,7 @@ import type {
   EntryKind,
   Interval,
   Odometer,
+  ScheduleItem,
   ServiceBody,
   Source,
 } from '@/lib/evidence/format';
@@ -50,6 +51,12 @@ export const capacityWords: Record<CountersignCapacity, string> = {
   'checked-papers': 'checked the papers only',
 };
 
+/** How far a shop is known to anybody but the owner who invited it. */
+export function confirmedWords(confirmedBy: string | null): string {
+  if (confirmedBy === null) return 'not confirmed; this could be the owner';
+  return `confirmed by ${confirmedBy === 'steward' ? 'the steward, who runs this installation' : confirmedBy}`;
+}
+
 export const performerWords: Record<ServiceBody['performedBy'][number]['capacity'], string> = {
   owner: 'the owner',
   helper: 'a helper',
@@ -83,6 +90,14 @@ export function intervalWords(interval: Interval | undefined): string {
   const months = interval.months === undefined ? undefined : `${interval.months} mo`;
   const hours = interval.hours === undefined ? undefined : `${interval.hours} h`;
   return [distance, months, hours].filter(Boolean).join(' or ') || 'no limit';
+}
+
+/** The limits of an item; of one with a first service alone, that one. */
+export function limitWords({ interval, firstService }: Pick<ScheduleItem, 'interval' | 'firstService'>): string {
+  const words = intervalWords(interval);
+  return words === 'no limit' && firstService !== undefined
+    ? `first service ${intervalWords(firstService)}, then no limit`
+    : words;
 }
 
 export const amountsWords = (amounts: Amount[] | undefined): string => (amounts ?? []).map(formatAmount).join(', ');

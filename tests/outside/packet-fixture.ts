@@ -105,7 +105,7 @@ const log = (id: string, size: number): LogView => ({
   root: createHash('sha256').update(id).digest('base64'),
   checkpoint: '',
   verifierKey: 'demo.example+1a2b3c4d+AQ9t5h0c6Q1k0mI2n1b7Jm2m6c5v3n8x0w4r7y9u1i2o',
-  fingerprint: sha256('key'),
+  fingerprint: sha256('key').match(/.{4}/g)?.join(' ') ?? '',
 });
 
 const checks: Check[] = [

@@ -86,6 +86,19 @@ describe('a packet', () => {
     expect(plain(text)).toContain('printed as crossed boxes: U+0E44, U+0E17, U+0E22');
   });
 
+  it('prints the fingerprint and the link so that they can be compared and copied', () => {
+    expect(plain(text)).toContain(content.record.log.fingerprint);
+    expect(text).toContain(content.link ?? 'no link');
+  });
+
+  it('names the gaps of the record as a whole first, on the first page', async () => {
+    const { stdout } = await tool('pdftotext', '-layout', '-f', '1', '-l', '1', file, '-');
+    const first = plain(stdout);
+    expect(first).toContain('Record No time is proven independently');
+    expect(first).toMatch(/Entry 4 is struck/);
+    expect(first.indexOf('Gaps')).toBeLessThan(first.indexOf('Done in time'));
+  });
+
   it('keeps every word of a long title', () => {
     const title = content.record.entries[4]?.title ?? '';
     expect(title.length).toBeGreaterThan(200);
@@ -139,19 +152,9 @@ describe('a packet', () => {
   });
 
   it('has a QR code of its viewing link that reads from a rendering of 100 dots an inch', async () => {
-    const { pages } = drawn;
-    await tool(
-      'pdftoppm',
-      '-r',
-      '100',
-      '-png',
-      '-f',
-      String(pages),
-      '-l',
-      String(pages),
-      file,
-      path.join(folder, 'qr'),
-    );
+    // A form feed ends each page.
+    const page = String(text.split('\f').findIndex((words) => words.includes('Check it yourself')) + 1);
+    await tool('pdftoppm', '-r', '100', '-png', '-f', page, '-l', page, file, path.join(folder, 'qr'));
     const picture = (await readdir(folder)).find((name) => name.startsWith('qr-')) ?? '';
     const { stdout } = await tool('zbarimg', '--quiet', '--raw', path.join(folder, picture));
     expect(stdout.trim()).toBe(content.link);

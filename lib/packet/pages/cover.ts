@@ -2,6 +2,7 @@ import 'server-only';
 import type { AdherenceSummary } from '@/lib/domain/adherence';
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { formatDistance } from '@/lib/domain/units';
+import { warrantyState } from '@/lib/domain/warranty';
 import { whatIsShown } from '@/lib/evidence/format';
 import { entryAnchor, type PacketContent } from '../content';
 import { breakLines } from '../layer/shaping';
@@ -10,12 +11,12 @@ import { drawMark } from '../sheet/mark';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
 import type { PacketSummary } from '../summary';
-import { intervalWords, roundedOf } from '../words';
+import { limitWords, lowered, roundedOf } from '../words';
 import { drawDoneInTime } from './done-in-time';
 
 const markSize = 66;
 
-/** The first page: the news, the counts, the schedule kept or not, what was bought and used, and the gaps. */
+/** The first page: the news, the counts, the gaps, the schedule kept or not, and what was bought and used. */
 export function drawCover(sheet: Sheet, content: PacketContent, summary: PacketSummary): void {
   sheet.during('Cover, continued', () => {
     sheet.newPage();
@@ -25,7 +26,7 @@ export function drawCover(sheet: Sheet, content: PacketContent, summary: PacketS
     drawBoxes(sheet, 5, [
       { label: 'Entries opened', value: counts.entries, kind: 'number' },
       { label: 'Sealed within 7 days', value: counts.prompt, kind: 'number' },
-      { label: 'Time proven independently', value: counts.proven, kind: 'number' },
+      { label: 'Time proven independently', value: counts.proven, kind: 'number', isGap: counts.proven === 'none' },
       { label: 'Countersigned', value: counts.countersigned, kind: 'number' },
       {
         label: 'Gaps',
@@ -34,9 +35,10 @@ export function drawCover(sheet: Sheet, content: PacketContent, summary: PacketS
         isGap: gaps.length > 0,
       },
     ]);
-    drawSchedule(sheet, summary);
-    drawUses(sheet, summary);
+    drawWarranty(sheet, content, summary);
     drawGaps(sheet, summary);
+    drawSchedule(sheet, content, summary);
+    drawUses(sheet, summary);
     drawWhatIsShown(sheet);
   });
 }
@@ -48,12 +50,12 @@ function drawHead(sheet: Sheet, content: PacketContent, { headline, now }: Packe
   const type = full.length > 4 ? { ...types.h1, size: 16, leading: 18 } : types.h1;
   const lines = full.length > 4 ? breakLines(headline, type.face, type.size, width) : full;
   const newest = record.entries.at(-1);
-  const state = record.entries.some((entry) => entry.countersignatures.length > 0) ? 'countersigned' : 'sealed';
   const { layer } = sheet;
   const label = `Service record packet, made ${formatInstant(madeAt, zone)} (${zone}), number ${number}`;
   layer.tag('P', () => sheet.lineAt(label, edges.left, sheet.y, types.label));
   sheet.gap(types.label.leading + 2);
-  if (newest !== undefined) drawMark(sheet, state, newest.leafHash, edges.right - markSize, sheet.y - 4, markSize);
+  if (newest !== undefined)
+    drawMark(sheet, newest.state, newest.leafHash, edges.right - markSize, sheet.y - 4, markSize);
   const top = sheet.y;
   layer.tag('H1', () => sheet.block(lines, edges.left, top, type));
   sheet.y = Math.max(top + lines.length * type.leading + 6, top);
@@ -75,9 +77,19 @@ function machineWords({ record }: PacketContent, owner: string, purpose: string,
   return `${[name, vin ?? frame ?? 'VIN withheld'].join(', ')}. ${used}${at}${today}. Owner ${owner}.${made}`;
 }
 
-function drawSchedule(sheet: Sheet, summary: PacketSummary): void {
+function drawWarranty(sheet: Sheet, { record, madeAt, zone }: PacketContent, { history }: PacketSummary): void {
+  const states = (record.terms?.warranty ?? []).map((term) =>
+    warrantyState(term, history.readings, { now: madeAt, zone }),
+  );
+  if (states.length === 0) return;
+  sheet.gap(6);
+  for (const { title, sentence } of states) sheet.paragraph(`${title}: ${lowered(sentence)}`);
+  sheet.paragraph('The warranty’s own text decides; this only counts.', types.small);
+}
+
+function drawSchedule(sheet: Sheet, { record }: PacketContent, summary: PacketSummary): void {
   const shown = summary.items.filter(({ summary: { done, late } }) => done > 0 || late > 0);
-  const others = summary.items.length - shown.length;
+  const others = summary.items.filter((item) => !shown.includes(item));
   sheet.heading('Done in time', { below: 120 });
   if (shown.length === 0) {
     sheet.paragraph('No item of the schedule has been done in this record yet.');
@@ -90,24 +102,26 @@ function drawSchedule(sheet: Sheet, summary: PacketSummary): void {
       { title: 'Item', share: 3.2 },
       { title: 'Limit', share: 2.7 },
       { title: 'Done', share: 0.8, type: types.strong },
-      { title: 'Longest interval', share: 2.2, type: types.strong },
+      { title: 'Longest distance, longest time', share: 2.2, type: types.strong },
       { title: 'Result', share: 2.2 },
     ],
     shown.map(({ item, summary: one }) => [
       item.title,
-      intervalWords(item.interval),
+      limitWords(item),
       String(one.done),
       longestWords(one),
       { text: one.sentence, isGap: one.late > 0 },
     ]),
   );
-  if (others > 0) {
-    sheet.gap(3);
-    sheet.paragraph(
-      `${others} further items of the schedule were not done in this record yet; see the terms.`,
-      types.small,
-    );
+  sheet.gap(3);
+  if (others.length > 0) {
+    const words = others.map(({ item, summary: one }) => `${lowered(item.title)} (${one.sentence})`);
+    sheet.paragraph(`Not done in this record yet: ${words.join(', ')}.`, types.small);
   }
+  const terms = [...record.termsBySeq.keys()].sort((a, b) => a - b);
+  const newest = `Judged by the newest terms, entry ${terms.at(-1)}.`;
+  const earlier = terms.length < 2 ? '' : ` Terms were sealed ${terms.length} times, in entries ${terms.join(', ')}.`;
+  sheet.paragraph(newest + earlier, types.small);
 }
 
 function longestWords({ longestDistance, longestMonths, longestDays }: AdherenceSummary): string {
@@ -150,8 +164,8 @@ function drawGaps(sheet: Sheet, { gaps }: PacketSummary): void {
   drawTable(
     sheet,
     [{ title: 'Entry', share: 1 }, { title: 'What is missing or late', share: 8 }, { title: '', share: 1 }],
-    gaps.map(({ seq, sentence }) => [
-      seq === null ? 'Now' : `Entry ${seq}`,
+    gaps.map(({ seq, isWhole, sentence }) => [
+      seq === null ? (isWhole === true ? 'Record' : 'Now') : `Entry ${seq}`,
       sentence,
       seq === null ? '' : { late: () => `page ${sheet.pageOf(entryAnchor(seq))}` },
     ]),

@@ -1,12 +1,12 @@
 import 'server-only';
-import { formatLocalDate, isLocalDate } from '@/lib/domain/instants';
+import { formatLocalDate, isLocalDate, localDateOf } from '@/lib/domain/instants';
 import { isUnitCode } from '@/lib/domain/units';
 import type { Odometer, OpeningBody, Task, TermsBody } from '@/lib/evidence/format';
 import type { EntryView } from '@/lib/services/record-view';
 import type { PacketContent } from '../content';
 import { drawBoxes, type Cell } from '../sheet/boxes';
 import type { Sheet } from '../sheet/sheet';
-import { capacityWords, counted, odometerWords, sentence } from '../words';
+import { capacityWords, confirmedWords, counted, odometerWords, sentence } from '../words';
 import { drawTask } from './task';
 
 const startWords: Record<OpeningBody['recordStarts']['why'], string> = {
@@ -31,13 +31,13 @@ export function drawBody(sheet: Sheet, entry: EntryView, content: PacketContent)
   else if (entry.kind === 'countersignature') {
     const { capacity, statement, shop, invitedBy } = entry.body;
     const value = [shop.name, shop.address, shop.registration].filter(Boolean).join(', ');
-    const confirmed =
-      shop.confirmedBy === null ? 'not confirmed; this could be the owner' : `confirmed by ${shop.confirmedBy}`;
+    const since = formatLocalDate(localDateOf(shop.accountSince, content.zone));
+    const known = `The shop’s account exists since ${since}; ${confirmedWords(shop.confirmedBy)}.`;
     drawBoxes(sheet, 4, [
       ...about,
       { label: 'In which capacity', value: sentence(capacityWords[capacity]), span: 2 },
       { label: 'Invited by', value: invitedBy, span: 2 },
-      { label: 'Shop', value, note: confirmed, span: 4, isGap: shop.confirmedBy === null },
+      { label: 'Shop', value, note: known, span: 4, isGap: shop.confirmedBy === null },
       { label: 'Statement', value: statement, span: 4 },
     ]);
   } else {

@@ -1,6 +1,6 @@
 import 'server-only';
 import { checkTitle } from '@/lib/domain/checks';
-import { describeDelay, formatInstant, formatLocalDate, formatLocalMoment } from '@/lib/domain/instants';
+import { describeDelay, formatInstant, formatLocalDate, formatLocalMoment, localDateOf } from '@/lib/domain/instants';
 import type { ServiceBody } from '@/lib/evidence/format';
 import type { EntryView, RecordView } from '@/lib/services/record-view';
 import { entryAnchor, isService, type PacketContent } from '../content';
@@ -11,7 +11,7 @@ import { drawMark, markWords } from '../sheet/mark';
 import { drawPlates } from '../sheet/plates';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
-import { capacityWords, kindWords, lowered, odometerWords, performerWords, sentence } from '../words';
+import { capacityWords, confirmedWords, kindWords, lowered, odometerWords, performerWords, sentence } from '../words';
 import { drawBody } from './entry-body';
 import { drawLeaf, provenCell } from './leaf';
 import { platesOf } from './plates-of';
@@ -180,14 +180,11 @@ function drawCountersignatures(sheet: Sheet, entry: EntryView, { zone }: PacketC
   sheet.heading('Countersigned', { tag: 'H3', below: 60 });
   for (const { seq, sealedAt, author, body } of entry.countersignatures) {
     const { shop } = body;
-    const confirmed =
-      shop.confirmedBy === null
-        ? 'The shop is not confirmed; this could be the owner.'
-        : `The shop was confirmed by ${shop.confirmedBy}.`;
+    const since = formatLocalDate(localDateOf(shop.accountSince, zone));
     sheet.paragraph(
       `“${body.statement}” ${author?.name ?? 'Name withheld'}, ${shop.name}, who ${capacityWords[body.capacity]}. ` +
         `Entry ${seq} of this record, sealed ${formatInstant(sealedAt, zone)}. Invited by ${body.invitedBy}. ` +
-        `The shop’s account exists since ${formatLocalDate(shop.accountSince.slice(0, 10))}. ${confirmed}`,
+        `The shop’s account exists since ${since}; the shop is ${confirmedWords(shop.confirmedBy)}.`,
     );
     sheet.gap(3);
   }

@@ -25,5 +25,9 @@ export function platesOf(prefix: string, attachments: Attachment[], { files, zon
 }
 
 function removedWords(removed: string[] | undefined): string[] {
-  return removed === undefined || removed.length === 0 ? [] : [`Taken out of the shared copy: ${removed.join(', ')}.`];
+  return removed === undefined || removed.length === 0
+    ? []
+    : [
+        `Taken out of the shared copy: ${removed.map((one) => one.replace('other EXIF', 'other camera data (EXIF)')).join(', ')}.`,
+      ];
 }

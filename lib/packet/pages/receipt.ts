@@ -39,7 +39,11 @@ export function drawReceipt(sheet: Sheet, purchase: PurchaseView, content: Packe
         value: [supplier?.name, supplier?.address].filter(Boolean).join(', ') || 'withheld',
         span: 2,
       },
-      { label: 'Prices', value: purchase.prices === null ? 'withheld' : 'in the attached record.json' },
+      {
+        label: 'Prices',
+        value: purchase.prices === null ? 'withheld' : 'in the attached record.json',
+        note: purchase.attachments.length > 0 ? 'A picture of the receipt may show them.' : undefined,
+      },
       { label: 'Sealed by', value: purchase.author?.name ?? 'withheld' },
     ]);
     sheet.gap(4);

@@ -1,5 +1,4 @@
 import 'server-only';
-import { groupFingerprint } from '@/lib/domain/hash-words';
 import { whatIsShown } from '@/lib/evidence/format';
 import type { LogView } from '@/lib/services/record-view';
 import type { PacketContent } from '../content';
@@ -36,10 +35,14 @@ function drawLink(sheet: Sheet, { link, number }: PacketContent): void {
   drawQr(sheet, link, `QR code of this packet’s viewing link, ${link}`, x, y, qrSize);
   const width = contentWidth - qrSize - 20;
   const words =
-    `The same record in a browser, as it stands when you open it: ${link}. ` +
-    `The link is this packet’s own (${number}); the owner can revoke it. It is read-only and asks for no account.`;
+    `The same record in a browser, as it stands when you open it. The link is this packet’s own (${number}); ` +
+    'the owner can revoke it. It is read-only and asks for no account.';
+  const lines = [
+    ...breakLines(words, types.body.face, types.body.size, width),
+    ...breakLines(link, types.body.face, types.body.size, width),
+  ];
   layer.tag('P', () => {
-    sheet.block(breakLines(words, types.body.face, types.body.size, width), edges.left, y + 6, types.body);
+    sheet.block(lines, edges.left, y + 6, types.body);
   });
   sheet.y = y + qrSize + 2;
 }
@@ -47,9 +50,10 @@ function drawLink(sheet: Sheet, { link, number }: PacketContent): void {
 function drawSteps(sheet: Sheet, { site, record }: PacketContent): void {
   sheet.heading('Check it yourself', { above: 8 });
   const steps = [
-    'This file holds the whole record as the attached file record.json, once, and each picture drawn here as an attached file with the same bytes. Open the list of attachments in your reader, or take them out with any PDF tool.',
-    `With the checking program, which needs nothing from this installation: node verify.mjs THIS-FILE.pdf. In a browser: ${site}/verify. That page comes from the installation being checked; the program can come from elsewhere.`,
-    `Compare the key below with one you have from another place: the method page (${site}/method), a mail about this record, an older packet. Anybody could make a file with a key of their own.`,
+    'This file holds every line of the record in the attached file record.json, and each picture drawn here as an attached file with the same bytes. Open the list of attachments in your PDF reader, or take them out with any PDF tool.',
+    `Find the key below in another place: a mail about this record, an older packet, the method page (${site}/method). Anybody could make a file with a key of their own; without this step a check shows only that the file fits itself.`,
+    `Check with the program verify.mjs, one file that runs on your own computer with Node and asks nobody: node verify.mjs THIS-FILE.pdf --key KEY. Take it from ${site}/verify.mjs or, better, from somebody else who runs Witnessmark, and compare its SHA-256 with the method page. In a browser: ${site}/verify; that page comes from the installation being checked.`,
+    'Unchanged: every opened word and picture is what was sealed. Altered: what differs is named. With an older packet of this record, add --against OLDER.pdf: it shows whether anything was rewritten since.',
     'The format is open: canonical JSON (RFC 8785), SHA-256, a Merkle tree (RFC 6962), signed checkpoints with Ed25519, time stamps (RFC 3161). Another program can be written from it.',
   ];
   sheet.layer.tag('L', () => {
@@ -73,7 +77,7 @@ function drawSteps(sheet: Sheet, { site, record }: PacketContent): void {
   drawBoxes(sheet, 1, [
     {
       label: 'Fingerprint of the signing key (SHA-256)',
-      value: groupFingerprint(record.log.fingerprint),
+      value: record.log.fingerprint,
       kind: 'hash',
     },
     { label: 'Verifier key', value: record.log.verifierKey, kind: 'hash' },
@@ -107,7 +111,7 @@ function drawLogs(sheet: Sheet, { record }: PacketContent): void {
         row(
           log,
           'shelf',
-          `${counted(purchases.length, 'purchase', 'purchases')} of ${log.size} entries, without prices`,
+          `${counted(purchases.length, 'purchase', 'purchases')} of ${counted(log.size, 'entry', 'entries')}, without prices`,
         ),
       ),
     ],
@@ -144,6 +148,6 @@ function drawNotChecked(sheet: Sheet): void {
   sheet.paragraph(whatIsShown);
   sheet.gap(4);
   sheet.paragraph(
-    'Not checked by any of this: whether the work was done as written; whether the papers are genuine; whether a person is who they say; whether a time stamp’s authority is independent, until you supply its root. The pages themselves carry no signature: what counts is record.json, and a checker shows the entries from there. Nothing here is legal advice; the warranty’s text and the law where you live decide.',
+    'Not checked by any of this: whether the work was done as written; whether the papers are genuine; whether what was bought went into this machine; whether a person is who they say; whether a time stamp’s authority is independent, until you supply its root. The pages themselves carry no signature: what counts is record.json, and a checker shows the entries from there. Nothing here is legal advice; the warranty’s text and the law where you live decide.',
   );
 }
