@@ -4,7 +4,7 @@ import { UserText } from '@/components/ui/user-text';
 import { formatInstant, formatLocalDate, localDateOf } from '@/lib/domain/instants';
 import type { AuthorPart, CountersignatureBody } from '@/lib/evidence/format';
 import type { EntryLinks } from './entry-facts';
-import { capacityWords } from './words';
+import { capacityWords, confirmedWords } from './words';
 
 export interface CountersignatureProps {
   seq: number;
@@ -52,18 +52,16 @@ export function Countersignature({ seq, sealedAt, author, body, zone, entry }: C
       </Box>
       <Box
         label="Account of the shop"
-        note={`Invited by ${invitedBy}`}
+        note={
+          <>
+            Invited by <UserText>{invitedBy}</UserText>
+          </>
+        }
         tone={shop.confirmedBy === null ? 'warn' : 'plain'}
         span="all"
       >
         Since {formatLocalDate(localDateOf(shop.accountSince, zone))};{' '}
-        {shop.confirmedBy === null ? (
-          'not confirmed: this could be the owner'
-        ) : (
-          <>
-            confirmed by <UserText>{shop.confirmedBy}</UserText>
-          </>
-        )}
+        <UserText>{confirmedWords(shop.confirmedBy)}</UserText>
       </Box>
     </Boxes>
   );

@@ -2,7 +2,7 @@ import { Hash } from '@/components/ui/hash';
 import { UserText } from '@/components/ui/user-text';
 import type { Attachment } from '@/lib/evidence/format';
 import { plateOrder, type EntryLinks } from './entry-facts';
-import { bytesWords, plateKind, roleWords, takenWords } from './words';
+import { bytesWords, plateKind, removedWords, roleWords, takenWords } from './words';
 
 export interface PlatesProps {
   attachments: Attachment[];
@@ -65,7 +65,7 @@ function Plate({ attachment, zone, file }: Omit<PlatesProps, 'attachments' | 'la
               <p className="label mt-2">Shared copy, {bytesWords(copy.bytes)}</p>
               <Hash value={copy.sha256} what="SHA-256 of the shared copy" />
               <p className="tag">
-                {copy.removed.length === 0 ? 'Nothing was taken out.' : `Taken out: ${copy.removed.join(', ')}.`}
+                {copy.removed.length === 0 ? 'Nothing was taken out.' : `Taken out: ${removedWords(copy.removed)}.`}
               </p>
             </>
           )}

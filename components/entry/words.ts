@@ -43,6 +43,16 @@ export function plateKind({ role, mediaType }: Attachment): 'pdf' | 'receipt' | 
   return role.startsWith('receipt') ? 'receipt' : 'photo';
 }
 
+/** What was taken out of a shared copy, the one trade word explained. */
+export const removedWords = (removed: string[]): string =>
+  removed.map((one) => one.replace('other EXIF', 'other camera data (EXIF)')).join(', ');
+
+/** How far a shop is known to anybody but the owner who invited it. */
+export function confirmedWords(confirmedBy: string | null): string {
+  if (confirmedBy === null) return 'not confirmed: this could be the owner';
+  return `confirmed by ${confirmedBy === 'steward' ? 'the steward, who runs this installation' : confirmedBy}`;
+}
+
 /** The camera's word and the server's clock, kept apart. */
 export function takenWords({ takenAt, receivedAt }: Attachment, zone: string): string {
   const received = `received ${formatInstant(receivedAt, zone)}`;
@@ -53,14 +63,14 @@ export function takenWords({ takenAt, receivedAt }: Attachment, zone: string): s
   return `Camera’s word: ${day} ${time.slice(0, 5)}, ${offset}; ${received}`;
 }
 
-/** The time an entry is proven to have existed by, as far as it is proven to anybody but this installation. */
+/** Whose stamp an entry carries. Whether an authority is independent is for the reader to say, with a root of their own. */
 export function provenWords(tokens: readonly TokenView[], zone: string): { words: string; note: string } {
   const earliest = [...tokens].sort((a, b) => a.genTime.localeCompare(b.genTime));
-  const independent = earliest.find(({ isOwnAuthority }) => !isOwnAuthority);
-  if (independent !== undefined) {
+  const other = earliest.find(({ isOwnAuthority }) => !isOwnAuthority);
+  if (other !== undefined) {
     return {
-      words: `No later than ${formatInstant(independent.genTime, zone)}`,
-      note: `Time stamp of ${independent.authority}`,
+      words: 'To be checked',
+      note: `Stamped ${formatInstant(other.genTime, zone)} by ${other.authority}: check it against a root you trust`,
     };
   }
   const [own] = earliest;

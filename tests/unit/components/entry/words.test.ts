@@ -11,21 +11,21 @@ const stamp = (authority: string, genTime: string, isOwnAuthority: boolean): Tok
 });
 
 describe('provenWords', () => {
-  it('calls a time proven by an independent stamp alone', () => {
+  it('never calls a time proven: another authority’s stamp is the reader’s to check', () => {
     const own = stamp('demo.example', '2025-10-20T00:04:11.000Z', true);
     const other = stamp('stamps.example', '2025-10-20T00:05:00.000Z', false);
     expect(provenWords([own, other], zone)).toEqual({
-      words: 'No later than 19 Oct 2025 18:05',
-      note: 'Time stamp of stamps.example',
+      words: 'To be checked',
+      note: 'Stamped 19 Oct 2025 18:05 by stamps.example: check it against a root you trust',
     });
     expect(provenWords([own], zone).words).toBe('Not proven');
     expect(provenWords([own], zone).note).toContain('not independent');
     expect(provenWords([], zone)).toEqual({ words: 'Not proven', note: 'The time stamp is still to come' });
   });
-  it('takes the earliest of several independent stamps', () => {
+  it('names the earliest of several stamps by others', () => {
     const late = stamp('a.example', '2025-10-21T00:00:00.000Z', false);
     const early = stamp('b.example', '2025-10-20T00:00:00.000Z', false);
-    expect(provenWords([late, early], zone).note).toBe('Time stamp of b.example');
+    expect(provenWords([late, early], zone).note).toContain('by b.example');
   });
 });
 
