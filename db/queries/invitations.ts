@@ -1,4 +1,5 @@
 import 'server-only';
+import { Op } from 'sequelize';
 import type { Transaction } from '../index';
 import { invitations, type InvitationRow } from '../models/proof';
 
@@ -16,6 +17,10 @@ export const invitationsOfEntry = (logId: string, seq: number, within: Within = 
 
 export const invitationsOfMachine = (machineId: string) =>
   invitations.all({ machineId }, { order: [['createdAt', 'DESC']] });
+
+/** How many invitations a person has sent since an instant. */
+export const countInvitationsBy = (personId: string, since: string) =>
+  invitations.count({ invitedBy: personId, createdAt: { [Op.gt]: since } });
 
 /** Everything a shop's technician has been asked at this address, newest first. */
 export const invitationsToEmail = (email: string) =>

@@ -164,6 +164,7 @@ async function tellCountersignature(options: {
       person: cast.shop,
       invitationId: invitation.id,
       shopId: shop,
+      cameByAddress: false,
       input: { answer: 'countersign', capacity, statement },
     }),
   );

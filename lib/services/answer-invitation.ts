@@ -13,7 +13,7 @@ import { paths } from '@/lib/paths';
 import { now } from '@/lib/ports/clock';
 import { sendMail } from '@/lib/ports/mail';
 import { appendEntry } from '@/lib/services/append-entry';
-import { refuseEnded } from '@/lib/services/open-invitation';
+import { readInvitation, refuseEnded } from '@/lib/services/open-invitation';
 import { recordMemory } from '@/lib/services/record-memory';
 
 export const answerInput = z.discriminatedUnion('answer', [
@@ -37,12 +37,14 @@ export async function answerInvitation(options: {
   person: PersonRow;
   invitationId: string;
   shopId: string;
+  /** This browser came with the invitation's secret address. */
+  cameByAddress: boolean;
   input: z.infer<typeof answerInput>;
 }): Promise<{ outcome: 'countersigned' | 'declined'; seq: number | null }> {
-  const { person, invitationId, shopId, input } = options;
+  const { person, invitationId, shopId, cameByAddress, input } = options;
   await authorise({ person, action: 'countersign', shop: shopId });
-  const invitation = await findInvitation(invitationId);
-  if (invitation === null) throw notFound('invitation');
+  // The id stands in an address that browsers show and keep: it alone must not be enough to answer.
+  const invitation = await readInvitation({ id: invitationId, cameByAddress, person });
   if (invitation.answeredAt !== null) return firstAnswer(invitation, person, input.answer);
   refuseEnded(invitation);
   const standing = await standingOf(person, { machine: invitation.machineId });

@@ -3,7 +3,7 @@ import { randomUUID } from 'node:crypto';
 import { z } from 'zod';
 import { write } from '@/db/index';
 import { findEntry } from '@/db/queries/entries';
-import { insertInvitation, invitationsOfMachine } from '@/db/queries/invitations';
+import { countInvitationsBy, insertInvitation } from '@/db/queries/invitations';
 import { findLogOf } from '@/db/queries/logs';
 import { machines } from '@/db/models/machines';
 import type { PersonRow } from '@/db/models/people';
@@ -48,8 +48,8 @@ export async function inviteCountersigner(options: {
   }
   const instant = now();
   const since = new Date(instant.getTime() - millisecondsInDay).toISOString();
-  const today = (await invitationsOfMachine(machineId)).filter((invitation) => invitation.createdAt > since);
-  if (today.length >= mostADay) {
+  // By person, not by machine: machines cost nothing, and each invitation is a mail to somebody else.
+  if ((await countInvitationsBy(person.id, since)) >= mostADay) {
     throw new WitnessmarkError('too-many-attempts', `${mostADay} shops were asked within a day. Try again tomorrow.`);
   }
 

@@ -4,6 +4,7 @@ import { revalidatePath } from 'next/cache';
 import { redirect } from 'next/navigation';
 import { z } from 'zod';
 import { formAction } from '@/lib/auth/action';
+import { isReading } from '@/lib/auth/reader-cookie';
 import { paths } from '@/lib/paths';
 import { answerInput, answerInvitation } from '@/lib/services/answer-invitation';
 import { createShop, shopInput } from '@/lib/services/create-shop';
@@ -23,7 +24,8 @@ export const answerAction = formAction(
   },
   async ({ input, person }) => {
     const { invitation: id, shop, ...answer } = input;
-    await answerInvitation({ person, invitationId: id, shopId: shop, input: answer });
+    const cameByAddress = await isReading('invitations', id);
+    await answerInvitation({ person, invitationId: id, shopId: shop, cameByAddress, input: answer });
     revalidatePath(paths.invitationAnswer(id));
     redirect(paths.invitationAnswer(id));
   },
