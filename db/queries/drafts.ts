@@ -1,5 +1,6 @@
 import 'server-only';
-import type { Transaction } from '../index';
+import { Op, QueryTypes } from 'sequelize';
+import { database, type Transaction } from '../index';
 import {
   draftChanges,
   drafts,
@@ -48,6 +49,33 @@ export function changesOf(draftId: string, transaction?: Transaction): Promise<D
 
 export function countChanges(draftId: string, transaction: Transaction): Promise<number> {
   return draftChanges.count({ draftId }, { transaction });
+}
+
+/** Those that arrived at or after an instant, in the order of `changesOf`; '' asks for all. */
+export function changesSince(draftId: string, since: string, transaction: Transaction): Promise<DraftChangeRow[]> {
+  return draftChanges.all(
+    { draftId, serverAt: { [Op.gte]: since } },
+    {
+      order: [
+        ['serverAt', 'ASC'],
+        ['id', 'ASC'],
+      ],
+      transaction,
+    },
+  );
+}
+
+/** How long all values a draft ever had are together. */
+export async function countCharacters(draftId: string, transaction: Transaction): Promise<number> {
+  const rows = await database().query<{ characters: number | null }>(
+    'SELECT SUM(LENGTH(value)) AS characters FROM draft_changes WHERE draft_id = :draftId',
+    { type: QueryTypes.SELECT, replacements: { draftId }, transaction },
+  );
+  return rows[0]?.characters ?? 0;
+}
+
+export function countOpenDrafts(subjectId: string, transaction: Transaction): Promise<number> {
+  return drafts.count({ subjectId, state: 'open' }, { transaction });
 }
 
 /** Which of these change ids a draft has already. */

@@ -3,6 +3,7 @@ import { z } from 'zod';
 import { write } from '@/db/index';
 import { draftById, moveDraft } from '@/db/queries/drafts';
 import type { PersonRow } from '@/db/models/people';
+import { standingOf } from '@/lib/auth/guard';
 import { WitnessmarkError, notFound } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';
 import { authoriseDraftSubject, demandDraft, refuseClosed } from './draft-access';
@@ -11,16 +12,27 @@ import { deviceId } from './start-draft';
 
 export const moveWorksheetInput = z.object({ subject: deviceId });
 
-/** Moves a worksheet begun on the wrong machine to the right one, until it is sealed. */
+/**
+ * Moves a worksheet begun on the wrong machine to the right one, until it is sealed. Throws `forbidden` to a helper who
+ * did not begin it.
+ */
 export async function moveWorksheet(options: {
   person: PersonRow;
   draftId: string;
   input: z.infer<typeof moveWorksheetInput>;
 }): Promise<DraftView> {
   const { person, draftId, input } = options;
-  const { kind } = await demandDraft({ person, draftId });
+  const { kind, subjectId, createdBy } = await demandDraft({ person, draftId });
   if (kind !== 'worksheet') throw new WitnessmarkError('conflict', 'A receipt stays on the shelf it was begun on.');
   await authoriseDraftSubject({ person, kind, subject: input.subject });
+  // Moved away, it is out of the owner's sight: a helper may not take what others wrote along.
+  const { machine } = await standingOf(person, { machine: subjectId });
+  if (machine !== 'owner' && createdBy !== person.id) {
+    throw new WitnessmarkError(
+      'forbidden',
+      'Only an owner of the machine, or whoever began this worksheet, can move it to another machine.',
+    );
+  }
   return write(async (transaction) => {
     const draft = await draftById(draftId, transaction);
     if (draft === null) throw notFound('draft');

@@ -49,12 +49,15 @@ export async function readGarage({ person }: { person: PersonRow }): Promise<Gar
   const held = await machinesOf(person.id);
   const shelves = await shelvesOf(person.id);
   const open = await openDraftsOf([...held.map(({ machine }) => machine.id), ...shelves.map(({ id }) => id)]);
+  const drafts: GarageData['drafts'] = [];
+  // One after another: a hundred drafts of megabytes at once would fill the memory.
+  for (const draft of open) drafts.push(await draftLine(draft));
   const { id, name, isSteward, distanceUnit, volumeUnit, torqueUnit, timeZone } = person;
   return {
     person: { id, name, isSteward, distanceUnit, volumeUnit, torqueUnit, timeZone },
     machines: await Promise.all(held.map(({ machine, relation }) => machineView(machine, relation))),
     shelves: await Promise.all(shelves.map((shelf) => shelfWithLots(shelf.id))),
-    drafts: await Promise.all(open.map(draftLine)),
+    drafts,
     demo: (await shellOf(person)).demo,
   };
 }

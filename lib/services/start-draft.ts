@@ -1,7 +1,7 @@
 import 'server-only';
 import { z } from 'zod';
 import { write } from '@/db/index';
-import { draftById, insertDraft } from '@/db/queries/drafts';
+import { countOpenDrafts, draftById, insertDraft } from '@/db/queries/drafts';
 import type { DraftRow } from '@/db/models/drafts';
 import type { PersonRow } from '@/db/models/people';
 import { now } from '@/lib/ports/clock';
@@ -12,6 +12,9 @@ import { authoriseDraftSubject, demandDraft } from './draft-access';
 export const deviceId = z
   .string()
   .regex(/^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/, 'An id is a UUID in lower case.');
+
+/** Worksheets open on one machine, or receipts on one shelf: every device reads all of them. */
+export const mostOpenDrafts = 100;
 
 export const startDraftInput = z.object({
   id: deviceId,
@@ -41,6 +44,12 @@ export async function startDraft(options: {
   return write(async (transaction) => {
     const meanwhile = await draftById(input.id, transaction);
     if (meanwhile !== null) return { draft: meanwhile, isNew: false };
+    if ((await countOpenDrafts(input.subject, transaction)) >= mostOpenDrafts) {
+      throw new WitnessmarkError(
+        'too-large',
+        `${mostOpenDrafts} are open here already. Seal or discard some of them first; this one stays on the device.`,
+      );
+    }
     const at = now().toISOString();
     const draft: DraftRow = {
       id: input.id,
