@@ -61,8 +61,10 @@ export function sniff(head: Uint8Array): KnownType | null {
  * Decodes a picture whole and makes its shared copy and its thumb. Throws if any part of it does not decode: a file
  * that a reader cannot open is no evidence.
  */
-export function readPicture(bytes: Buffer, type: PictureType): Promise<Picture> {
+export function readPicture(source: Buffer | (() => Promise<Buffer>), type: PictureType): Promise<Picture> {
   return oneAtATime()(async () => {
+    // Read in turn, so that a queue of pictures waits on the disk and not in memory.
+    const bytes = typeof source === 'function' ? await source() : source;
     const decoded = type === 'image/heic' ? await decodeHeic(bytes) : null;
     const open = () =>
       decoded === null
@@ -123,8 +125,21 @@ interface Decoded {
   data: Buffer;
 }
 
+/**
+ * Whether a HEIC states a size past the limit: each image in it has a box `ispe` of version and flags, width and height
+ * (ISO/IEC 23008-12 §6.5.3). The decoder's memory cannot be limited, so this is asked before it starts.
+ */
+export function statesTooManyPixels(bytes: Buffer): boolean {
+  for (let at = bytes.indexOf('ispe'); at >= 0 && at + 16 <= bytes.length; at = bytes.indexOf('ispe', at + 4)) {
+    const isBox = bytes.readUInt32BE(Math.max(0, at - 4)) === 20;
+    if (isBox && bytes.readUInt32BE(at + 8) * bytes.readUInt32BE(at + 12) > mostPixels) return true;
+  }
+  return false;
+}
+
 /** The decoder is synchronous WebAssembly: it runs in a worker with a timeout, so that nothing else waits for it. */
 function decodeHeic(bytes: Buffer): Promise<Decoded> {
+  if (statesTooManyPixels(bytes)) return Promise.reject(new Error('too many pixels'));
   const source = `
     const { parentPort, workerData } = require('node:worker_threads');
     const { createRequire } = require('node:module');

@@ -1,8 +1,8 @@
 import 'server-only';
 import { readFile } from 'node:fs/promises';
 import { z } from 'zod';
-import { write } from '@/db/index';
-import { drafts, type UploadRow } from '@/db/models/drafts';
+import { write, type Transaction } from '@/db/index';
+import { drafts, uploads, type DraftRow, type UploadRow } from '@/db/models/drafts';
 import type { PersonRow } from '@/db/models/people';
 import { filesBySha256, findUpload, insertUpload } from '@/db/queries/uploads';
 import { authorise } from '@/lib/auth/guard';
@@ -13,6 +13,9 @@ import { readPicture, sniff, type KnownType, type Picture } from '@/lib/ports/im
 
 /** Phones make pictures of 3 to 15 MB; a scanned invoice may be larger. */
 export const largestUploadBytes = 40_000_000;
+
+/** Pictures and papers of one worksheet or receipt. */
+export const mostUploadsOfADraft = 100;
 
 export const uploadQuery = z.object({
   id: z.uuid(),
@@ -64,10 +67,8 @@ export async function receiveUpload(options: {
   try {
     checkReceived(blob, query, options.declaredBytes);
     const known = await findUpload(query.id);
-    if (known !== null) return await firstAnswer(known, blob, draft.id);
-    if (draft.state !== 'open') {
-      throw new WitnessmarkError('already-sealed', `${query.name} came too late: this is sealed already.`);
-    }
+    if (known !== null) return await firstAnswer(known, blob, draft.id, query.name);
+    await demandOpen(draft, query.name);
     const mediaType = knownType(blob, query.name);
     return await keep({ person, query, blob, mediaType });
   } catch (error) {
@@ -86,9 +87,29 @@ function checkReceived(blob: IncomingBlob, query: z.infer<typeof uploadQuery>, d
   }
 }
 
-async function firstAnswer(known: UploadRow, blob: IncomingBlob, draftId: string): Promise<UploadAnswer> {
+/** Asked before the work of decoding, and again when the row is written: the seal may have come between. */
+async function demandOpen(draft: DraftRow | null, name: string, transaction?: Transaction): Promise<void> {
+  if (draft === null) throw notFound('worksheet or receipt');
+  if (draft.state !== 'open') {
+    const state = draft.state === 'sealed' ? 'sealed already' : 'discarded';
+    throw new WitnessmarkError('already-sealed', `${name} came too late: this is ${state}.`);
+  }
+  const count = await uploads.count({ draftId: draft.id }, transaction ? { transaction } : {});
+  if (count >= mostUploadsOfADraft) {
+    throw new WitnessmarkError(
+      'too-large',
+      `${name} was not taken: ${mostUploadsOfADraft} pictures and papers are here already. Begin another worksheet or receipt for it.`,
+    );
+  }
+}
+
+async function firstAnswer(known: UploadRow, blob: IncomingBlob, draftId: string, name: string): Promise<UploadAnswer> {
+  // The upload may be somebody else's: it is called by the name that was sent, not by the one on file.
   if (known.sha256 !== blob.sha256 || known.draftId !== draftId) {
-    throw new WitnessmarkError('conflict', `${known.name} is on file under this id with other bytes.`);
+    throw new WitnessmarkError(
+      'conflict',
+      `${name} cannot be kept: another file is on file under its id. Choose it again.`,
+    );
   }
   await dropBlob(blob);
   const [file] = await filesBySha256([known.sha256]);
@@ -136,7 +157,10 @@ async function keep(options: {
     ...(copy ? [{ ...copy, mediaType: 'image/jpeg', createdAt: receivedAt }] : []),
     ...(thumb ? [{ ...thumb, mediaType: 'image/webp', createdAt: receivedAt }] : []),
   ];
-  await write((transaction) => insertUpload(row, named, transaction));
+  await write(async (transaction) => {
+    await demandOpen(await drafts.find({ id: row.draftId }, { transaction }), row.name, transaction);
+    await insertUpload(row, named, transaction);
+  });
   return answer(row, original.bytes, mediaType, true);
 }
 
@@ -146,7 +170,7 @@ async function decode(
   name: string,
 ): Promise<Picture> {
   try {
-    return await readPicture(await readFile(blob.temporary), mediaType);
+    return await readPicture(() => readFile(blob.temporary), mediaType);
   } catch (error) {
     if (/pixel limit|too many pixels/i.test(String(error))) {
       throw refusal(name, 'has more than 50 megapixels. Take it again at a smaller size.');
