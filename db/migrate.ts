@@ -3,6 +3,7 @@ import { Umzug, type UmzugStorage } from 'umzug';
 import { QueryTypes } from 'sequelize';
 import { database } from './index';
 import { first } from './migrations/0001-first';
+import { appendOnlyFurther } from './migrations/0002-append-only-further';
 
 export interface Migration {
   name: string;
@@ -10,7 +11,7 @@ export interface Migration {
 }
 
 /** In order. A released migration is never edited; a change of the schema is a new one. */
-const migrations: Migration[] = [first];
+const migrations: Migration[] = [first, appendOnlyFurther];
 
 const storage: UmzugStorage = {
   async logMigration({ name }) {

@@ -2,7 +2,8 @@ import { execFile } from 'node:child_process';
 import { promisify } from 'node:util';
 import { QueryTypes } from 'sequelize';
 import { beforeAll, describe, expect, it } from 'vitest';
-import { database, databaseFile } from '@/db/index';
+import { database, databaseFile, write } from '@/db/index';
+import { insertDraws } from '@/db/queries/lots';
 import { stampingSettled } from '@/lib/services/stamp-checkpoints';
 import { sealRecord } from '../setup/sealed-record';
 import { useTestDatabase } from '../setup/test-database';
@@ -30,6 +31,13 @@ const attempts = [
   ['entry_parts', "DELETE FROM entry_parts WHERE name = 'prices'"],
   ['entry_parts', 'INSERT OR REPLACE INTO entry_parts SELECT * FROM entry_parts'],
   ['entry_parts', "INSERT INTO entry_parts SELECT log_id, 0, 'notes', disclosure FROM entry_parts WHERE seq = 1"],
+  // The newest entry is the only one whose parts have the right number.
+  [
+    'entry_parts',
+    `INSERT INTO entry_parts SELECT log_id, seq, 'late', disclosure FROM entry_parts
+     WHERE (log_id, seq) IN (SELECT log_id, MAX(seq) FROM entries GROUP BY log_id) LIMIT 1`,
+  ],
+  ['entry_parts', "UPDATE OR REPLACE entry_parts SET name = 'body'"],
   ['checkpoints', "UPDATE checkpoints SET note = 'x'"],
   ['checkpoints', 'DELETE FROM checkpoints WHERE size = 3'],
   ['checkpoints', 'INSERT OR REPLACE INTO checkpoints SELECT * FROM checkpoints'],
@@ -41,19 +49,48 @@ const attempts = [
     'tokens',
     "INSERT INTO tokens SELECT log_id, size + 900, 'f', authority, gen_time, token, 0, created_at FROM tokens LIMIT 1",
   ],
+  ['draws', "UPDATE draws SET amount = '0'"],
+  ['draws', 'DELETE FROM draws'],
+  ['draws', 'REPLACE INTO draws SELECT * FROM draws LIMIT 1'],
+  [
+    'draws',
+    `INSERT OR REPLACE INTO draws (rowid, shelf_log, purchase_seq, line, machine_log, entry_seq, position, amount, unit,
+     drawn_on) SELECT rowid, shelf_log, purchase_seq, line, machine_log, entry_seq, position + 50, '0', unit, drawn_on
+     FROM draws LIMIT 1`,
+  ],
+  ['logs', "UPDATE logs SET origin = 'elsewhere.example'"],
+  ['logs', "UPDATE logs SET subject_id = 'another'"],
+  ['logs', 'DELETE FROM logs'],
+  ['logs', 'REPLACE INTO logs SELECT * FROM logs LIMIT 1'],
+  [
+    'logs',
+    `INSERT OR REPLACE INTO logs (rowid, id, subject, subject_id, origin, key_name, times_injected, created_at)
+     SELECT rowid, 'another', subject, 'another', origin, key_name, 0, created_at FROM logs LIMIT 1`,
+  ],
 ] as const;
 
 const contents = async (table: string) => database().query(`SELECT * FROM ${table}`, { type: QueryTypes.SELECT });
 
 describe('what was sealed', () => {
   beforeAll(async () => {
-    await sealRecord();
+    const { machine, shelf } = await sealRecord();
+    const draw = {
+      machineLog: machine.log,
+      shelfLog: shelf.log,
+      purchaseSeq: 1,
+      line: 1,
+      entrySeq: 2,
+      unit: '[qt_us]',
+      drawnOn: '2026-04-18',
+    };
+    const draws = [0, 1, 2].map((position) => ({ ...draw, position, amount: '1' }));
+    await write((transaction) => insertDraws(draws, transaction));
     await stampingSettled();
   });
 
   it('stands in every table that the attempts below aim at', async () => {
-    for (const table of ['entries', 'entry_parts', 'checkpoints', 'tokens']) {
-      expect((await contents(table)).length, table).toBeGreaterThan(2);
+    for (const table of ['entries', 'entry_parts', 'checkpoints', 'tokens', 'draws', 'logs']) {
+      expect((await contents(table)).length, table).toBeGreaterThan(1);
     }
   });
 
