@@ -10,6 +10,10 @@ import { sha256 } from '@/lib/evidence/hash';
 export const maxBundleCharacters = 64_000_000;
 /** Each entry costs one signature check, about a millisecond. */
 export const maxBundleEntries = 20_000;
+/** So does each log; a machine draws from a handful of shelves. */
+export const maxBundleLogs = 500;
+/** A bad signature is tried with every key that calls itself the same. */
+export const maxBundleKeys = 100;
 
 /**
  * Signs a bundle: the same bundle with its `signature`.
@@ -63,6 +67,9 @@ export function parseBundle(text: string): Bundle {
 export function demandBundle(value: unknown): asserts value is Bundle {
   demand(isShape(value, bundleShape), 'the file');
   const bundle = value as unknown as Bundle;
+  const hasMany = bundle.logs.length > maxBundleLogs || bundle.verifierKeys.length > maxBundleKeys;
+  if (hasMany)
+    throw new EvidenceError('too-large', `This record has more than ${maxBundleLogs} logs or ${maxBundleKeys} keys.`);
   bundle.logs.forEach((log, index) => {
     demand(isShape(log, logShape), `logs[${index}]`);
     log.entries.forEach((entry, seq) => {

@@ -54,14 +54,15 @@ function dictionariesIn(object: PDFObject, depth = 0): PDFDict[] {
 }
 
 /** Names given by trees of names: pairs of a text and what it names, wherever such a list stands. */
-function namesInTrees(dictionaries: PDFDict[]): Map<PDFObject, string[]> {
-  const found = new Map<PDFObject, string[]>();
-  for (const dictionary of dictionaries) {
-    const pairs = dictionary.lookup(PDFName.of('Names'));
+function namesInTrees(dictionaries: PDFDict[]): Map<PDFObject, Set<string>> {
+  const found = new Map<PDFObject, Set<string>>();
+  // Each list once: a hostile file could name one long list from every dictionary.
+  const lists = new Set(dictionaries.map((dictionary) => dictionary.lookup(PDFName.of('Names'))));
+  for (const pairs of lists) {
     if (!(pairs instanceof PDFArray)) continue;
     for (let index = 0; index + 1 < pairs.size(); index += 2) {
       const [name, target] = [textOf(pairs.lookup(index)), pairs.lookup(index + 1)];
-      if (name !== null && target !== undefined) found.set(target, [...(found.get(target) ?? []), name]);
+      if (name !== null && target !== undefined) found.set(target, (found.get(target) ?? new Set()).add(name));
     }
   }
   return found;

@@ -1,5 +1,5 @@
 import { expect, it } from 'vitest';
-import { bundleText, signBundle } from '@/lib/evidence/bundle';
+import { bundleText, maxBundleKeys, maxBundleLogs, signBundle } from '@/lib/evidence/bundle';
 import { checkpointText, parseNote, signNote } from '@/lib/evidence/checkpoint';
 import type { AlterationCode } from '@/lib/evidence/codes';
 import { makeDisclosure, openDisclosure } from '@/lib/evidence/disclosure';
@@ -380,3 +380,24 @@ it('every finding has a sentence for whoever decides and a line for whoever look
     }
   }
 }, 120_000);
+
+it.each([
+  [maxBundleKeys, 'unchanged'],
+  [maxBundleKeys + 1, 'unreadable'],
+])('checks a bad signature with at most a hundred keys: a file that lists %i is %s', (count, outcome) => {
+  const verifierKeys = Array.from({ length: count }, () => key);
+  expect(verifyBundle({ key, bundleText: resigned({ verifierKeys }) }).outcome).toBe(outcome);
+});
+
+it.each([
+  [maxBundleLogs, 'altered'],
+  [maxBundleLogs + 1, 'unreadable'],
+])('checks at most five hundred logs: a file with %i is %s', (count, outcome) => {
+  const [machine, shelf] = logs();
+  const empty = Array.from({ length: count - 2 }, (_, index) => ({
+    ...shelf,
+    id: `6f1c2a34-0000-4000-8001-${String(index).padStart(12, '0')}`,
+    entries: [],
+  }));
+  expect(verifyBundle({ key, bundleText: resigned({ logs: [machine, shelf, ...empty] }) }).outcome).toBe(outcome);
+});
