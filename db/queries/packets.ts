@@ -1,4 +1,5 @@
 import 'server-only';
+import { Op } from 'sequelize';
 import type { Transaction } from '../index';
 import { relations } from '../models/people';
 import { packets, type PacketRow } from '../models/proof';
@@ -21,6 +22,15 @@ export const packetsOfMachine = (machineId: string) => packets.all({ machineId }
 /** Asked for and not finished, oldest first: what a server that stopped left behind. */
 export const unfinishedPackets = () =>
   packets.all({ state: ['queued', 'building'] }, { order: [['createdAt', 'ASC']] });
+
+/** How many packets a person asked for: those not finished, and those since an instant. */
+export async function countPacketsAskedBy(personId: string, since: string) {
+  const [waiting, sinceThen] = await Promise.all([
+    packets.count({ createdBy: personId, state: ['queued', 'building'] }),
+    packets.count({ createdBy: personId, createdAt: { [Op.gt]: since } }),
+  ]);
+  return { waiting, sinceThen };
+}
 
 /** The person who owns the machine now; of several, the first. */
 export async function ownerOfMachine(machineId: string): Promise<string | null> {

@@ -9,7 +9,8 @@ export interface ReaderCookie {
 }
 
 const keptDays = 30;
-const mostKept = 50;
+/** Of each kind. A cookie holds 4096 bytes, and fifty ids sealed take most of them. */
+const mostKept = 25;
 
 export const readerCookieOptions = () => cookieOptions('witnessmark-reader', keptDays);
 

@@ -9,6 +9,16 @@ const isFull = (error: unknown) => {
 };
 
 /**
+ * Stacks only. An error of the database also carries its statement with every value in it: hashes of passwords, what
+ * was typed.
+ */
+function whatHappened(error: unknown): string {
+  if (!(error instanceof Error)) return `a ${typeof error} was thrown`;
+  const cause = error.cause === undefined ? '' : `\ncaused by ${whatHappened(error.cause)}`;
+  return `${error.stack ?? error.message}${cause}`;
+}
+
+/**
  * Any error as a refusal a person can read. What nobody foresaw goes to the log under a number the person can quote;
  * its own words stay there, for they may name files or hold what was typed.
  */
@@ -25,7 +35,7 @@ export function asRefusal(error: unknown): WitnessmarkError {
     );
   }
   const number = randomBytes(4).toString('hex');
-  console.error(`[internal ${number}]`, error);
+  console.error(`[internal ${number}]`, whatHappened(error));
   return new WitnessmarkError(
     'internal',
     `Something went wrong on our side, and nothing was saved. Try again; if it stays so, tell your steward the number ${number}.`,

@@ -65,7 +65,10 @@ export function serviceFrom({
     finishedAt: moment(finishedAt.date, finishedAt.time, zone),
     ...odometerFrom(odometer),
     ...(engineHours === undefined ? {} : { engineHours: decimal(engineHours) }),
-    performedBy: worksheet.performedBy.map(({ id, capacity }) => ({ person: people[id] ?? id, capacity })),
+    performedBy: worksheet.performedBy.map(({ id, capacity }) => ({
+      person: Object.hasOwn(people, id) ? (people[id] ?? id) : id,
+      capacity,
+    })),
     ...(worksheet.workOrder === undefined ? {} : { workOrder: worksheet.workOrder }),
     title: worksheet.title ?? titleOf(tasks.map(({ title }) => title)),
     tasks,

@@ -18,8 +18,20 @@ export interface Health {
   checkpoints: Answer;
 }
 
-/** Whether this server can seal now. Reasons go to the server's own log, not to whoever asks. */
-export async function checkHealth(): Promise<Health> {
+let running: Promise<Health> | undefined;
+
+/**
+ * Whether this server can seal now. Reasons go to the server's own log, not to whoever asks. Anybody may ask, and the
+ * answer costs a write to the disk: those who ask meanwhile get the same one.
+ */
+export function checkHealth(): Promise<Health> {
+  running ??= check().finally(() => {
+    running = undefined;
+  });
+  return running;
+}
+
+async function check(): Promise<Health> {
   const [database, storage, key] = await Promise.all([
     answer('The database does not answer.', demandDatabase),
     answer('The data folder cannot be written.', writeAndRemove),

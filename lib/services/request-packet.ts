@@ -3,13 +3,18 @@ import { randomInt, randomUUID } from 'node:crypto';
 import { z } from 'zod';
 import { write, type Transaction } from '@/db/index';
 import type { PersonRow } from '@/db/queries/people';
-import { insertPacket, isPacketNumberTaken, type PacketRow } from '@/db/queries/packets';
+import { countPacketsAskedBy, insertPacket, isPacketNumberTaken, type PacketRow } from '@/db/queries/packets';
 import { authorise } from '@/lib/auth/guard';
+import { WitnessmarkError } from '@/lib/errors';
 import { isAcceptableText } from '@/lib/evidence/text';
 import { now } from '@/lib/ports/clock';
 import { kickPackets } from '@/lib/services/build-packet';
 
 const longestPurpose = 200;
+/** Each packet holds every picture of the record again, and they are built one at a time for everybody. */
+export const mostPacketsWaiting = 5;
+export const mostPacketsADay = 50;
+const millisecondsInDay = 24 * 60 * 60 * 1000;
 
 export const requestPacketInput = z.object({
   /** Printed on the cover: "a warranty claim on the gearbox". */
@@ -31,9 +36,27 @@ export async function requestPacket(options: {
 }): Promise<PacketRow> {
   const { person, machineId, input } = options;
   await authorise({ person, action: 'share', machine: machineId });
+  await refuseTooMany(person);
   const packet = await queuePacket({ machineId, by: person.id, purpose: input.purpose });
   kickPackets();
   return packet;
+}
+
+async function refuseTooMany(person: PersonRow): Promise<void> {
+  const since = new Date(now().getTime() - millisecondsInDay).toISOString();
+  const { waiting, sinceThen } = await countPacketsAskedBy(person.id, since);
+  if (waiting >= mostPacketsWaiting) {
+    throw new WitnessmarkError(
+      'too-many-attempts',
+      `${waiting} packets you asked for are not built yet. Wait until they are, then ask again.`,
+    );
+  }
+  if (sinceThen >= mostPacketsADay) {
+    throw new WitnessmarkError(
+      'too-many-attempts',
+      `You asked for ${sinceThen} packets within a day. Use the newest, or ask again tomorrow.`,
+    );
+  }
 }
 
 /** Makes the row with a number nobody has. Who may ask is decided before this is called. */

@@ -18,6 +18,9 @@ import { type Parts, sealableParts } from '@/lib/services/sealable-parts';
 /** An installation whose clock is further behind its own last entry does not seal. */
 const toleratedClockLagMilliseconds = 5 * 60_000;
 
+/** Every reader of a record reads all of its entries. Long ones take some thirty thousand. */
+export const mostCharactersOfAnEntry = 1_000_000;
+
 export interface Sealed {
   log: string;
   seq: number;
@@ -70,6 +73,13 @@ export async function sealNext(
     refersTo,
     parts,
   });
+  const characters = leaf.disclosures.reduce((total, { text }) => total + text.length, 0);
+  if (characters > mostCharactersOfAnEntry) {
+    throw new WitnessmarkError(
+      'too-large',
+      'This is too long for one entry. Shorten its notes, or seal it as two worksheets.',
+    );
+  }
   const tree = lastCheckpoint === null ? new CompactTree() : CompactTree.from(lastCheckpoint.tree);
   tree.append(leaf.hash);
   const text = checkpointText({ origin: log.origin, log: log.id, size: tree.size, root: tree.root });

@@ -167,3 +167,14 @@ describe('serviceFrom', () => {
     expect(make({ 'tasks/t/fills/f/draws/d/lot': 'x' })).toThrow('no lot');
   });
 });
+
+describe('who did the work', () => {
+  it('is an id that no name belongs to, even one that every object has a member of', () => {
+    const worksheet = worksheetFrom({ ...fields, 'performedBy/constructor/capacity': 'helper' });
+    const body = serviceFrom({ worksheet, terms: bigVTwinTourer(), termsSeq: 1, lots, people: { p1: 'Imke' } });
+    expect(body.performedBy).toEqual([
+      { person: 'constructor', capacity: 'helper' },
+      { person: 'Imke', capacity: 'owner' },
+    ]);
+  });
+});
