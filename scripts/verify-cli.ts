@@ -3,6 +3,7 @@ import path from 'node:path';
 import { parseArgs } from 'node:util';
 import { readContainer } from '@/lib/evidence/container';
 import type { Finding, Outcome } from '@/lib/evidence/finding';
+import { givenKey } from '@/lib/evidence/given-key';
 import { verifyBundle } from '@/lib/evidence/verify';
 import type { GivenFile } from '@/lib/evidence/verify-files';
 import { printable, reportText } from '@/scripts/verify-report';
@@ -11,7 +12,7 @@ const usage = `Checks a Witnessmark packet or record.json. Needs nothing but Nod
 
   node scripts/verify.mjs FILE [--key KEY] [--files DIR] [--against OLDER] [--tsa-roots PEM] [--json]
 
-  --key KEY        the verifier key you have from elsewhere (name+hex+base64)
+  --key KEY        the verifier key you have from elsewhere (name+hex+base64), or its fingerprint
   --files DIR      folder with the pictures and papers that belong to the record
   --against OLDER  an older packet, record.json or signed checkpoint of the same record
   --tsa-roots PEM  accepted, but this version does not check who made a time stamp
@@ -56,7 +57,7 @@ interface Options {
 }
 
 async function check(file: string, { key, files: folder, against }: Options): Promise<Finding> {
-  const bytes = await readFile(file);
+  const bytes = await readGiven(file);
   let container: Awaited<ReturnType<typeof readContainer>>;
   try {
     container = await readContainer(bytes);
@@ -64,21 +65,31 @@ async function check(file: string, { key, files: folder, against }: Options): Pr
     // The empty text is no record either: the finding keeps its shape, the sentence says why.
     return { ...verifyBundle({ bundleText: '' }), sentence: error instanceof Error ? error.message : String(error) };
   }
+  const given = givenKey(key ?? '', container.bundleText);
+  if (given.refusal !== undefined) throw new Error(`Nothing was checked. The key you gave: ${given.refusal}`);
   const beside = folder === undefined ? undefined : await filesIn(folder, await realpath(file));
   const files =
     container.files === undefined && beside === undefined ? undefined : [...(container.files ?? []), ...(beside ?? [])];
   return verifyBundle({
     bundleText: container.bundleText,
     ...(files && { files }),
-    ...(key !== undefined && { key }),
+    ...(given.verifierKey !== undefined && { key: given.verifierKey }),
     ...(against !== undefined && { against: await readOlder(against) }),
     pagesNotChecked: container.kind === 'packet',
   });
 }
 
+async function readGiven(file: string): Promise<Buffer> {
+  try {
+    return await readFile(file);
+  } catch (error) {
+    throw new Error(`The file ${file} cannot be opened: is the name right? (${error instanceof Error ? error.message : String(error)})`);
+  }
+} // prettier-ignore
+
 async function readOlder(file: string): Promise<string> {
   try {
-    return (await readContainer(await readFile(file))).bundleText;
+    return (await readContainer(await readGiven(file))).bundleText;
   } catch (error) {
     throw new Error(`The older file could not be read. ${error instanceof Error ? error.message : String(error)}`);
   }

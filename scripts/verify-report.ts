@@ -1,5 +1,5 @@
 import { whatIsShown } from '@/lib/evidence/format';
-import type { EntryFinding, Finding } from '@/lib/evidence/finding';
+import { signedRoot, type EntryFinding, type Finding } from '@/lib/evidence/finding';
 
 /** Invisible characters that could move a terminal's cursor or turn the direction of a line. */
 const unsafe = /[\u0000-\u0008\u000b-\u001f\u007f-\u009f\u061c\u200e\u200f\u202a-\u202e\u2066-\u2069]/g; // eslint-disable-line no-control-regex
@@ -15,8 +15,10 @@ export function reportText(file: string, finding: Finding): string {
   const lines = [`${finding.outcome.toUpperCase()}  ${file}`, finding.sentence, ''];
   if (bundle !== null) lines.push(`Record ${bundle.number}, made at ${bundle.madeAt}, for: ${bundle.purpose}`);
   for (const log of finding.logs) {
-    const signed = log.checkpoint === null ? 'no readable checkpoint' : `${log.checkpoint.size} entries, root ${log.checkpoint.root}`;
-    lines.push(`Log of the ${log.subject}: ${log.origin}/${log.id}`, `  ${signed}`);
+    const signed = log.checkpoint === null ? 'no readable checkpoint' : `${log.checkpoint.size} entries, root ${signedRoot(log.checkpoint)}`;
+    const lined = finding.entries.filter((entry) => entry.log === log.id);
+    const opened = lined.filter((entry) => bodyOf(entry) !== undefined).length;
+    lines.push(`Log of the ${log.subject}: ${log.origin}/${log.id}`, `  ${signed}`, `  ${opened} of ${lined.length} entries opened`);
   }
   if (key !== null) {
     const whose = key.source === 'reader' ? 'the key you gave' : 'the key found in the file itself';
@@ -24,7 +26,8 @@ export function reportText(file: string, finding: Finding): string {
   }
   if (bundle !== null) {
     const { entries, entriesOpened, partsOpened, partsWithheld } = counts;
-    lines.push(`${entriesOpened} of ${entries} entries opened (${partsOpened} parts opened, ${partsWithheld} withheld)`);
+    const where = finding.logs.length > 1 ? ' in all logs' : '';
+    lines.push(`${entriesOpened} of ${entries} entries opened${where} (${partsOpened} parts opened, ${partsWithheld} withheld)`);
   }
   if (finding.against !== null) lines.push(`Compared with the older file: ${finding.against.sentence}`);
   section(lines, 'Altered', finding.alterations.map((item) => `${item.sentence}\n      ${placed(item.code, item)}: ${item.technical}`));
@@ -44,6 +47,15 @@ function placed(code: string, place: { log?: string; seq?: number; part?: string
   return where.length === 0 ? code : `${code} at ${where.join('/')}`;
 }
 
+const bodyOf = ({ openedParts }: EntryFinding): unknown => openedParts.find(({ name }) => name === 'body')?.value;
+
+/** On one line, so that no title can look like a line of the report. */
+function titleOf(entry: EntryFinding): string {
+  const body = bodyOf(entry);
+  const title = typeof body === 'object' && body !== null && 'title' in body ? body.title : undefined;
+  return typeof title === 'string' ? ` “${title.replace(/\s+/g, ' ')}”` : '';
+}
+
 function entryLine(entry: EntryFinding): string {
   const { claimed, earliestStamp } = entry;
   const moment = claimed?.finishedAt ?? claimed?.startedAt;
@@ -51,5 +63,5 @@ function entryLine(entry: EntryFinding): string {
   const stamp = earliestStamp === null ? '' : ` (a time stamp says ${earliestStamp.genTime})`;
   const closed = entry.withheldParts.length === 0 ? '' : `, withheld: ${entry.withheldParts.join(' ')}`;
   const wrong = entry.problems.length === 0 ? '' : ` !! ${entry.problems.join(' ')}`;
-  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${said}, sealed ${entry.sealedAt ?? 'unknown'}, not proven${stamp}${closed}${wrong}`;
+  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${titleOf(entry)}${said}, sealed ${entry.sealedAt ?? 'unknown'}, not proven${stamp}${closed}${wrong}`;
 } // prettier-ignore

@@ -64,6 +64,15 @@ export interface LogFinding {
   checkpoint: { size: number; root: string; note: string } | null;
 }
 
+/**
+ * The root in the spelling of the signed note, base64, as packets, pages and mails print it.
+ *
+ * @example signedRoot(checkpoint); // '+r/He3gP+nV4P7tKP/FUTmCTfAqQa842aKi3oKrM/AQ='
+ */
+export function signedRoot({ note, root }: NonNullable<LogFinding['checkpoint']>): string {
+  return note.split('\n')[2] ?? root;
+}
+
 /** The answer to `against`: what an older file of the same record says. */
 export interface Comparison {
   result: 'consistent' | 'forked' | 'shorter' | 'not-comparable';

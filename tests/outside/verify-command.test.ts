@@ -7,7 +7,7 @@ import { promisify } from 'node:util';
 import { PDFDocument } from 'pdf-lib';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { fromBase64, joinBytes, toHex } from '@/lib/evidence/bytes';
-import { parseNote, parseVerifierKey, signNote } from '@/lib/evidence/checkpoint';
+import { fingerprint, parseNote, parseVerifierKey, signNote } from '@/lib/evidence/checkpoint';
 import type { Finding } from '@/lib/evidence/finding';
 import { sha256Hex } from '@/lib/evidence/hash';
 import { isTokenOf, readToken } from '@/lib/evidence/token';
@@ -71,6 +71,12 @@ describe('the command', () => {
     expect(stdout).toContain('Not shown: that a statement was true');
   });
 
+  it('takes a fingerprint, as it stands in a packet, for the key', async () => {
+    const { code, stdout } = await verify('record.json', '--key', fingerprint(parseVerifierKey(key).publicKey));
+    expect(code).toBe(0);
+    expect(stdout).toContain('Checked with the key you gave');
+  });
+
   it('takes the record and the files out of a packet', async () => {
     const found = await finding('packet.pdf', '--key', key);
     expect(found).toMatchObject({ outcome: 'unchanged', alterations: [] });
@@ -112,7 +118,9 @@ describe('the command', () => {
   it.each([
     [['half.json'], 'UNREADABLE'],
     [['verify.mjs'], 'UNREADABLE'],
-    [['nowhere.json'], 'ENOENT'],
+    [['nowhere.json'], 'cannot be opened: is the name right?'],
+    [['record.json', '--key', key.slice(0, -2)], 'Nothing was checked'],
+    [['record.json', '--key', 'ab'.repeat(32)], 'signed with another key than yours'],
     [[], 'node scripts/verify.mjs FILE'],
     [['record.json', 'record.json'], 'node scripts/verify.mjs FILE'],
     [['record.json', '--wrong'], 'node scripts/verify.mjs FILE'],

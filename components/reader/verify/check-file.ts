@@ -1,6 +1,6 @@
-import { fingerprint, parseVerifierKey } from '@/lib/evidence/checkpoint';
 import { readContainer } from '@/lib/evidence/container';
 import type { Finding } from '@/lib/evidence/finding';
+import { givenKey } from '@/lib/evidence/given-key';
 import { verifyBundle } from '@/lib/evidence/verify';
 
 export interface CheckRequest {
@@ -41,7 +41,7 @@ export async function checkFile(request: CheckRequest, tell: (stage: string) => 
       return { kind: 'refused', field: 'against', sentence: `The older file could not be read. ${sentenceOf(error)}` };
     }
   }
-  const key = keyFrom(request.key, container.bundleText);
+  const key = givenKey(request.key, container.bundleText);
   if (key.refusal !== undefined) return { kind: 'refused', field: 'key', sentence: key.refusal };
   tell('Checking every line, seal, part and file');
   const finding = verifyBundle({
@@ -52,39 +52,4 @@ export async function checkFile(request: CheckRequest, tell: (stage: string) => 
     pagesNotChecked: container.kind === 'packet',
   });
   return { kind: 'found', finding, container: container.kind };
-}
-
-/** People hold a key whole, or by its fingerprint on paper: then the file must list the key that has it. */
-function keyFrom(typed: string, bundleText: string): { verifierKey?: string; refusal?: string } {
-  const text = typed.replace(/\s+/g, '');
-  if (text === '') return {};
-  if (/^[0-9a-f]{64}$/i.test(text)) {
-    const found = listedKeys(bundleText).find((key) => fingerprintOf(key) === text.toLowerCase());
-    return found === undefined
-      ? { refusal: 'This file lists no key with that fingerprint. It was signed with another key than yours.' }
-      : { verifierKey: found };
-  }
-  if (fingerprintOf(text) !== null) return { verifierKey: text };
-  return {
-    refusal:
-      'This is neither a verifier key (name+hash+base64) nor a fingerprint of 64 digits and letters a to f. Copy it whole.',
-  };
-}
-
-function listedKeys(bundleText: string): string[] {
-  try {
-    const { verifierKeys } = JSON.parse(bundleText) as { verifierKeys?: unknown };
-    return Array.isArray(verifierKeys) ? verifierKeys.filter((key) => typeof key === 'string') : [];
-  } catch {
-    return [];
-  }
-}
-
-function fingerprintOf(key: string): string | null {
-  try {
-    // It comes in groups, as people compare it.
-    return fingerprint(parseVerifierKey(key).publicKey).replace(/\s+/g, '');
-  } catch {
-    return null;
-  }
 }

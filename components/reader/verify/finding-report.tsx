@@ -6,7 +6,7 @@ import { Box, Boxes } from '@/components/ui/box';
 import { Button } from '@/components/ui/button';
 import { UserText } from '@/components/ui/user-text';
 import { alterationCodes } from '@/lib/evidence/codes';
-import type { Alteration, Finding, LogFinding } from '@/lib/evidence/finding';
+import { signedRoot, type Alteration, type Finding, type LogFinding } from '@/lib/evidence/finding';
 import { whatIsShown } from '@/lib/evidence/format';
 import { FindingEntries } from './finding-entries';
 import { KeyPart } from './key-part';
@@ -162,7 +162,7 @@ function Counts({ finding: { counts, bundle, logs } }: { finding: Finding }) {
         </Box>
         {machine?.checkpoint ? (
           <Box label={`Root at size ${machine.checkpoint.size}`} span={2}>
-            <span className="font-mono text-sm break-all">{machine.checkpoint.root}</span>
+            <span className="font-mono text-sm break-all">{signedRoot(machine.checkpoint)}</span>
           </Box>
         ) : null}
       </Boxes>

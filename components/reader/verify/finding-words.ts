@@ -1,3 +1,4 @@
+import { confirmedWords } from '@/components/entry/words';
 import { formatLocalMoment } from '@/lib/domain/instants';
 import { formatAmount, formatDistance, isDecimalString, isUnitCode } from '@/lib/domain/units';
 import type { EntryFinding } from '@/lib/evidence/finding';
@@ -98,11 +99,15 @@ function bodyWords(
     case 'countersignature': {
       const shop = textOf(looseOf(body.shop).name);
       const capacity = capacities[textOf(body.capacity)] ?? textOf(body.capacity);
-      const isConfirmed = typeof looseOf(body.shop).confirmedBy === 'string';
-      const known = isConfirmed ? '' : 'The shop was not confirmed; this could be the owner.';
+      const invited = textOf(body.invitedBy) === '' ? '' : `Invited by ${textOf(body.invitedBy)}.`;
+      const confirmedBy = textOf(looseOf(body.shop).confirmedBy);
+      const since = textOf(looseOf(body.shop).accountSince).slice(0, 10);
+      const known =
+        `Account of the shop since ${since || 'a day not stated'}; ` +
+        `${confirmedWords(confirmedBy === '' ? null : confirmedBy)}.`;
       return {
         title: shop === '' ? '' : `Countersigned by ${shop}, which ${capacity}`,
-        says: [textOf(body.statement), known],
+        says: [textOf(body.statement), invited, known],
       };
     }
     case 'purchase': {
