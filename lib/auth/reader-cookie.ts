@@ -9,8 +9,8 @@ export interface ReaderCookie {
 }
 
 const keptDays = 30;
-/** Of each kind. A cookie holds 4096 bytes, and fifty ids sealed take most of them. */
-const mostKept = 25;
+/** Of each kind. A cookie holds 4096 bytes, and fifty ids take some 2900 once they are sealed. */
+export const mostKept = 25;
 
 export const readerCookieOptions = () => cookieOptions('witnessmark-reader', keptDays);
 

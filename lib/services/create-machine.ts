@@ -1,10 +1,10 @@
 import 'server-only';
 import { randomUUID } from 'node:crypto';
 import { findLogOf } from '@/db/queries/logs';
-import { insertMachine, machineById } from '@/db/queries/machines';
+import { insertMachine, machineById, machinesOf } from '@/db/queries/machines';
 import type { PersonRow } from '@/db/models/people';
 import { authorise } from '@/lib/auth/guard';
-import { invalidInput } from '@/lib/errors';
+import { WitnessmarkError, invalidInput } from '@/lib/errors';
 import type { AuthorPart, OpeningBody, TermsBody } from '@/lib/evidence/format';
 import { now } from '@/lib/ports/clock';
 import { appendEntry } from './append-entry';
@@ -12,6 +12,9 @@ import { ensureShelf } from './create-shelf';
 import { termsForKind } from './machine-kinds';
 import { readMachineInput, type MachineInput, type ReadMachine } from './machine-input';
 import { openLog } from './open-log';
+
+/** Every device of a person reads all of their machines at once. */
+export const mostMachines = 100;
 
 /**
  * Sets up a machine: its row, its owner and entry 0 in one transaction, then its terms as entry 1, and a shelf for
@@ -22,8 +25,10 @@ export async function createMachine(options: {
   input: MachineInput;
 }): Promise<{ machine: string; log: string }> {
   const { person, input } = options;
-  const existing = await machineById(input.machine);
+  // The id is the device's: one that has a record already, be it a shelf's, is asked about like any other.
+  const existing = (await machineById(input.machine)) ?? (await findLogOf(input.machine));
   if (existing !== null) await authorise({ person, action: 'set-up-machine', machine: input.machine });
+  else await demandRoom(person);
   const { machine: read, refused } = readMachineInput(input, now().toISOString());
   const terms = termsForKind(input.kind);
   if (terms === undefined) refused.kind ??= 'Choose what kind of machine it is.';
@@ -41,6 +46,12 @@ export async function createMachine(options: {
   });
   await ensureShelf(person);
   return { machine: input.machine, log };
+}
+
+async function demandRoom(person: PersonRow): Promise<void> {
+  const owned = (await machinesOf(person.id)).filter(({ relation }) => relation === 'owner');
+  if (owned.length < mostMachines) return;
+  throw new WitnessmarkError('too-large', `You have ${owned.length} machines here, and there is room for no more.`);
 }
 
 async function openMachineLog(options: {

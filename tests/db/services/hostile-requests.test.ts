@@ -2,14 +2,17 @@ import { randomUUID } from 'node:crypto';
 import { readdirSync } from 'node:fs';
 import path from 'node:path';
 import { describe, expect, it } from 'vitest';
+import { sealData } from 'iron-session';
 import sharp from 'sharp';
 import { database, write } from '@/db/index';
 import { draftChanges, drafts, uploads } from '@/db/models/drafts';
+import { machines } from '@/db/models/machines';
 import { invitations, packets } from '@/db/models/proof';
 import { people, relations, type PersonRow } from '@/db/models/people';
 import { closeDraft } from '@/db/queries/drafts';
-import { findLogOf } from '@/db/queries/logs';
+import { findLogOf, lastCheckpoint } from '@/db/queries/logs';
 import { foldChanges } from '@/lib/domain/field-changes';
+import { mostKept, readerCookieOptions } from '@/lib/auth/reader-cookie';
 import { env } from '@/lib/env';
 import { now } from '@/lib/ports/clock';
 import { statesTooManyPixels } from '@/lib/ports/image';
@@ -21,8 +24,10 @@ import {
   toleratedLeadMilliseconds,
 } from '@/lib/services/append-draft-changes';
 import { appendEntry } from '@/lib/services/append-entry';
+import { createMachine, mostMachines } from '@/lib/services/create-machine';
 import { createShop } from '@/lib/services/create-shop';
 import { inviteCountersigner } from '@/lib/services/invite-countersigner';
+import { machineInput } from '@/lib/services/machine-input';
 import { moveWorksheet } from '@/lib/services/move-worksheet';
 import { mostUploadsOfADraft, receiveUpload } from '@/lib/services/receive-upload';
 import { queuePacket, mostPacketsADay, mostPacketsWaiting, requestPacket } from '@/lib/services/request-packet';
@@ -142,6 +147,61 @@ describe('what one person may pile up', () => {
     await expect(seal((mostCharactersOfAnEntry * 3) / 4)).rejects.toMatchObject({ code: 'too-large' });
     await expect(seal((mostCharactersOfAnEntry * 3) / 4 - 100)).resolves.toMatchObject({ isNew: true });
   });
+});
+
+describe('somebody who sets up a machine', () => {
+  it('under the id of another’s machine or shelf is told that there is none, and nothing is sealed there', async () => {
+    const theirs = await riderWithMachine();
+    const stranger = await makePerson({ name: 'Teodora Lindqvist' });
+    for (const id of [theirs.machine, theirs.shelf]) {
+      const before = await sizeOf(id);
+      await expect(setUp(stranger, id)).rejects.toMatchObject({ code: 'not-found' });
+      expect(await sizeOf(id)).toBe(before);
+    }
+  });
+
+  it('has room for a hundred', async () => {
+    const { person, machine } = await riderWithMachine();
+    const row = await machines.find({ id: machine });
+    const since = row!.createdAt;
+    for (let count = 1; count < mostMachines; count++) {
+      const id = randomUUID();
+      await machines.insert({ ...row!, id });
+      const relation = { id: randomUUID(), personId: person.id, subjectKind: 'machine', subjectId: id } as const;
+      await relations.insert({ ...relation, relation: 'owner', since, until: null });
+    }
+    await expect(setUp(person, randomUUID())).rejects.toMatchObject({ code: 'too-large' });
+    await expect(setUp(person, machine)).resolves.toMatchObject({ machine });
+  });
+
+  const setUp = (person: PersonRow, machine: string) => {
+    const words = { make: 'Corvane', model: 'Wren 300', kind: 'big V-twin tourer', why: 'new', timeZone: 'UTC' };
+    return createMachine({
+      person,
+      input: machineInput.parse({
+        ...words,
+        machine,
+        distanceUnit: 'km',
+        frameNumber: 'WR300-0042',
+        firstUseOn: '2022-06-14',
+      }),
+    });
+  };
+  const sizeOf = async (subject: string) => {
+    const log = await findLogOf(subject);
+    return (await lastCheckpoint(log!.id))?.size;
+  };
+});
+
+it('keeps as many links and invitations in a reader’s cookie as a browser takes', async () => {
+  const ids = () => Array.from({ length: mostKept }, () => randomUUID());
+  const options = readerCookieOptions();
+  const sealed = await sealData(
+    { links: ids(), invitations: ids() },
+    { password: options.password, ttl: options.ttl ?? 0 },
+  );
+  // RFC 6265 section 6.1: at least 4096 bytes with name and attributes, for which 300 are left here.
+  expect(sealed.length).toBeLessThan(4096 - 300);
 });
 
 describe('an invitation to countersign', () => {
