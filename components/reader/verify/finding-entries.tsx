@@ -3,7 +3,7 @@ import { Hash } from '@/components/ui/hash';
 import { UserText } from '@/components/ui/user-text';
 import { alterationCodes } from '@/lib/evidence/codes';
 import type { EntryFinding, Finding } from '@/lib/evidence/finding';
-import { entryWords, momentWords } from './finding-words';
+import { entryWords, instantWords, momentWords } from './finding-words';
 
 /** Every line of every log in the file, the machine's first: in words, with the technical line beneath. */
 export function FindingEntries({ finding: { entries, logs, outcome } }: { finding: Finding }) {
@@ -59,10 +59,11 @@ function EntryLine({ entry, isAllUnchanged }: { entry: EntryFinding; isAllUnchan
           </p>
         ))}
         <p className="tag">
-          {finished === '' ? '' : `Claimed ${finished}. `}Sealed {sealedAt ?? 'at a time that cannot be read'}.{' '}
+          {finished === '' ? '' : `Claimed ${finished}. `}Sealed{' '}
+          {sealedAt === null ? 'at a time that cannot be read' : instantWords(sealedAt)}.{' '}
           {earliestStamp === null
             ? 'Not proven: no time stamp covers it.'
-            : `Not proven: a time stamp says ${earliestStamp.genTime}, and who made it is not established here.`}
+            : `Not proven: a time stamp says ${instantWords(earliestStamp.genTime)}, and who made it is not established here.`}
           {withheldParts.length === 0 ? '' : ` Withheld: ${withheldParts.join(', ')}.`}
         </p>
         <details className="tag">

@@ -1,5 +1,5 @@
 import { confirmedWords } from '@/components/entry/words';
-import { formatLocalMoment } from '@/lib/domain/instants';
+import { formatInstant, formatLocalMoment } from '@/lib/domain/instants';
 import { formatAmount, formatDistance, isDecimalString, isUnitCode } from '@/lib/domain/units';
 import type { EntryFinding } from '@/lib/evidence/finding';
 import type { EntryKind, LocalMoment } from '@/lib/evidence/format';
@@ -60,6 +60,15 @@ export function momentWords(moment: LocalMoment | undefined): string {
     return `${formatLocalMoment(moment)} (${moment.zone})`;
   } catch {
     return joined(textOf(moment.date), textOf(moment.time), textOf(moment.zone));
+  }
+}
+
+/** A server's instant, in UTC since a file names no zone of its own; one that is none is shown as it stands. */
+export function instantWords(instant: string): string {
+  try {
+    return `${formatInstant(instant, 'UTC')} UTC`;
+  } catch {
+    return instant;
   }
 }
 
