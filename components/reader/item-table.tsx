@@ -1,3 +1,4 @@
+import { printedInterval } from '@/components/schedule/source-words';
 import { Table } from '@/components/ui/table';
 import { UserText } from '@/components/ui/user-text';
 import { formatDistance } from '@/lib/domain/units';
@@ -12,6 +13,7 @@ export function ItemTable({ items }: { items: Viewing['summary']['items'] }) {
         caption="Each item of the schedule, from first use until now"
         columns={[
           { label: 'Item', isRowHead: true },
+          { label: 'Limit' },
           { label: 'Done', isNumber: true },
           { label: 'Longest by distance', isNumber: true },
           { label: 'Longest by time', isNumber: true },
@@ -21,6 +23,7 @@ export function ItemTable({ items }: { items: Viewing['summary']['items'] }) {
           key: item.item,
           cells: [
             <UserText key="title">{item.title}</UserText>,
+            limitOf(item),
             summary.done,
             summary.longestDistance === undefined ? 'not known' : formatDistance(roundedDown(summary.longestDistance)),
             summary.longestMonths > 0 ? `${summary.longestMonths} months` : `${summary.longestDays} days`,
@@ -32,6 +35,14 @@ export function ItemTable({ items }: { items: Viewing['summary']['items'] }) {
       />
     </section>
   );
+}
+
+/** Of an item with a first service alone, that one. */
+function limitOf({ interval, firstService }: Viewing['summary']['items'][number]['item']): string {
+  const words = printedInterval(interval);
+  return words === 'no limit' && firstService !== undefined
+    ? `first service ${printedInterval(firstService)}, then no limit`
+    : words;
 }
 
 /** A distance that was converted has digits nobody read off an instrument. */

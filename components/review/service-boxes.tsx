@@ -15,7 +15,7 @@ function fillWords({ amounts }: Fill): string {
 
 export function drawWords(draw: Draw): string {
   const left = draw.balanceAfter.amount === '0' ? 'nothing' : formatAmount(draw.balanceAfter);
-  return `${formatAmount(draw)} from lot ${draw.purchase.seq}, bought ${formatLocalDate(draw.boughtOn)}; ${left} left`;
+  return `${formatAmount(draw)} from receipt ${draw.purchase.seq}, line ${draw.line}, bought ${formatLocalDate(draw.boughtOn)}; ${left} left`;
 }
 
 function fillNotes(fill: Fill): string[] {

@@ -1,7 +1,7 @@
 import { metricWords } from '@/components/entry/words';
 import { Definition, type DefinitionItem } from '@/components/ui/definition';
 import { UserText } from '@/components/ui/user-text';
-import { formatInstant } from '@/lib/domain/instants';
+import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { debrisGrades } from '@/lib/domain/procedures';
 import { formatBand } from '@/lib/domain/torque';
 import { formatAmount } from '@/lib/domain/units';
@@ -10,7 +10,8 @@ import { drawWords } from './service-boxes';
 
 function torqueWords({ specification, tool, ...torque }: Torque): string {
   const band = specification?.map(formatBand).join(' / ');
-  const calibrated = tool?.calibratedOn === undefined ? '' : `, calibrated ${tool.calibratedOn}`;
+  const calibrated =
+    tool?.calibratedOn === undefined ? '' : `, calibrated ${formatLocalDate(tool.calibratedOn.slice(0, 10))}`;
   return [metricWords(torque), band && `specified ${band}`, tool && `${tool.name}${calibrated}`]
     .filter(Boolean)
     .join('; ');

@@ -96,7 +96,7 @@ function Lane({ lane, span, now, flags }: LaneProps) {
       </span>
       <span
         className={classes(
-          'text-right leading-tight tabular-nums @2xl:col-start-3 @2xl:row-start-1 @2xl:text-left',
+          'text-right leading-tight text-balance tabular-nums @2xl:col-start-3 @2xl:row-start-1 @2xl:text-left',
           isOver ? 'tone-gap' : '',
         )}
       >

@@ -1,4 +1,5 @@
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
+import { debrisGrades } from '@/lib/domain/procedures';
 import { convert, Decimal, formatAmount, formatDistance, groupThousands, units } from '@/lib/domain/units';
 import type {
   Amount,
@@ -64,18 +65,13 @@ export const performerWords: Record<ServiceBody['performedBy'][number]['capacity
   dealer: 'a dealer',
 };
 
-/** The five grades of debris on a magnet or in a filter. */
-const debrisWords: Record<string, string> = {
-  '0': 'clean',
-  '1': 'fine grey paste or fuzz, normal',
-  '2': 'heavy paste',
-  '3': 'slivers or flakes',
-  '4': 'chips or pieces',
-};
-export const gradeWords = (grade: string): string => {
-  const words = debrisWords[grade];
-  return words === undefined ? grade : `${words} (grade ${grade} of 4)`;
-};
+/** Debris on a magnet or in a filter, with its place among the grades. */
+export function gradeWords(grade: string): string {
+  const debris = debrisGrades.find((one) => one.grade === grade);
+  return debris === undefined
+    ? grade
+    : `${debris.title.toLowerCase()} (grade ${grade} of ${debrisGrades.at(-1)?.grade})`;
+}
 
 export function sourceWords({ kind, title, edition, page }: Source): string {
   if (kind === 'common-practice') return 'common practice: replace with your manual’s figure';

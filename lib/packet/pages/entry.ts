@@ -112,8 +112,8 @@ function claimedCells(body: ServiceBody): Cell[] {
 
 function workCells(entry: EntryView, body: ServiceBody, record: RecordView): Cell[] {
   const people = body.performedBy.map(({ person, capacity }) => {
-    const name = record.entries.find(({ author }) => author?.person === person)?.author?.name;
-    return name === undefined ? performerWords[capacity] : `${name} (${performerWords[capacity]})`;
+    const author = record.entries.find((one) => one.author?.person === person)?.author;
+    return `${author?.name ?? person} (${performerWords[capacity]})`;
   });
   const odometer: Cell =
     body.odometer === undefined

@@ -43,7 +43,7 @@ export default async function ViewedEntryPage({ params }: Props) {
       <p className="tag mt-8 max-w-[70ch]">{whatIsShown}</p>
       <Pager
         label="the record"
-        words={`Entry ${entry.seq} of 0 to ${last}`}
+        words={`Entry ${entry.seq}; the newest is entry ${last}`}
         previousHref={entry.seq > 0 ? hrefOf(entry.seq - 1) : undefined}
         previousText={`Entry ${entry.seq - 1}`}
         nextHref={entry.seq < last ? hrefOf(entry.seq + 1) : undefined}
