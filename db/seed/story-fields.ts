@@ -115,7 +115,9 @@ function fieldsOfTask(task: StoryTask, path: string, wanted: Wanted[]): FieldVal
   task.torques?.forEach(([fastener, amount, unit], i) => {
     const at = `${path}/torques/q${i + 1}`;
     fields.push([`${at}/fastener`, fastener], [`${at}/amount`, amount], [`${at}/unit`, unit]);
-    fields.push([`${at}/toolName`, 'click wrench, 10 to 60 lbf·ft'], [`${at}/toolCalibratedOn`, '2023-02-14']);
+    // A wrench is used within its own range.
+    const tool = unit.startsWith('[in_i]') ? 'click wrench, 40 to 200 lbf·in' : 'click wrench, 10 to 60 lbf·ft';
+    fields.push([`${at}/toolName`, tool], [`${at}/toolCalibratedOn`, '2023-02-14']);
   });
   task.inspections?.forEach(([subject, grade, note], i) => {
     const at = `${path}/inspections/i${i + 1}`;
