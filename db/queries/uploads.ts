@@ -13,6 +13,16 @@ export const findFile = (sha256: string): Promise<FileRow | null> => files.find(
 export const filesBySha256 = (hashes: string[], transaction?: Transaction): Promise<FileRow[]> =>
   files.all({ sha256: hashes }, transaction ? { transaction } : {});
 
+/** How many bytes a person's uploads since an instant have together; a file sent twice counts twice. */
+export async function bytesSentBy(personId: string, since: string): Promise<number> {
+  const rows = await database().query<{ bytes: number | null }>(
+    `SELECT SUM(f.bytes) AS bytes FROM uploads u JOIN files f ON f.sha256 = u.sha256
+      WHERE u.person_id = :personId AND u.received_at > :since`,
+    { type: QueryTypes.SELECT, replacements: { personId, since } },
+  );
+  return rows[0]?.bytes ?? 0;
+}
+
 /** Stores an upload and the files it names; a file already on record is left as it is. */
 export async function insertUpload(upload: UploadRow, named: FileRow[], transaction: Transaction): Promise<void> {
   for (const file of named) {

@@ -4,7 +4,7 @@ import { z } from 'zod';
 import { write, type Transaction } from '@/db/index';
 import { drafts, uploads, type DraftRow, type UploadRow } from '@/db/models/drafts';
 import type { PersonRow } from '@/db/models/people';
-import { filesBySha256, findUpload, insertUpload } from '@/db/queries/uploads';
+import { bytesSentBy, filesBySha256, findUpload, insertUpload } from '@/db/queries/uploads';
 import { authorise } from '@/lib/auth/guard';
 import { WitnessmarkError, notFound } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';
@@ -16,6 +16,10 @@ export const largestUploadBytes = 40_000_000;
 
 /** Pictures and papers of one worksheet or receipt. */
 export const mostUploadsOfADraft = 100;
+
+/** What one person may send within a day: some five hundred large photographs. */
+export const mostBytesADay = 4_000_000_000;
+const millisecondsInDay = 24 * 60 * 60 * 1000;
 
 export const uploadQuery = z.object({
   id: z.uuid(),
@@ -69,6 +73,7 @@ export async function receiveUpload(options: {
     const known = await findUpload(query.id);
     if (known !== null) return await firstAnswer(known, blob, draft.id, query.name);
     await demandOpen(draft, query.name);
+    await demandAllowance(person, blob, query.name);
     const mediaType = knownType(blob, query.name);
     return await keep({ person, query, blob, mediaType });
   } catch (error) {
@@ -101,6 +106,15 @@ async function demandOpen(draft: DraftRow | null, name: string, transaction?: Tr
       `${name} was not taken: ${mostUploadsOfADraft} pictures and papers are here already. Begin another worksheet or receipt for it.`,
     );
   }
+}
+
+async function demandAllowance(person: PersonRow, { bytes }: IncomingBlob, name: string): Promise<void> {
+  const since = new Date(now().getTime() - millisecondsInDay).toISOString();
+  if ((await bytesSentBy(person.id, since)) + bytes <= mostBytesADay) return;
+  throw new WitnessmarkError(
+    'too-large',
+    `${name} was not taken: you have sent ${mostBytesADay / 1e9} GB within a day. It stays on your device; send it tomorrow.`,
+  );
 }
 
 async function firstAnswer(known: UploadRow, blob: IncomingBlob, draftId: string, name: string): Promise<UploadAnswer> {

@@ -5,13 +5,14 @@ import { describe, expect, it } from 'vitest';
 import { sealData } from 'iron-session';
 import sharp from 'sharp';
 import { database, write } from '@/db/index';
-import { draftChanges, drafts, uploads } from '@/db/models/drafts';
+import { draftChanges, drafts, files, uploads } from '@/db/models/drafts';
 import { machines } from '@/db/models/machines';
 import { invitations, packets } from '@/db/models/proof';
 import { people, relations, type PersonRow } from '@/db/models/people';
 import { closeDraft } from '@/db/queries/drafts';
 import { findLogOf, lastCheckpoint } from '@/db/queries/logs';
 import { foldChanges } from '@/lib/domain/field-changes';
+import { hashPassword, isPassword, mostWaiting } from '@/lib/auth/password';
 import { mostKept, readerCookieOptions } from '@/lib/auth/reader-cookie';
 import { env } from '@/lib/env';
 import { now } from '@/lib/ports/clock';
@@ -29,7 +30,7 @@ import { createShop } from '@/lib/services/create-shop';
 import { inviteCountersigner } from '@/lib/services/invite-countersigner';
 import { machineInput } from '@/lib/services/machine-input';
 import { moveWorksheet } from '@/lib/services/move-worksheet';
-import { mostUploadsOfADraft, receiveUpload } from '@/lib/services/receive-upload';
+import { mostBytesADay, mostUploadsOfADraft, receiveUpload } from '@/lib/services/receive-upload';
 import { queuePacket, mostPacketsADay, mostPacketsWaiting, requestPacket } from '@/lib/services/request-packet';
 import { mostCharactersOfAnEntry } from '@/lib/services/seal-next';
 import { mostOpenDrafts, startDraft } from '@/lib/services/start-draft';
@@ -333,6 +334,23 @@ describe('an upload', () => {
     expect(readdirSync(path.join(env.dataFolder, 'blobs', 'incoming'))).toEqual([]);
   });
 
+  it('is refused once a person has sent four gigabytes within a day', async () => {
+    const { person, shelf } = await riderWithMachine();
+    const draft = await draftWith({ person, kind: 'receipt', subject: shelf, fields: {} });
+    const bytes = await picture();
+    const { sha256 } = await send(person, { id: randomUUID(), draft, name: 'front.jpg' }, bytes);
+    // The file on record is called so large that this one fills the allowance exactly, then with one byte too many.
+    const refuses = async (recorded: number) => {
+      await files.update({ sha256 }, { bytes: recorded });
+      const id = randomUUID();
+      const answer = await send(person, { id, draft, name: 'back.jpg' }, bytes).catch((error: unknown) => error);
+      await uploads.remove({ id });
+      return answer;
+    };
+    expect(await refuses(mostBytesADay - bytes.length)).toMatchObject({ isNew: true });
+    expect(await refuses(mostBytesADay - bytes.length + 1)).toMatchObject({ code: 'too-large' });
+  });
+
   it('that was decoded while the worksheet was sealed is refused, not left out without a word', async () => {
     const { person, shelf } = await riderWithMachine();
     const draft = await draftWith({ person, kind: 'receipt', subject: shelf, fields: {} });
@@ -369,6 +387,17 @@ describe('a HEIC', () => {
 async function* once(bytes: Buffer): AsyncGenerator<Uint8Array> {
   yield bytes;
 }
+
+it('turns a flood of passwords away instead of keeping it waiting', async () => {
+  const flood = Array.from({ length: mostWaiting + 5 }, () => isPassword('$argon2id$damaged', 'x'));
+  const outcomes = await Promise.allSettled(flood);
+  const busy = outcomes.filter(
+    ({ status, ...rest }) => status === 'rejected' && 'reason' in rest && String(rest.reason).includes('Very many'),
+  );
+  // One is being checked and a hundred wait.
+  expect(busy).toHaveLength(4);
+  await expect(isPassword(await hashPassword('a good long one'), 'a good long one')).resolves.toBe(true);
+});
 
 it('gives a statement’s values to nobody’s log', async () => {
   const { asRefusal } = await import('@/lib/auth/refusal');
