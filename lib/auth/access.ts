@@ -8,7 +8,10 @@ export interface Standing {
 
 export const noStanding: Standing = { machine: 'none', shelf: 'none', shop: 'none', isSteward: false };
 
-/** Every action that is guarded, what it acts on, and who may. A steward has no way into a record. */
+/**
+ * Every action that is guarded, what it acts on, and who may. None of them lets a steward into a record; but where no
+ * SMTP is set up, a steward reads every mail, and with a mailed link for a new password could sign in as its owner.
+ */
 export const access = {
   /** See the machine: its bench, schedule, spec sheet and open worksheets. */
   'read-machine': { on: 'machine', who: ['owner', 'helper'] },

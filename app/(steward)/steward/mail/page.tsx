@@ -35,8 +35,9 @@ export default async function StewardMailPage({ searchParams }: Props) {
           <Notice>Mails are sent by SMTP. Below are only those kept before it was set up.</Notice>
         ) : (
           <Notice tone="warn" title="No mail leaves this installation">
-            Each one is kept as a file in the data folder. Their links act for whoever opens them: pass a mail on to the
-            person it is addressed to, and to nobody else.
+            Each one is kept as a file in the data folder. Their links act for whoever opens them: with a link for a new
+            password, a steward could sign in as its owner. Pass a mail on to the person it is addressed to, and to
+            nobody else; set up SMTP before people keep records of their own here.
           </Notice>
         )}
       </div>
