@@ -83,6 +83,13 @@ export default [
       ],
       '@typescript-eslint/no-explicit-any': 'error',
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_' }],
+      'no-restricted-syntax': [
+        'error',
+        {
+          selector: "CallExpression[callee.name='revalidatePath'][arguments.0.value='/']",
+          message: 'This would make /garage again, with scripts its policy does not know.',
+        },
+      ],
       '@next/next/no-img-element': 'off',
     },
   },

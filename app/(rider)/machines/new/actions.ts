@@ -9,7 +9,8 @@ import { machineInput } from '@/lib/services/machine-input';
 
 export const setUpMachine = formAction({ schema: machineInput }, async ({ input, person }) => {
   const { machine } = await createMachine({ person, input });
-  // The shell's list of machines stands in the layout.
-  revalidatePath('/', 'layout');
+  // The shell's list of machines stands in the layout. Never the root: /garage would be made again, and its scripts
+  // would no longer be those whose hashes its policy names.
+  revalidatePath('/machines', 'layout');
   redirect(paths.bench(machine));
 });
