@@ -64,7 +64,7 @@ export function KeyTable({ keys }: KeyTableProps) {
 
 const commands = [
   { what: 'A packet or a record', command: 'node verify.mjs FILE' },
-  { what: 'With a key you trust', command: 'node verify.mjs FILE --key KEY' },
+  { what: 'With a key you trust, or its fingerprint', command: 'node verify.mjs FILE --key KEY' },
   { what: 'Against an older file', command: 'node verify.mjs FILE --against OLDER' },
   { what: 'With the pictures beside it', command: 'node verify.mjs record.json --files FOLDER' },
   { what: 'For another program', command: 'node verify.mjs FILE --json' },
