@@ -40,6 +40,7 @@ export class Garage {
   #callOff: (() => void) | undefined;
   #sending: Promise<void> | undefined;
   #isWanted = false;
+  #firstRefresh: Promise<void> | undefined;
   #retryIn = firstRetryInMilliseconds;
   view: GarageView = { isReady: false, snapshot: undefined, signal: 'unknown', drafts: [], progress: {} };
 
@@ -56,7 +57,7 @@ export class Garage {
     const snapshot = snapshotFrom(await store.readNote(snapshotNote));
     for (const draft of await store.readDrafts()) await this.#hold(draft);
     this.#show({ snapshot, isReady: true });
-    void this.refresh();
+    this.#firstRefresh = this.refresh();
   }
 
   /** Asks the server for its picture of the garage, sends what waits, and fetches drafts other devices work on. */
@@ -71,11 +72,11 @@ export class Garage {
     await this.#fetchOthers(snapshot);
   }
 
-  async create(kind: DraftKind, subject: string): Promise<OpenDraft> {
+  async create(kind: DraftKind, subject: string, id = mintId()): Promise<OpenDraft> {
     const at = this.parts.now().toISOString();
     const person = this.view.snapshot?.person.id ?? '';
     const draft: KeptDraft = {
-      id: mintId(), kind, subject, person, createdAt: at, changedAt: at, isOnServer: false, state: 'open',
+      id, kind, subject, person, createdAt: at, changedAt: at, isOnServer: false, state: 'open',
     }; // prettier-ignore
     await this.parts.store.putDraft(draft);
     return this.#hold(draft);
@@ -83,6 +84,14 @@ export class Garage {
 
   /** A draft by id: from this device, else from the server. */
   async open(id: string): Promise<Answer<OpenDraft>> {
+    // A draft belongs to a person, so on a fresh device who that is comes first.
+    if (!this.view.snapshot) {
+      const asked = this.#firstRefresh ?? this.refresh();
+      this.#firstRefresh = undefined;
+      await asked;
+    }
+    if (!this.view.snapshot)
+      return { ok: false, why: this.view.signal === 'not-signed-in' ? 'not-signed-in' : 'no-signal' };
     const here = this.#opened.get(id);
     if (here) return { ok: true, value: here };
     const answer = await this.parts.api.readDraft(id);
@@ -97,6 +106,8 @@ export class Garage {
       id, kind, subject, person, createdAt: createdAt ?? at, changedAt: changedAt ?? at,
       isOnServer: true, state: 'open',
     }; // prettier-ignore
+    const meanwhile = this.#opened.get(id);
+    if (meanwhile) return { ok: true, value: meanwhile };
     await this.parts.store.putDraft(draft);
     const opened = await this.#hold(draft);
     await fetchDraft({ ...this.parts.api, readDraft: async () => answer }, opened);
@@ -137,6 +148,8 @@ export class Garage {
     const isGone = !answer.ok && answer.why === 'refused' && ['conflict', 'not-found'].includes(answer.code);
     if (!answer.ok && !isGone) return answer;
     await this.forget(id);
+    // The server's picture still lists it.
+    void this.refresh();
     return { ok: true, value: undefined };
   }
 

@@ -1,9 +1,10 @@
 'use client';
 
-import { useEffect, useRef } from 'react';
+import { useEffect, useRef, useState } from 'react';
 import { worksheetHash } from '@/components/garage/place';
 import { useGarage } from '@/components/garage/garage-context';
 import type { Garage } from '@/components/garage/garage';
+import { mintId } from '@/components/garage/mint-id';
 import type { OpenDraft } from '@/components/garage/open-draft';
 import type { GarageMachine } from '@/components/garage/snapshot';
 import { Button, LinkButton } from '@/components/ui/button';
@@ -15,8 +16,8 @@ import { localDateOf, localTimeOf } from '@/lib/domain/instants';
 import { formatDistance } from '@/lib/domain/units';
 import { DraftLine } from '@/components/garage/draft-list';
 
-async function begin(garage: Garage, machine: GarageMachine): Promise<void> {
-  const opened = await garage.create('worksheet', machine.id);
+async function begin(garage: Garage, machine: GarageMachine, id?: string): Promise<void> {
+  const opened = await garage.create('worksheet', machine.id, id);
   const at = new Date().toISOString();
   const person = garage.view.snapshot?.person.id;
   await opened.set({
@@ -36,17 +37,27 @@ export function NewWorksheet({ machineId }: { machineId: string | undefined }) {
   const { garage, view } = useGarage();
   const machines = view.snapshot?.machines ?? [];
   const machine = machines.find(({ id }) => id === machineId);
+  // The one begun here is no reason to ask, in the moment before its own screen opens.
+  const [ownId] = useState(() => mintId());
   const open = view.drafts.filter(
-    ({ view: { draft } }) => draft.kind === 'worksheet' && draft.state === 'open' && draft.subject === machineId,
+    ({ view: { draft } }) =>
+      draft.kind === 'worksheet' && draft.state === 'open' && draft.subject === machineId && draft.id !== ownId,
   );
   const isBegun = useRef(false);
-  const isFree = machine !== undefined && open.length === 0;
+  // One begun on another device may still be on its way here.
+  const isAwaited =
+    view.signal === 'ok' &&
+    (view.snapshot?.drafts ?? []).some(
+      ({ id, kind, subject }) =>
+        kind === 'worksheet' && subject === machineId && !view.drafts.some((one) => one.view.draft.id === id),
+    );
+  const isFree = machine !== undefined && open.length === 0 && !isAwaited;
   useEffect(() => {
     if (!garage || !machine || !isFree || isBegun.current) return;
     isBegun.current = true;
-    void begin(garage, machine);
-  }, [garage, machine, isFree]);
-  if (!garage || isFree) return <p className="tag">Opening a worksheet</p>;
+    void begin(garage, machine, ownId);
+  }, [garage, machine, isFree, ownId]);
+  if (!garage || isFree || isAwaited) return <p className="tag">Opening a worksheet</p>;
   if (!view.snapshot) return <Unknown />;
   if (machine) return <GoOn garage={garage} machine={machine} open={open} />;
   return (

@@ -197,6 +197,16 @@ describe('sending', () => {
     expect(opened.view.unsentCount).toBe(1);
   });
 
+  it('opened by its address on a fresh device belongs to the person the server names', async () => {
+    const server = new ServerDouble();
+    await server.openDraft({ id: 'w1', kind: 'worksheet', subject: 'sorrel' });
+    const { garage } = device(server);
+    await garage.start();
+    const answer = await garage.open('w1');
+    expect(answer.ok).toBe(true);
+    expect(garage.view.drafts.map(({ view: { draft } }) => [draft.id, draft.person])).toEqual([['w1', 'imke']]);
+  });
+
   it('never sends what another person typed on the same phone', async () => {
     const store = memoryStore();
     const imke = new ServerDouble('imke');
