@@ -75,7 +75,12 @@ export function fieldsOfWork(
           ['finishedAt/time', work.to],
         ] as FieldValues)
       : []),
-    ...(work.by === undefined ? [] : ([[`performedBy/${options.owner}/capacity`, work.by]] as FieldValues)),
+    ...(work.by === undefined
+      ? []
+      : ([
+          ['performedBy/halyard/capacity', work.by],
+          ['performedBy/halyard/name', 'Halyard Cycle Works'],
+        ] as FieldValues)),
   ];
   work.tasks.forEach((task, i) => {
     const path = `tasks/t${i + 1}`;

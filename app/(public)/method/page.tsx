@@ -62,7 +62,8 @@ export default async function MethodPage() {
           A shop can vouch for one entry, in one of four capacities: it did the work, inspected the finished work, was
           present, or checked the papers only. Its statement is an entry of its own and names who invited the shop,
           since when its account exists and whether the steward of this installation has confirmed it. A shop that
-          nobody has confirmed could be the owner, and is shown so.
+          nobody has confirmed could be the owner, and is shown so; whoever runs an installation can confirm a shop on
+          it.
         </p>
       </MethodSection>
       <MethodSection id="check" title="Check it yourself">
