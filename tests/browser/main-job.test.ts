@@ -101,6 +101,7 @@ describe('the main job', () => {
     await page.getByRole('checkbox', { name: 'Engine oil and filter' }).click();
     await screen('Odometer and times');
     await page.getByLabel('Odometer', { exact: true }).fill('1004');
+    await page.getByRole('button', { name: 'Finished now' }).click();
     await page.getByLabel('Notes').fill(everyScript);
     await screen('Engine oil and filter');
     await page.getByLabel('First fill').fill('4,25');
@@ -109,10 +110,11 @@ describe('the main job', () => {
       { name: 'odometer.jpg', mimeType: 'image/jpeg', buffer: await photo('#334455') },
       { name: 'left.jpg', mimeType: 'image/jpeg', buffer: await photo('#775544') },
     ]);
-    await expect.poll(() => page.getByText('On the server').count(), { timeout: 30_000 }).toBe(2);
+    await expect
+      .poll(() => page.getByRole('region', { name: 'Photos' }).getByText('On the server').count(), { timeout: 30_000 })
+      .toBe(2);
     await page.getByRole('status').filter({ hasText: 'Saved on the server' }).waitFor();
     await screen('Summary');
-    await page.screenshot({ path: path.join(folder, 'summary.png'), fullPage: true });
     await page
       .getByRole('link', { name: 'Review and seal' })
       .or(page.getByRole('button', { name: 'Review and seal' }))
