@@ -1,6 +1,6 @@
 'use client';
 
-import { useEffect, useState } from 'react';
+import { useSyncExternalStore } from 'react';
 import { LinkButton } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { PageHead } from '@/components/ui/page-head';
@@ -93,10 +93,11 @@ export function DraftLine({ opened }: { opened: OpenDraft }) {
   );
 }
 
+const neverChanges = () => () => undefined;
+
 function Missing() {
   const { view, isKept } = useGarage();
-  const [offline, setOffline] = useState<string>();
-  useEffect(() => setOffline(offlineProblem()), []);
+  const offline = useSyncExternalStore(neverChanges, offlineProblem, () => undefined);
   const lines = [
     ...(isKept
       ? []

@@ -2,7 +2,8 @@
 
 import { createContext, use, useEffect, useState, useSyncExternalStore, type ReactNode } from 'react';
 import { browserStore } from './browser-store';
-import { Garage, type GarageView } from './garage';
+import { Garage } from './garage';
+import type { GarageView } from './garage-view';
 import { garageApi } from './garage-api';
 import { memoryStore } from './memory-store';
 import type { DraftView, OpenDraft } from './open-draft';

@@ -1,32 +1,12 @@
-import type { DraftKind, DraftStore, KeptDraft, KeptFile } from './draft-store';
-import type { Answer, Failure, GarageApi } from './garage-api';
+import type { DraftKind, KeptDraft, KeptFile } from './draft-store';
+import type { Answer, Failure } from './garage-api';
+import type { GarageParts, GarageView } from './garage-view';
 import { mintId } from './mint-id';
 import { OpenDraft } from './open-draft';
-import { announceDraft, fetchDraft, sendDraft, type Signal } from './send-drafts';
+import { announceDraft, fetchDraft, sendDraft } from './send-drafts';
 import { snapshotFrom, type GarageSnapshot } from './snapshot';
-import { sendWaitingFiles, type SendFile } from './upload-files';
-
-export interface GarageView {
-  /** False until the device's own store has been read. */
-  isReady: boolean;
-  snapshot: GarageSnapshot | undefined;
-  signal: Signal;
-  /** Drafts of this person that are on this device, latest first. */
-  drafts: readonly OpenDraft[];
-  /** Shares sent, 0 to 1, of files on their way. */
-  progress: Readonly<Record<string, number>>;
-}
-
-export interface GarageParts {
-  store: DraftStore;
-  api: GarageApi;
-  send: SendFile;
-  now: () => Date;
-  /** Runs `work` later and gives back how to call it off. */
-  later: (work: () => void, milliseconds: number) => () => void;
-  /** Tells other tabs of the same browser that a draft changed on this device. */
-  tell?: (draftId: string) => void;
-}
+import { sendWaitingFiles } from './upload-files';
+import { without } from './without';
 
 const settleInMilliseconds = 1_200;
 const firstRetryInMilliseconds = 2_000;
@@ -133,8 +113,7 @@ export class Garage {
   async retryFile(opened: OpenDraft, id: string): Promise<void> {
     const file = await this.parts.store.readFile(id);
     if (!file?.blob) return;
-    const { refusal: _old, ...rest } = file;
-    await this.parts.store.putFile({ ...rest, state: 'waiting' });
+    await this.parts.store.putFile({ ...without(file, 'refusal'), state: 'waiting' });
     await opened.set({ [`photos/${id}/removed`]: null });
     await this.#showFiles(opened);
     this.sendSoon(0);
@@ -231,7 +210,7 @@ export class Garage {
   async #sendFiles(opened: OpenDraft): Promise<Failure | undefined> {
     const answer = await sendWaitingFiles(this.parts.store, opened.view.draft.id, this.parts.send, {
       progress: (id, share) => {
-        const { [id]: _old, ...others } = this.view.progress;
+        const others = without(this.view.progress, id);
         this.#show({ progress: share === undefined ? others : { ...others, [id]: share } });
       },
       changed: () => this.#showFiles(opened),

@@ -1,6 +1,7 @@
 import { foldChanges, type FieldChange, type Fields } from '@/lib/domain/field-changes';
 import type { DraftStore, KeptChange, KeptDraft, KeptFile, UploadAnswer } from './draft-store';
 import { mintId } from './mint-id';
+import { without } from './without';
 
 /** One draft at one moment, for the screen. A new object whenever anything changed. */
 export interface DraftView {
@@ -163,7 +164,7 @@ export class OpenDraft {
   }
 
   async clearRefusal(): Promise<void> {
-    const { refusal: _over, ...draft } = this.view.draft;
+    const draft = without(this.view.draft, 'refusal');
     this.#show({ draft });
     await this.store.putDraft(draft);
   }

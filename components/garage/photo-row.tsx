@@ -1,6 +1,6 @@
 'use client';
 
-import { useEffect, useState } from 'react';
+import { useCallback } from 'react';
 import { Button } from '@/components/ui/button';
 import { ProgressBar } from '@/components/ui/progress-bar';
 import { UserText } from '@/components/ui/user-text';
@@ -75,29 +75,27 @@ function whereWords({ file, upload }: Photo, share: number | undefined): string 
 
 function PhotoPicture({ photo }: { photo: Photo }) {
   const { view } = useDraftInScreen();
-  const [local, setLocal] = useState<string>();
   const { file } = photo;
   // A browser that lost a picture's bytes gives back something that is no blob.
   const blob = file?.blob instanceof Blob && photo.mediaType.startsWith('image/') ? file.blob : undefined;
-  useEffect(() => {
-    if (!blob) return;
-    const url = URL.createObjectURL(blob);
-    setLocal(url);
-    return () => URL.revokeObjectURL(url);
-  }, [blob]);
+  const show = useCallback(
+    (image: HTMLImageElement | null) => {
+      if (!blob || !image) return;
+      const url = URL.createObjectURL(blob);
+      image.src = url;
+      return () => URL.revokeObjectURL(url);
+    },
+    [blob],
+  );
   const answer = photo.upload ?? file?.answer;
-  const source = blob
-    ? local
-    : answer?.thumbSha256
-      ? paths.api.file(answer.sha256, 'thumb', view.draft.subject)
-      : undefined;
-  if (!source) {
+  const thumb = answer?.thumbSha256 ? paths.api.file(answer.sha256, 'thumb', view.draft.subject) : undefined;
+  if (!blob && !thumb) {
     return (
       <p className="tag flex min-h-20 items-center justify-center border border-line bg-sheet p-2">
         {photo.mediaType === 'application/pdf' ? 'PDF' : 'No preview'}
       </p>
     );
   }
-  // eslint-disable-next-line @next/next/no-img-element -- blobs and guarded files do not pass through an optimiser
-  return <img src={source} alt="" className="max-h-40 w-full border border-line bg-sheet object-contain sm:max-h-28" />;
+  const look = 'max-h-40 w-full border border-line bg-sheet object-contain sm:max-h-28';
+  return blob ? <img key="here" ref={show} alt="" className={look} /> : <img src={thumb} alt="" className={look} />;
 }

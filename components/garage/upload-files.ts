@@ -1,6 +1,7 @@
 import { paths } from '@/lib/paths';
 import type { DraftStore, KeptFile, UploadAnswer } from './draft-store';
 import { failureOf, type Answer } from './garage-api';
+import { without } from './without';
 
 /** Sends one file and tells how far it is, 0 to 1; tests give their own. */
 export type SendFile = (
@@ -57,8 +58,7 @@ export async function sendWaitingFiles(
     const current = await store.readFile(file.id);
     if (!current) continue;
     if (answer.ok) {
-      const { blob: _sent, ...rest } = current;
-      await store.putFile({ ...rest, state: 'sent', answer: answer.value });
+      await store.putFile({ ...without(current, 'blob'), state: 'sent', answer: answer.value });
     } else if (answer.why === 'refused') {
       await store.putFile({ ...current, state: 'refused', refusal: answer.sentence });
     } else {
