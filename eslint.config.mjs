@@ -13,8 +13,6 @@ const rooms = [
   ['db', 'db/**'],
   ['components', 'components/**'],
   ['app', 'app/**'],
-  ['app', 'proxy.ts'],
-  ['app', 'instrumentation.ts'],
   ['scripts', 'scripts/**'],
   ['tests', 'tests/**'],
 ];
@@ -57,7 +55,7 @@ const pure = {
   ],
 };
 
-export default [
+const config = [
   {
     ignores: ['node_modules/**', '.next*/**', 'data/**', 'tmp/**', 'scripts/verify.mjs', 'public/**', 'next-env.d.ts'],
   },
@@ -82,7 +80,7 @@ export default [
         },
       ],
       '@typescript-eslint/no-explicit-any': 'error',
-      '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_' }],
+      '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_$' }],
       'no-restricted-syntax': [
         'error',
         {
@@ -103,3 +101,5 @@ export default [
     rules: { 'react-hooks/rules-of-hooks': 'off' },
   },
 ];
+
+export default config;
