@@ -6,12 +6,12 @@ import { shellOf } from '@/lib/services/read-shell';
 /** The rider's pages: somebody signed in, in the shell with their machines. Each page guards its own object. */
 export default async function RiderLayout({ children }: { children: ReactNode }) {
   const person = await requirePerson();
-  const { machines, shelf, demo } = await shellOf(person);
+  const { machines, shelf, shop, demo } = await shellOf(person);
   return (
     <RiderShell
       machines={machines}
       shelf={shelf}
-      person={{ name: person.name, isSteward: person.isSteward }}
+      person={{ name: person.name, isSteward: person.isSteward, shop }}
       demo={demo}
     >
       {children}

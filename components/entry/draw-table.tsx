@@ -2,7 +2,7 @@ import Link from 'next/link';
 import { Table } from '@/components/ui/table';
 import { UserText } from '@/components/ui/user-text';
 import { formatLocalDate } from '@/lib/domain/instants';
-import { formatAmount } from '@/lib/domain/units';
+import { formatAmount, readableAmount } from '@/lib/domain/units';
 import type { Draw, ServiceBody } from '@/lib/evidence/format';
 import type { EntryLinks } from './entry-facts';
 
@@ -31,7 +31,7 @@ export function DrawTable({ body, receipt }: { body: ServiceBody; receipt: Entry
             <UserText key="product">{[draw.product, draw.grade].filter(Boolean).join(', ')}</UserText>,
             <UserText key="for">{what}</UserText>,
             formatAmount(draw),
-            draw.balanceAfter.amount === '0' ? 'nothing' : formatAmount(draw.balanceAfter),
+            draw.balanceAfter.amount === '0' ? 'nothing' : readableAmount(draw.balanceAfter),
             formatLocalDate(draw.boughtOn),
             <Receipt key="receipt" draw={draw} receipt={receipt} />,
           ],

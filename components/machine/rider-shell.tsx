@@ -10,13 +10,13 @@ const placesByStep: Record<string, Place> = {
   'spec-sheet': 'spec-sheet',
   settings: 'spec-sheet',
   proof: 'proof',
-  'at-the-desk': 'proof',
 };
 
 function placeOf(steps: string[]): Place | undefined {
   const [first, second, third] = steps;
   if (first === 'machines') return second === 'new' ? undefined : third === undefined ? 'bench' : placesByStep[third];
   if (first === 'shelves') return 'shelf';
+  if (first === 'shops') return 'shop';
   if (first === 'worksheets') return 'worksheet';
   if (first === 'account') return 'account';
   return first === 'steward' ? 'steward' : undefined;

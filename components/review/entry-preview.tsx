@@ -46,7 +46,8 @@ export function EntryPreview({ body, notes, attachments, machine }: EntryPreview
             <li key={attachment.sha256} className="w-28">
               <Thumb
                 src={paths.api.file(attachment.sha256, 'thumb', machine)}
-                alt={roleWords[attachment.role]}
+                // The words beneath a picture say what it is; said twice they are only noise.
+                alt={kindOf(attachment) === 'pdf' ? roleWords[attachment.role] : ''}
                 kind={kindOf(attachment)}
               />
               <span className="tag mt-1 block">

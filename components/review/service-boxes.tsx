@@ -2,7 +2,7 @@ import { metricWords } from '@/components/entry/words';
 import { Box, Boxes } from '@/components/ui/box';
 import { UserText } from '@/components/ui/user-text';
 import { formatLocalDate, formatLocalMoment } from '@/lib/domain/instants';
-import { formatAmount, formatDistance, sumAmounts } from '@/lib/domain/units';
+import { formatAmount, formatDistance, readableAmount, sumAmounts } from '@/lib/domain/units';
 import type { Draw, Fill, LocalMoment, ServiceBody } from '@/lib/evidence/format';
 
 /** `4.25 + 0.25 US qt`; amounts of several units are each given theirs. */
@@ -14,8 +14,8 @@ function fillWords({ amounts }: Fill): string {
 }
 
 export function drawWords(draw: Draw): string {
-  const left = draw.balanceAfter.amount === '0' ? 'nothing' : formatAmount(draw.balanceAfter);
-  return `${formatAmount(draw)} from receipt ${draw.purchase.seq}, line ${draw.line}, bought ${formatLocalDate(draw.boughtOn)}; ${left} left`;
+  const left = draw.balanceAfter.amount === '0' ? 'nothing' : readableAmount(draw.balanceAfter);
+  return `${readableAmount(draw)} from receipt ${draw.purchase.seq}, line ${draw.line}, bought ${formatLocalDate(draw.boughtOn)}; ${left} left`;
 }
 
 function fillNotes(fill: Fill): string[] {

@@ -16,7 +16,8 @@ export interface AppShellProps {
   machines: ShellMachine[];
   /** Id of the person's shelf. */
   shelf?: string | undefined;
-  person: { name: string; isSteward: boolean };
+  /** `shop`: id of the shop the person answers for. */
+  person: { name: string; isSteward: boolean; shop?: string | undefined };
   current?: Place | undefined;
   demo: Demo;
   children: ReactNode;
@@ -139,6 +140,7 @@ function PersonLinks({
   className,
 }: Pick<AppShellProps, 'person' | 'current'> & { className: string }) {
   const links: PlaceLink[] = [
+    ...(person.shop === undefined ? [] : [{ place: 'shop', text: 'Shop', href: paths.shop(person.shop) } as const]),
     { place: 'account', text: 'Account', href: paths.account },
     ...(person.isSteward ? [{ place: 'steward', text: 'Installation', href: paths.steward } as const] : []),
   ];

@@ -1,7 +1,17 @@
 import { paths } from '@/lib/paths';
 
 export type Place =
-  'bench' | 'record' | 'schedule' | 'spec-sheet' | 'shelf' | 'proof' | 'worksheet' | 'receipt' | 'account' | 'steward';
+  | 'bench'
+  | 'record'
+  | 'schedule'
+  | 'spec-sheet'
+  | 'shelf'
+  | 'proof'
+  | 'worksheet'
+  | 'receipt'
+  | 'account'
+  | 'steward'
+  | 'shop';
 
 export interface PlaceLink {
   place: Place;

@@ -1,9 +1,9 @@
 import type { Amount, UnitCode } from '@/lib/evidence/format';
 import { formatLocalDate } from '@/lib/domain/instants';
 import { balanceAfter, hasLeft, type Lot } from '@/lib/domain/shelf';
-import { compareAmounts, Decimal, formatAmount, sumAmounts, units } from '@/lib/domain/units';
+import { compareAmounts, Decimal, formatAmount, readableAmount, sumAmounts, units } from '@/lib/domain/units';
 import type { Worksheet, WorksheetDraw } from '@/lib/domain/worksheet';
-import { readableAmount, readAmount } from './fill-figures';
+import { readAmount } from './fill-figures';
 
 /** The draws of one item, named by its path. */
 export function itemDraws(worksheet: Worksheet, item: string): WorksheetDraw[] {

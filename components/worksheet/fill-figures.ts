@@ -1,7 +1,7 @@
 import type { Amount, FluidPoint, UnitCode } from '@/lib/evidence/format';
 import { fillTolerancePercent } from '@/lib/domain/checks';
 import { pourFrom, type Lot } from '@/lib/domain/shelf';
-import { convert, Decimal, formatAmount, formatConverted, parseNumber, sumAmounts, units } from '@/lib/domain/units';
+import { convert, Decimal, formatAmount, parseNumber, readableAmount, sumAmounts, units } from '@/lib/domain/units';
 import type { WorksheetAmount } from '@/lib/domain/worksheet';
 
 /** An amount as typed, once it can be read; undefined while it cannot. */
@@ -52,14 +52,6 @@ export function companionUnit(unit: UnitCode): UnitCode {
   if (unit === 'mL') return '[foz_us]';
   if (unit === 'L') return '[qt_us]';
   return unit === '[foz_us]' || unit === '[foz_br]' ? 'mL' : 'L';
-}
-
-/** For reading off a bottle: what a conversion leaves with many decimals is rounded, and says so. */
-export function readableAmount({ amount, unit }: Amount): string {
-  if (new Decimal(amount).decimalPlaces() <= 3) return formatAmount({ amount, unit });
-  const least = new Decimal(10).pow(-units[unit].decimals);
-  if (new Decimal(amount).abs().lt(least)) return `less than ${formatConverted(least, unit, unit)}`;
-  return `about ${formatConverted(amount, unit, unit)}`;
 }
 
 /**

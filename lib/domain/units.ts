@@ -75,6 +75,18 @@ export function formatConverted(amount: DecimalString | Decimal, from: UnitCode,
 }
 
 /**
+ * An amount to be read: as it is, or rounded and said to be where a conversion left it with many decimals.
+ *
+ * @example readableAmount({ amount: '473.182359875', unit: 'mL' }) // 'about 473 mL'
+ */
+export function readableAmount({ amount, unit }: Amount): string {
+  if (new Decimal(amount).decimalPlaces() <= 3) return formatAmount({ amount, unit });
+  const least = new Decimal(10).pow(-units[unit].decimals);
+  if (new Decimal(amount).abs().lt(least)) return `less than ${formatConverted(least, unit, unit)}`;
+  return `about ${formatConverted(amount, unit, unit)}`;
+}
+
+/**
  * A whole-number figure with thousands set off by commas, as odometers and distances are shown.
  *
  * @example groupThousands('10238.5') // '10,238.5'

@@ -1,4 +1,5 @@
 import 'server-only';
+import { shopOf } from '@/db/queries/shops';
 import { shelvesOf } from '@/db/queries/shelves';
 import type { PersonRow } from '@/db/models/people';
 import { env } from '@/lib/env';
@@ -8,6 +9,8 @@ export interface ShellData {
   machines: { id: string; name: string }[];
   /** The person's first shelf. */
   shelf: string | undefined;
+  /** The shop the person answers for. */
+  shop: string | undefined;
   demo: 'none' | 'demo' | 'demo-times-injected';
 }
 
@@ -15,10 +18,12 @@ export interface ShellData {
 export async function shellOf(person: PersonRow): Promise<ShellData> {
   const machines = await listMachines(person);
   const [shelf] = await shelvesOf(person.id);
+  const shop = await shopOf(person.id);
   const isInjected = machines.some((machine) => machine.timesInjected);
   return {
     machines: machines.map(({ id, name }) => ({ id, name })),
     shelf: shelf?.id,
+    shop: shop?.id,
     demo: isInjected ? 'demo-times-injected' : env.isDemo ? 'demo' : 'none',
   };
 }

@@ -1,11 +1,12 @@
 import { redirect } from 'next/navigation';
 import { requirePerson } from '@/lib/auth/session';
 import { paths } from '@/lib/paths';
-import { listMachines } from '@/lib/services/list-machines';
+import { shellOf } from '@/lib/services/read-shell';
 
-/** The bench of the first machine, or the page that sets one up. */
+/** The bench of the first machine; a technician without one begins at the shop, anybody else by setting one up. */
 export default async function StartPage() {
-  const person = await requirePerson();
-  const [first] = await listMachines(person);
-  redirect(first === undefined ? paths.newMachine : paths.bench(first.id));
+  const { machines, shop } = await shellOf(await requirePerson());
+  const [first] = machines;
+  if (first !== undefined) redirect(paths.bench(first.id));
+  redirect(shop === undefined ? paths.newMachine : paths.shop(shop));
 }

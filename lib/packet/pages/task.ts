@@ -1,6 +1,6 @@
 import 'server-only';
 import { formatLocalDate } from '@/lib/domain/instants';
-import { formatAmount, sumAmounts, units } from '@/lib/domain/units';
+import { formatAmount, readableAmount, sumAmounts, units } from '@/lib/domain/units';
 import type { Draw, Fill, Inspection, LevelCheck, PartUse, Task, Torque } from '@/lib/evidence/format';
 import type { RecordView } from '@/lib/services/record-view';
 import { purchasesOf, receiptAnchor, receiptName } from '../content';
@@ -111,7 +111,7 @@ function drawDraws(sheet: Sheet, task: Partial<Task>, record: RecordView): void 
       `${receiptName(draw.purchase)} line ${draw.line}: ${productWords(draw.product, draw.grade)}`,
       formatLocalDate(draw.boughtOn),
       formatAmount({ amount: draw.amount, unit: draw.unit }),
-      formatAmount(draw.balanceAfter),
+      readableAmount(draw.balanceAfter),
       receiptPage(sheet, draw, record),
     ]),
   );

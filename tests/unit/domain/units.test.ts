@@ -9,6 +9,7 @@ import {
   exactIn,
   formatAmount,
   formatConverted,
+  readableAmount,
   formatDistance,
   isDecimalString,
   parseAmount,
@@ -117,6 +118,19 @@ describe('formatAmount', () => {
     expect(formatDistance({ value: '999', unit: '[mi_i]' })).toBe('999 mi');
     expect(formatDistance({ value: '10238.5', unit: '[mi_i]' })).toBe('10,238.5 mi');
     expect(formatDistance({ amount: '1000000', unit: 'km' })).toBe('1,000,000 km');
+  });
+});
+
+describe('readableAmount', () => {
+  // 16 US fl oz of 29.5735295625 mL (NIST Handbook 44, appendix C).
+  it('rounds what a conversion left with many decimals, and says so', () => {
+    expect(readableAmount({ amount: '473.182359875', unit: 'mL' })).toBe('about 473 mL');
+    expect(readableAmount({ amount: '0.000182359875', unit: 'mL' })).toMatch(/^less than /);
+  });
+
+  it('leaves what a person typed as it is, up to three decimals', () => {
+    expect(readableAmount({ amount: '4.125', unit: '[qt_us]' })).toBe('4.125 US qt');
+    expect(readableAmount({ amount: '4.1251', unit: '[qt_us]' })).toMatch(/^about 4\.1/);
   });
 });
 
