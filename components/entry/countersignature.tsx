@@ -4,7 +4,8 @@ import { UserText } from '@/components/ui/user-text';
 import { formatInstant, formatLocalDate, localDateOf } from '@/lib/domain/instants';
 import type { AuthorPart, CountersignatureBody } from '@/lib/evidence/format';
 import type { EntryLinks } from './entry-facts';
-import { capacityWords, confirmedWords } from './words';
+import { capacityWords } from '@/lib/domain/record-words';
+import { confirmedWords } from './words';
 
 export interface CountersignatureProps {
   seq: number;

@@ -2,7 +2,8 @@ import { Hash } from '@/components/ui/hash';
 import { UserText } from '@/components/ui/user-text';
 import type { Attachment } from '@/lib/evidence/format';
 import { plateOrder, type EntryLinks } from './entry-facts';
-import { bytesWords, plateKind, removedWords, roleWords, takenWords } from './words';
+import { roleWords } from '@/lib/domain/record-words';
+import { bytesWords, plateKind, removedWords, takenWords } from './words';
 
 export interface PlatesProps {
   attachments: Attachment[];

@@ -6,7 +6,8 @@ import { formatAmount, formatDistance, sumAmounts } from '@/lib/domain/units';
 import type { Attachment, ServiceBody } from '@/lib/evidence/format';
 import type { EntryView } from '@/lib/services/record-view';
 import type { EntryFacts, EntryLinks } from './entry-facts';
-import { authorWords, capacityWords, counted, plateKind, roleWords, stateWords } from './words';
+import { capacityWords, roleWords } from '@/lib/domain/record-words';
+import { authorWords, counted, plateKind, stateWords } from './words';
 
 export interface RecordLineProps {
   entry: EntryView;

@@ -1,29 +1,7 @@
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { convert, Decimal, formatAmount, units } from '@/lib/domain/units';
-import type { Amount, Attachment, AttachmentRole, AuthorPart, CountersignCapacity } from '@/lib/evidence/format';
+import type { Amount, Attachment, AuthorPart } from '@/lib/evidence/format';
 import type { EntryView, TokenView } from '@/lib/services/record-view';
-
-export const roleWords: Record<AttachmentRole, string> = {
-  'receipt-front': 'Receipt, front',
-  'receipt-back': 'Receipt, back',
-  'receipt-page': 'Receipt, page',
-  odometer: 'Odometer',
-  'as-found': 'As found',
-  'as-left': 'As left',
-  magnet: 'Magnet',
-  part: 'Part',
-  'manual-page': 'Manual page',
-  'work-order': 'Work order',
-  'lab-report': 'Laboratory report',
-  document: 'Document',
-};
-
-export const capacityWords: Record<CountersignCapacity, string> = {
-  'did-the-work': 'did the work',
-  inspected: 'inspected the finished work',
-  'was-present': 'was present',
-  'checked-papers': 'checked the papers only',
-};
 
 export const stateWords: Record<EntryView['state'], string> = {
   sealed: 'sealed',

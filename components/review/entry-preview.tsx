@@ -1,24 +1,10 @@
 import { Thumb } from '@/components/ledger/thumb';
+import { roleWords } from '@/lib/domain/record-words';
 import { UserText } from '@/components/ui/user-text';
 import type { Attachment, ServiceBody } from '@/lib/evidence/format';
 import { paths } from '@/lib/paths';
 import { ServiceBoxes } from './service-boxes';
 import { TaskLines } from './task-lines';
-
-const roleWords: Record<Attachment['role'], string> = {
-  'receipt-front': 'Receipt, front',
-  'receipt-back': 'Receipt, back',
-  'receipt-page': 'Receipt',
-  odometer: 'Odometer',
-  'as-found': 'As found',
-  'as-left': 'As left',
-  magnet: 'Magnet',
-  part: 'Part',
-  'manual-page': 'Manual page',
-  'work-order': 'Work order',
-  'lab-report': 'Lab report',
-  document: 'Document',
-};
 
 function kindOf({ role, mediaType }: Attachment): 'pdf' | 'receipt' | 'photo' {
   if (mediaType === 'application/pdf') return 'pdf';

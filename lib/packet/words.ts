@@ -4,8 +4,6 @@ import { convert, Decimal, formatAmount, formatDistance, groupThousands, units }
 import type {
   Amount,
   Attachment,
-  AttachmentRole,
-  CountersignCapacity,
   EntryKind,
   Interval,
   Odometer,
@@ -13,21 +11,6 @@ import type {
   ServiceBody,
   Source,
 } from '@/lib/evidence/format';
-
-export const roleWords: Record<AttachmentRole, string> = {
-  'receipt-front': 'Receipt, front',
-  'receipt-back': 'Receipt, back',
-  'receipt-page': 'Receipt, page',
-  odometer: 'Odometer',
-  'as-found': 'As found',
-  'as-left': 'As left',
-  magnet: 'Magnet',
-  part: 'Part',
-  'manual-page': 'Manual page',
-  'work-order': 'Work order',
-  'lab-report': 'Laboratory report',
-  document: 'Document',
-};
 
 export const kindWords: Record<EntryKind, string> = {
   opening: 'Opening of the record',
@@ -43,13 +26,6 @@ export const kindWords: Record<EntryKind, string> = {
   purchase: 'Purchase',
   disposal: 'Disposal',
   correction: 'Correction',
-};
-
-export const capacityWords: Record<CountersignCapacity, string> = {
-  'did-the-work': 'did the work',
-  inspected: 'inspected the finished work',
-  'was-present': 'was present',
-  'checked-papers': 'checked the papers only',
 };
 
 /** How far a shop is known to anybody but the owner who invited it. */

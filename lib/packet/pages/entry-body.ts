@@ -1,3 +1,4 @@
+import { capacityWords } from '@/lib/domain/record-words';
 import 'server-only';
 import { formatLocalDate, isLocalDate, localDateOf } from '@/lib/domain/instants';
 import { isUnitCode } from '@/lib/domain/units';
@@ -6,7 +7,7 @@ import type { EntryView } from '@/lib/services/record-view';
 import type { PacketContent } from '../content';
 import { drawBoxes, type Cell } from '../sheet/boxes';
 import type { Sheet } from '../sheet/sheet';
-import { capacityWords, confirmedWords, counted, odometerWords, sentence } from '../words';
+import { confirmedWords, counted, odometerWords, sentence } from '../words';
 import { drawTask } from './task';
 
 const startWords: Record<OpeningBody['recordStarts']['why'], string> = {

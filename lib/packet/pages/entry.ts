@@ -1,3 +1,4 @@
+import { capacityWords } from '@/lib/domain/record-words';
 import 'server-only';
 import { checkTitle } from '@/lib/domain/checks';
 import { describeDelay, formatInstant, formatLocalDate, formatLocalMoment, localDateOf } from '@/lib/domain/instants';
@@ -11,7 +12,7 @@ import { drawMark, markWords } from '../sheet/mark';
 import { drawPlates } from '../sheet/plates';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
-import { capacityWords, confirmedWords, kindWords, lowered, odometerWords, performerWords, sentence } from '../words';
+import { confirmedWords, kindWords, lowered, odometerWords, performerWords, sentence } from '../words';
 import { drawBody } from './entry-body';
 import { drawLeaf, provenCell } from './leaf';
 import { platesOf } from './plates-of';

@@ -2,7 +2,8 @@ import { groupHash } from '@/lib/domain/hash-words';
 import type { Attachment } from '@/lib/evidence/format';
 import type { PacketContent } from '../content';
 import type { Plate } from '../sheet/plates';
-import { bytesWords, roleWords, takenWords } from '../words';
+import { roleWords } from '@/lib/domain/record-words';
+import { bytesWords, takenWords } from '../words';
 
 /** The attachments of an entry or a purchase as plates, numbered `prefix.1`, `prefix.2`. */
 export function platesOf(prefix: string, attachments: Attachment[], { files, zone }: PacketContent): Plate[] {

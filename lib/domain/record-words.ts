@@ -1,0 +1,25 @@
+import type { AttachmentRole, CountersignCapacity } from '@/lib/evidence/format';
+
+/** What a picture or paper is, on screen and on paper alike. */
+export const roleWords: Record<AttachmentRole, string> = {
+  'receipt-front': 'Receipt, front',
+  'receipt-back': 'Receipt, back',
+  'receipt-page': 'Receipt, page',
+  odometer: 'Odometer',
+  'as-found': 'As found',
+  'as-left': 'As left',
+  magnet: 'Magnet',
+  part: 'Part',
+  'manual-page': 'Manual page',
+  'work-order': 'Work order',
+  'lab-report': 'Laboratory report',
+  document: 'Document',
+};
+
+/** In which capacity a shop vouches, as it follows the shop's name. */
+export const capacityWords: Record<CountersignCapacity, string> = {
+  'did-the-work': 'did the work',
+  inspected: 'inspected the finished work',
+  'was-present': 'was present',
+  'checked-papers': 'checked the papers only',
+};
