@@ -20,7 +20,7 @@ export function ReceiptFields() {
   return (
     <div className="space-y-5">
       <DraftText path="supplier/name" label="Supplier" isOptional />
-      <div className="grid grid-cols-[minmax(0,3fr)_minmax(0,2fr)] gap-3">
+      <div className="grid grid-cols-2 gap-3 *:min-w-0">
         <DraftText path="boughtOn/date" label="Date" type="date" />
         <DraftText path="boughtOn/time" label="Time" type="time" isOptional />
       </div>

@@ -67,7 +67,7 @@ function Moment({ name, label, now }: { name: 'startedAt' | 'finishedAt'; label:
   return (
     <fieldset>
       <legend className="figure mb-2 text-xl">{label}</legend>
-      <div className="grid grid-cols-[minmax(0,3fr)_minmax(0,2fr)] gap-3">
+      <div className="grid grid-cols-2 gap-3 *:min-w-0">
         <DraftText path={`${name}/date`} label="Date" type="date" />
         <DraftText path={`${name}/time`} label="Time" type="time" isOptional />
       </div>
