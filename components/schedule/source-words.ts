@@ -1,9 +1,10 @@
+import { presetNotice } from '@/lib/domain/presets';
 import { formatAmount, formatDistance } from '@/lib/domain/units';
 import type { Amount, Interval, ScheduleItem, Source } from '@/lib/evidence/format';
 
 /** Where a figure comes from, in words. */
 export function sourceWords({ kind, title, edition, page }: Source): string {
-  if (kind === 'common-practice') return 'Common practice: replace with your manual’s figure.';
+  if (kind === 'common-practice') return presetNotice;
   const named = [title, edition, page === undefined ? undefined : `page ${page}`].filter(Boolean).join(', ');
   if (named !== '') return named;
   return kind === 'manual' ? 'Manual, not named' : 'The owner’s own figure';

@@ -5,9 +5,6 @@ import { files, uploads, type FileRow, type UploadRow } from '../models/drafts';
 
 export const findUpload = (id: string): Promise<UploadRow | null> => uploads.find({ id });
 
-export const uploadsOfDraft = (draftId: string, transaction?: Transaction): Promise<UploadRow[]> =>
-  uploads.all({ draftId }, { order: [['receivedAt', 'ASC']], ...(transaction ? { transaction } : {}) });
-
 export const findFile = (sha256: string): Promise<FileRow | null> => files.find({ sha256 });
 
 export const filesBySha256 = (hashes: string[], transaction?: Transaction): Promise<FileRow[]> =>

@@ -102,9 +102,6 @@ export const counted = (count: number, one: string, many: string): string => `${
 
 export const sentence = (text: string): string => text.charAt(0).toUpperCase() + text.slice(1);
 
-export const groupOf = (text: string, size: number): string =>
-  text.match(new RegExp(`.{1,${size}}`, 'g'))?.join(' ') ?? '';
-
 /** `1234567` as "1.2 MB". */
 export function bytesWords(bytes: number): string {
   if (bytes < 1000) return `${bytes} bytes`;

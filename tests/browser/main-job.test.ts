@@ -54,6 +54,29 @@ async function newestMail(to: string): Promise<string> {
   throw new Error(`No mail to ${to}.`);
 }
 
+/** Drafts, changes, files and notes in the garage's IndexedDB. */
+const keptOnDevice = () =>
+  page.evaluate(
+    () =>
+      new Promise<number>((resolve, reject) => {
+        const opening = indexedDB.open('witnessmark-garage');
+        opening.onerror = () => reject(opening.error);
+        opening.onsuccess = () => {
+          const names = [...opening.result.objectStoreNames];
+          const reading = opening.result.transaction(names);
+          let total = 0;
+          for (const name of names) {
+            const counting = reading.objectStore(name).count();
+            counting.onsuccess = () => (total += counting.result);
+          }
+          reading.oncomplete = () => {
+            opening.result.close();
+            resolve(total);
+          };
+        };
+      }),
+  );
+
 describe('the main job', () => {
   it('begins with an account, confirmed by mail', async () => {
     await page.goto(`${server.url}/sign-up`);
@@ -163,5 +186,15 @@ describe('the main job', () => {
     await page.getByRole('dialog').getByRole('button', { name: 'Revoke' }).click();
     await expect.poll(async () => (await reader.reload())?.status()).toBe(410);
     await reader.context().close();
+  });
+
+  it('ends with signing out, which leaves nothing of the rider on the device', async () => {
+    await page.goto(`${server.url}/garage`);
+    await page.getByText('Sorrel').first().waitFor();
+    expect(await keptOnDevice()).toBeGreaterThan(0);
+    await page.goto(`${server.url}/account`);
+    await page.getByRole('button', { name: 'Sign out' }).click();
+    await page.waitForURL(/sign-in|\/$/);
+    expect(await keptOnDevice()).toBe(0);
   });
 });

@@ -80,9 +80,3 @@ export function faceFor(name: FaceName, grapheme: string): Face | null {
   chosen.set(key, found);
   return found;
 }
-
-/** Heights of a face in parts of its size, for placing a line in its box. */
-export function heightsOf(name: FaceName): { capHeight: number; descent: number } {
-  const { font, unitsPerEm } = ownFace(name);
-  return { capHeight: font.capHeight / unitsPerEm, descent: -font.descent / unitsPerEm };
-}
