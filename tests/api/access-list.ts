@@ -118,8 +118,10 @@ export const routes: Record<string, RouteReach> = {
     at: ({ worksheet }) => `/api/drafts/${worksheet}`,
     json: () => ({ changes: [] }),
   },
+  // This worksheet was begun by the owner: a helper may move only one of their own.
   'PATCH api/drafts/[draft]/route.ts': {
-    who: ridersOfTheMachine,
+    who: ownerOnly,
+    told: ['helper'],
     at: ({ worksheet }) => `/api/drafts/${worksheet}`,
     json: ({ machine }) => ({ subject: machine }),
   },
