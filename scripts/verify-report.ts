@@ -2,7 +2,7 @@ import { whatIsShown } from '@/lib/evidence/format';
 import { signedRoot, type EntryFinding, type Finding } from '@/lib/evidence/finding';
 
 /** Invisible characters that could move a terminal's cursor or turn the direction of a line. */
-const unsafe = /[\u0000-\u0008\u000b-\u001f\u007f-\u009f\u061c\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;  
+const unsafe = /[\u0000-\u0008\u000b-\u001f\u007f-\u009f\u061c\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;
 
 /** The same text with every invisible character written out, safe to print wherever it came from. */
 export function printable(text: string): string {

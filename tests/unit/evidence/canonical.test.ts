@@ -31,7 +31,7 @@ describe('the canonical form', () => {
 
   it.each([
     ['undefined', { a: undefined }],
-    ['a hole in a list', [, 1]],  
+    ['a hole in a list', [, 1]],
     ['NaN', [Number.NaN]],
     ['infinity', Number.POSITIVE_INFINITY],
     ['half a character', 'a\ud800'],
