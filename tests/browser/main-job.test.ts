@@ -152,11 +152,13 @@ describe('the main job', () => {
 
   it('builds a packet that both verifiers, qpdf and poppler accept', async () => {
     await page.setViewportSize({ width: 1280, height: 860 });
-    await page.goto(page.url().replace(/\/record\/.*/, '/proof'));
+    await page.goto(page.url().replace(/\/record\/.*/, '/proof'), { waitUntil: 'networkidle' });
     await page.getByLabel('What it is for').fill('A claim on the gearbox');
     await page.getByRole('button', { name: 'Build a packet' }).click();
     const link = page.getByRole('link', { name: /Download/ }).first();
-    await link.waitFor({ timeout: 90_000 });
+    // Half a minute of watching the progress; then, as anybody would, the page is loaded anew.
+    await link.waitFor({ timeout: 30_000 }).catch(() => page.reload());
+    await link.waitFor({ timeout: 60_000 });
     const [download] = await Promise.all([page.waitForEvent('download'), link.click()]);
     const packet = path.join(folder, 'packet.pdf');
     await download.saveAs(packet);
