@@ -19,6 +19,7 @@ export interface PacketShown {
 }
 
 const askEveryMilliseconds = 900;
+const isUnfinished = ({ state }: PacketShown) => state === 'queued' || state === 'building';
 
 async function readPacket(address: string): Promise<PacketShown> {
   const response = await fetch(address, { headers: { accept: 'application/json' } });
@@ -33,9 +34,10 @@ const megabytes = (bytes: number) => `${Math.max(0.1, bytes / 1_000_000).toFixed
 export function PacketProgress({ initial }: { initial: PacketShown }) {
   const { data, error } = useSWR<PacketShown, Error>(paths.api.packet(initial.id), readPacket, {
     fallbackData: initial,
-    refreshInterval: (shown) => (shown?.state === 'queued' || shown?.state === 'building' ? askEveryMilliseconds : 0),
+    // Before the first answer SWR knows nothing; without `initial` a first answer that is no news would end the asking.
+    refreshInterval: (shown = initial) => (isUnfinished(shown) ? askEveryMilliseconds : 0),
     revalidateOnFocus: false,
-    revalidateOnMount: initial.state === 'queued' || initial.state === 'building',
+    revalidateOnMount: isUnfinished(initial),
   });
   const packet = data ?? initial;
   return (

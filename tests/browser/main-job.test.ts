@@ -156,9 +156,7 @@ describe('the main job', () => {
     await page.getByLabel('What it is for').fill('A claim on the gearbox');
     await page.getByRole('button', { name: 'Build a packet' }).click();
     const link = page.getByRole('link', { name: /Download/ }).first();
-    // Half a minute of watching the progress; then, as anybody would, the page is loaded anew.
-    await link.waitFor({ timeout: 30_000 }).catch(() => page.reload());
-    await link.waitFor({ timeout: 60_000 });
+    await link.waitFor({ timeout: 90_000 });
     const [download] = await Promise.all([page.waitForEvent('download'), link.click()]);
     const packet = path.join(folder, 'packet.pdf');
     await download.saveAs(packet);
