@@ -5,16 +5,5 @@ import { shellOf } from '@/lib/services/read-shell';
 
 /** The steward's pages. The layout only frames: it is not asked again between pages, so each page guards itself. */
 export default async function StewardLayout({ children }: { children: ReactNode }) {
-  const person = await requirePerson();
-  const { machines, shelf, shop, demo } = await shellOf(person);
-  return (
-    <RiderShell
-      machines={machines}
-      shelf={shelf}
-      person={{ name: person.name, isSteward: person.isSteward, shop }}
-      demo={demo}
-    >
-      {children}
-    </RiderShell>
-  );
+  return <RiderShell {...await shellOf(await requirePerson())}>{children}</RiderShell>;
 }

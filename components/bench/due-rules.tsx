@@ -1,6 +1,5 @@
-import { SteelRule } from '@/components/rule/steel-rule';
+import { DataRules } from '@/components/rule/data-rules';
 import { Definition } from '@/components/ui/definition';
-import { timeTicks } from '@/lib/domain/rule-ticks';
 import { paths } from '@/lib/paths';
 import type { RuleData } from '@/lib/services/bench-rule';
 import type { DueLine } from '@/lib/services/what-is-due';
@@ -20,26 +19,7 @@ export function DueRules({ machine, rules, due }: DueRulesProps) {
   const rest = due.filter(({ item }) => !drawn.has(item));
   return (
     <div className="grid gap-4">
-      {rules.map(({ label, unit, kind, from, to, now, lanes, flags }) => (
-        <SteelRule
-          key={label}
-          label={label}
-          unit={unit}
-          from={from}
-          to={to}
-          now={now}
-          ticks={kind === 'time' ? timeTicks(from, to) : undefined}
-          flags={flags}
-          lanes={lanes.map((lane) => ({
-            label: lane.label,
-            href: `${paths.schedule(machine)}#${itemAnchor(lane.item)}`,
-            done: lane.done,
-            limit: lane.limit,
-            dueText: lane.dueText,
-            isOver: lane.isOver,
-          }))}
-        />
-      ))}
+      <DataRules rules={rules} hrefOf={(item) => `${paths.schedule(machine)}#${itemAnchor(item)}`} />
       {rest.length === 0 ? null : (
         <Definition
           label="Due by neither distance nor date"

@@ -1,5 +1,4 @@
-import { SteelRule } from '@/components/rule/steel-rule';
-import { timeTicks } from '@/lib/domain/rule-ticks';
+import { DataRules } from '@/components/rule/data-rules';
 import type { RuleData } from '@/lib/services/bench-rule';
 
 /** Where each item was done and where it falls due, as the owner sees it too; for reading, so nothing leads away. */
@@ -11,25 +10,7 @@ export function RecordRules({ rules }: { rules: RuleData[] }) {
         What was done, and what falls due
       </h2>
       <div className="grid gap-4">
-        {rules.map(({ label, unit, kind, from, to, now, lanes, flags }) => (
-          <SteelRule
-            key={label}
-            label={label}
-            unit={unit}
-            from={from}
-            to={to}
-            now={now}
-            ticks={kind === 'time' ? timeTicks(from, to) : undefined}
-            flags={flags}
-            lanes={lanes.map(({ label: title, done, limit, dueText, isOver }) => ({
-              label: title,
-              done,
-              limit,
-              dueText,
-              isOver,
-            }))}
-          />
-        ))}
+        <DataRules rules={rules} />
       </div>
     </section>
   );

@@ -65,7 +65,11 @@ export function takenAtOf({ takenLocal, takenOffset }: UploadWithFiles['upload']
   return takenOffset === null ? { local: takenLocal } : { local: takenLocal, offset: takenOffset };
 }
 
-export function uploadView({ upload, file }: UploadWithFiles): UploadView {
+export function uploadView(options: {
+  upload: UploadWithFiles['upload'];
+  file: Pick<UploadWithFiles['file'], 'bytes' | 'mediaType'>;
+}): UploadView {
+  const { upload, file } = options;
   const takenAt = takenAtOf(upload);
   return {
     id: upload.id,

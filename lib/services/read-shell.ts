@@ -9,8 +9,8 @@ export interface ShellData {
   machines: { id: string; name: string }[];
   /** The person's first shelf. */
   shelf: string | undefined;
-  /** The shop the person answers for. */
-  shop: string | undefined;
+  /** `shop`: the one the person answers for. */
+  person: { name: string; isSteward: boolean; shop: string | undefined };
   demo: 'none' | 'demo' | 'demo-times-injected';
 }
 
@@ -23,7 +23,7 @@ export async function shellOf(person: PersonRow): Promise<ShellData> {
   return {
     machines: machines.map(({ id, name }) => ({ id, name })),
     shelf: shelf?.id,
-    shop: shop?.id,
+    person: { name: person.name, isSteward: person.isSteward, shop: shop?.id },
     demo: isInjected ? 'demo-times-injected' : env.isDemo ? 'demo' : 'none',
   };
 }

@@ -10,6 +10,7 @@ import { WitnessmarkError, notFound } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';
 import { dropBlob, keepBlob, putBlob, receiveBlob, type IncomingBlob } from '@/lib/ports/blob-store';
 import { readPicture, sniff, type KnownType, type Picture } from '@/lib/ports/image';
+import { uploadView, type UploadView } from './read-draft';
 
 /** Phones make pictures of 3 to 15 MB; a scanned invoice may be larger. */
 export const largestUploadBytes = 40_000_000;
@@ -36,18 +37,7 @@ export const uploadQuery = z.object({
     .optional(),
 });
 
-export interface UploadAnswer {
-  id: string;
-  sha256: string;
-  bytes: number;
-  mediaType: string;
-  name: string;
-  receivedAt: string;
-  takenAt?: { local: string; offset?: string };
-  width?: number;
-  height?: number;
-  copySha256: string | null;
-  thumbSha256: string | null;
+export interface UploadAnswer extends UploadView {
   isNew: boolean;
 }
 
@@ -203,19 +193,6 @@ function refusal(name: string, why: string, cause?: unknown): WitnessmarkError {
   });
 }
 
-function answer(row: UploadRow, bytes: number, mediaType: string, isNew: boolean): UploadAnswer {
-  const takenAt = row.takenLocal === null ? undefined : { local: row.takenLocal };
-  return {
-    id: row.id,
-    sha256: row.sha256,
-    bytes,
-    mediaType,
-    name: row.name,
-    receivedAt: row.receivedAt,
-    ...(takenAt ? { takenAt: row.takenOffset === null ? takenAt : { ...takenAt, offset: row.takenOffset } } : {}),
-    ...(row.width === null || row.height === null ? {} : { width: row.width, height: row.height }),
-    copySha256: row.copySha256,
-    thumbSha256: row.thumbSha256,
-    isNew,
-  };
+function answer(upload: UploadRow, bytes: number, mediaType: string, isNew: boolean): UploadAnswer {
+  return { ...uploadView({ upload, file: { bytes, mediaType } }), isNew };
 }

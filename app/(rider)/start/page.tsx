@@ -5,8 +5,8 @@ import { shellOf } from '@/lib/services/read-shell';
 
 /** The bench of the first machine; a technician without one begins at the shop, anybody else by setting one up. */
 export default async function StartPage() {
-  const { machines, shop } = await shellOf(await requirePerson());
+  const { machines, person } = await shellOf(await requirePerson());
   const [first] = machines;
   if (first !== undefined) redirect(paths.bench(first.id));
-  redirect(shop === undefined ? paths.newMachine : paths.shop(shop));
+  redirect(person.shop === undefined ? paths.newMachine : paths.shop(person.shop));
 }
