@@ -4,6 +4,7 @@ import { QueryTypes } from 'sequelize';
 import { database } from './index';
 import { first } from './migrations/0001-first';
 import { appendOnlyFurther } from './migrations/0002-append-only-further';
+import { proofFurther } from './migrations/0003-proof-further';
 
 export interface Migration {
   name: string;
@@ -11,7 +12,7 @@ export interface Migration {
 }
 
 /** In order. A released migration is never edited; a change of the schema is a new one. */
-const migrations: Migration[] = [first, appendOnlyFurther];
+const migrations: Migration[] = [first, appendOnlyFurther, proofFurther];
 
 const storage: UmzugStorage = {
   async logMigration({ name }) {

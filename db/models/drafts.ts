@@ -3,7 +3,7 @@ import { Table } from '../table';
 
 export interface DraftRow {
   id: string;
-  kind: 'worksheet' | 'receipt';
+  kind: 'worksheet' | 'receipt' | 'addendum';
   subjectId: string;
   createdBy: string;
   createdAt: string;
@@ -11,6 +11,8 @@ export interface DraftRow {
   state: 'open' | 'sealed' | 'discarded';
   sealedLog: string | null;
   sealedSeq: number | null;
+  /** The entry an addendum adds to. */
+  refersToSeq: number | null;
 }
 export const drafts = new Table<DraftRow>('drafts', ['id'], {
   id: 'text',
@@ -22,6 +24,7 @@ export const drafts = new Table<DraftRow>('drafts', ['id'], {
   state: 'text',
   sealedLog: 'text',
   sealedSeq: 'integer',
+  refersToSeq: 'integer',
 });
 
 export interface DraftChangeRow {

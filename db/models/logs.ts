@@ -137,3 +137,21 @@ export const draws = new Table<DrawRow>('draws', ['machineLog', 'entrySeq', 'pos
   unit: 'text',
   drawnOn: 'text',
 });
+
+/** A part that was destroyed for good; `recordedSeq` is the entry of the same log that says so. */
+export interface ErasureRow {
+  logId: string;
+  seq: number;
+  name: string;
+  erasedAt: string;
+  erasedBy: string;
+  recordedSeq: number;
+}
+export const erasures = new Table<ErasureRow>('erasures', ['logId', 'seq', 'name'], {
+  logId: 'text',
+  seq: 'integer',
+  name: 'text',
+  erasedAt: 'text',
+  erasedBy: 'text',
+  recordedSeq: 'integer',
+});

@@ -24,7 +24,7 @@ export interface Remark extends Place {
   count?: number;
 }
 
-/** What a time-stamp token says of itself. Who made it is not established here. */
+/** A time-stamp token over a signed checkpoint, and what was established about who made it. */
 export interface Stamp {
   /** UTC instant. */
   genTime: string;
@@ -34,6 +34,30 @@ export interface Stamp {
   policy: string;
   /** Size of the checkpoint it stands on: it covers every line of a lower number. */
   size: number;
+  /** Hex SHA-256 of the token's DER. */
+  sha256: string;
+  /** Common name in the certificate that signed it, which anybody can choose; null if it names none. */
+  signer: string | null;
+  /**
+   * `independent`: its chain, valid at its time, ends in a root that the reader or this verifier brought; `own`: in the
+   * installation's own test authority; `unknown`: it holds, and no root that was brought vouches for it.
+   */
+  trust: 'independent' | 'own' | 'unknown';
+  /** The root an independent one ends in, and the hex SHA-256 of that certificate. */
+  root: { name: string; sha256: string } | null;
+}
+
+/** A signature made on a person's own device, outside the server (a passkey). */
+export interface DeviceSignature {
+  /** Hex SHA-256 of the public key (SPKI). */
+  keyFingerprint: string;
+  /** The earlier `key` entry that names the key, and the person it names. */
+  keySeq: number;
+  person: string;
+  /** The site on which the signer approved. */
+  site: string;
+  /** The entry whose words are signed: this one for a countersignature, the one referred to for a `signature`. */
+  signs: number;
 }
 
 export interface EntryFinding {
@@ -53,6 +77,10 @@ export interface EntryFinding {
   stampedBy: Stamp[];
   /** The time stamp that covers this entry and claims the earliest time, on whichever seal it hangs. */
   earliestStamp: Stamp | null;
+  /** Its proven time: the earliest independent stamp over any seal that covers it. Null: not proven. */
+  proven: Stamp | null;
+  /** A signature made outside the server that this entry carries and that holds. */
+  deviceSignature: DeviceSignature | null;
   problems: AlterationCode[];
 }
 
@@ -102,6 +130,8 @@ export interface Finding {
   /** Of the bundle, as written in it; null if it cannot be read. */
   bundle: { madeAt: string; purpose: string; number: string } | null;
   against: Comparison | null;
+  /** The pages of a packet: not there at all, not signed, as they were signed, or changed since. */
+  pages: 'none' | 'not-checked' | 'checked' | 'changed';
   /** What this check did not look at, each a sentence. */
   notChecked: string[];
 }

@@ -30,6 +30,8 @@ export function describeEntries(logs: OpenedLog[], findings: Findings): EntryFin
         withheldParts: parts?.withheld ?? [],
         stampedBy: line.stamps,
         earliestStamp: earliest[line.seq] ?? null,
+        proven: null,
+        deviceSignature: null,
         problems: findings.problemsOf(log.source.id, line.seq),
       };
     });

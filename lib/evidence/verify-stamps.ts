@@ -1,6 +1,7 @@
 import { fromBase64 } from '@/lib/evidence/bytes';
 import type { Stamp } from '@/lib/evidence/finding';
 import { type Findings, reasonOf } from '@/lib/evidence/findings';
+import { sha256Hex } from '@/lib/evidence/hash';
 import { isTokenOf, readToken } from '@/lib/evidence/token';
 
 const maxTokensPerSeal = 16;
@@ -26,7 +27,9 @@ export function readStamps(
     try {
       const token = readToken(fromBase64(base64));
       if (isTokenOf(token, seal.checkpoint)) {
-        stamps.push({ genTime: token.genTime, serial: token.serial, policy: token.policy, size });
+        const { genTime, serial, policy } = token;
+        const der = sha256Hex(fromBase64(base64));
+        stamps.push({ genTime, serial, policy, size, sha256: der, signer: null, trust: 'unknown', root: null });
       } else {
         const sentence = `A time stamp of entry ${place.seq} was made for something else.`;
         findings.alter('token-invalid', place, sentence, 'the imprint is not SHA-256 of the signed checkpoint');

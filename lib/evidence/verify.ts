@@ -93,6 +93,7 @@ function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findin
     ring,
     logs,
     against,
+    pages: request.pagesNotChecked === true ? 'not-checked' : 'none',
   });
 }
 
@@ -139,9 +140,13 @@ interface Seen {
   ring?: KeyRing;
   logs?: OpenedLog[];
   against?: Comparison | null;
+  pages?: Finding['pages'];
 }
 
-function report(findings: Findings, { outcome, bundle, ring, logs = [], against = null }: Seen): Finding {
+function report(
+  findings: Findings,
+  { outcome, bundle, ring, logs = [], against = null, pages = 'none' }: Seen,
+): Finding {
   const entries = describeEntries(logs, findings);
   const entriesOpened = entries.filter((entry) => entry.openedParts.some((part) => part.name === 'body')).length;
   const sentences = {
@@ -165,6 +170,7 @@ function report(findings: Findings, { outcome, bundle, ring, logs = [], against 
     key: ring?.described ?? null,
     bundle: bundle === undefined ? null : { madeAt: bundle.madeAt, purpose: bundle.purpose, number: bundle.number },
     against,
+    pages,
     notChecked: findings.notChecked,
   };
 }

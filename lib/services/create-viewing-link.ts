@@ -41,6 +41,7 @@ export async function createViewingLink(options: NewViewingLink): Promise<{ id: 
         lastOpenedAt: null,
         timesOpened: 0,
         packetId,
+        scope: null,
       },
       transaction,
     ),

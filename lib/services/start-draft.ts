@@ -61,6 +61,7 @@ export async function startDraft(options: {
       state: 'open',
       sealedLog: null,
       sealedSeq: null,
+      refersToSeq: null,
     };
     await insertDraft(draft, transaction);
     return { draft, isNew: true };

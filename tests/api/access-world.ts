@@ -81,7 +81,7 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
   async function draft(kind: DraftRow['kind'], subjectId: string): Promise<string> {
     const id = randomUUID();
     const row = { id, kind, subjectId, createdBy: people.owner.id, createdAt: at, changedAt: at };
-    await drafts.insert({ ...row, state: 'open', sealedLog: null, sealedSeq: null });
+    await drafts.insert({ ...row, state: 'open', sealedLog: null, sealedSeq: null, refersToSeq: null });
     return id;
   }
 
@@ -201,6 +201,7 @@ async function readyPacket(machineId: string, createdBy: string): Promise<void> 
     pages: 1,
     logSize: 1,
     linkId: null,
+    scope: null,
   });
 }
 
@@ -224,6 +225,7 @@ async function failedPacket(machineId: string, createdBy: string): Promise<strin
     pages: null,
     logSize: null,
     linkId: null,
+    scope: null,
   });
   return id;
 }
