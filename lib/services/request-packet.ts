@@ -79,7 +79,7 @@ export function queuePacket(options: { machineId: string; by: string; purpose: s
       pages: null,
       logSize: null,
       linkId: null,
-    scope: null,
+      scope: null,
     };
     await insertPacket(row, transaction);
     return row;
