@@ -1,5 +1,6 @@
 import 'server-only';
 import type { Transaction } from '../index';
+import { struckLines } from '@/lib/domain/standing';
 import { draws, entries, entryParts, stampJobs, type DrawRow, type EntryRow, type StampJobRow } from '../models/logs';
 
 /** One line of a log with its sealed parts, as they are stored. */
@@ -33,10 +34,21 @@ export function insertDraws(rows: DrawRow[], transaction: Transaction): Promise<
   return draws.insertMany(rows, { transaction });
 }
 
-/** Which entries of these logs were struck, as `log:seq`. */
+/** Which entries of these logs are struck by a strike that stands, as `log:seq`. */
 export async function struckEntriesOf(logIds: string[], transaction?: Transaction): Promise<Set<string>> {
   const strikes = await entries.all({ logId: logIds, kind: 'strike' }, inside(transaction));
-  return new Set(strikes.map((strike) => `${strike.logId}:${strike.refersToSeq}`));
+  return new Set(
+    logIds.flatMap((logId) => {
+      const struck = struckLines(strikes.filter((strike) => strike.logId === logId));
+      return [...struck.keys()].map((seq) => `${logId}:${seq}`);
+    }),
+  );
+}
+
+/** The lines of a log that stand; what a strike withdraws is left out. */
+export function standingLines(lines: readonly LogLine[]): LogLine[] {
+  const struck = struckLines(lines.map(({ entry }) => entry));
+  return lines.filter(({ entry }) => !struck.has(entry.seq));
 }
 
 /** Time stamps of a log that have not come yet. */

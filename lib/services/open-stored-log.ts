@@ -1,11 +1,12 @@
 import 'server-only';
 import type { StoredLog } from '@/db/queries/entries';
 import type { TokenRow } from '@/db/models/logs';
+import { struckLines } from '@/lib/domain/standing';
 import { openDisclosure } from '@/lib/evidence/disclosure';
 import type { Attachment, AuthorPart, EntryKind, Leaf, NotesPart, PartName } from '@/lib/evidence/format';
 import { parseLeaf } from '@/lib/evidence/leaf';
 import { keyOfNote } from '@/lib/services/log-keys';
-import type { LogView, TokenView } from '@/lib/services/record-view';
+import type { ErasureView, LogView, TokenView } from '@/lib/services/record-view';
 
 /** A line of a log with the parts that are to be shown. */
 export interface OpenedEntry {
@@ -14,8 +15,10 @@ export interface OpenedEntry {
   kind: EntryKind;
   /** What each opened part says. */
   values: Map<PartName, unknown>;
-  /** Named in the leaf and not opened: kept back here, or erased. */
+  /** Named in the leaf and kept back here. */
   withheld: PartName[];
+  /** Named in the leaf and destroyed for good, each with the entry that says so. */
+  erasures: ErasureView[];
   /** The earliest stamp of each authority over this entry. */
   tokens: TokenView[];
   /** The strike that withdraws it, if one stands. */
@@ -38,9 +41,21 @@ export function openStoredLog(
   const opened = stored.entries.map((row): OpenedEntry => {
     const leaf = parseLeaf(row.leaf);
     const values = valuesBySeq.get(row.seq) ?? new Map<PartName, unknown>();
-    const withheld = leaf.parts.map(({ name }) => name).filter((name) => !values.has(name));
+    const erasures = erasuresOf(stored, row.seq);
+    const isErased = (name: PartName) => erasures.some((one) => one.name === name);
+    const closed = leaf.parts.map(({ name }) => name).filter((name) => !values.has(name));
+    const withheld = closed.filter((name) => !isErased(name));
     const stamps = tokens.get(row.seq) ?? [];
-    return { leaf, leafHash: row.leafHash, kind: leaf.kind, values, withheld, tokens: stamps, struckBy: null };
+    return {
+      leaf,
+      leafHash: row.leafHash,
+      kind: leaf.kind,
+      values,
+      withheld,
+      erasures,
+      tokens: stamps,
+      struckBy: null,
+    };
   });
   markStruck(opened);
   return opened;
@@ -52,6 +67,12 @@ export function logView({ log, checkpoints }: StoredLog): LogView {
   const { id, origin, keyName, timesInjected } = log;
   const { size, root, note } = last;
   return { id, origin, keyName, timesInjected, size, root, checkpoint: note, ...keyOfNote(note) };
+}
+
+function erasuresOf({ erasures }: StoredLog, seq: number): ErasureView[] {
+  return erasures
+    .filter((row) => row.seq === seq)
+    .map(({ name, erasedAt, recordedSeq }) => ({ name: name as PartName, erasedAt, recordedSeq }));
 }
 
 export function authorOf({ values }: OpenedEntry): AuthorPart | null {
@@ -84,13 +105,12 @@ function tokensBySeq(stored: StoredLog): Map<number, TokenView[]> {
   return found;
 }
 
-/** A strike can itself be struck, so they are taken from the last to the first. */
 function markStruck(opened: OpenedEntry[]): void {
-  for (const entry of opened.toReversed()) {
-    if (entry.kind !== 'strike' || entry.struckBy !== null || entry.leaf.refersTo === null) continue;
-    const target = opened[entry.leaf.refersTo.seq];
-    if (target === undefined) continue;
-    const reason = (entry.values.get('body') as { reason?: string } | undefined)?.reason ?? '';
-    target.struckBy = { seq: entry.leaf.seq, sealedAt: entry.leaf.sealedAt, reason };
+  const kinds = opened.map(({ leaf, kind }) => ({ seq: leaf.seq, kind, refersToSeq: leaf.refersTo?.seq ?? null }));
+  for (const [seq, by] of struckLines(kinds)) {
+    const [target, strike] = [opened[seq], opened[by]];
+    if (target === undefined || strike === undefined) continue;
+    const reason = (strike.values.get('body') as { reason?: string } | undefined)?.reason ?? '';
+    target.struckBy = { seq: by, sealedAt: strike.leaf.sealedAt, reason };
   }
 }

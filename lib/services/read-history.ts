@@ -1,7 +1,7 @@
 import 'server-only';
 import type { Transaction } from '@/db/index';
 import { findLogOf } from '@/db/queries/logs';
-import { linesOf, type LogLine } from '@/db/queries/lots';
+import { linesOf, standingLines, type LogLine } from '@/db/queries/lots';
 import type { OdometerReading } from '@/lib/domain/odometer';
 import type { Attachment, Odometer, OpeningBody, ServiceBody, TermsBody } from '@/lib/evidence/format';
 import { notFound } from '@/lib/errors';
@@ -29,15 +29,18 @@ export interface SealedHistory {
 export async function readHistory(machine: string, transaction?: Transaction): Promise<SealedHistory> {
   const log = await findLogOf(machine, transaction ? { transaction } : {});
   if (log === null) throw notFound('machine');
-  const lines = await linesOf(log.id, transaction);
-  const struck = new Set(lines.flatMap(({ entry }) => (entry.kind === 'strike' ? [entry.refersToSeq] : [])));
-  const standing = lines.filter(({ entry }) => !struck.has(entry.seq));
+  return historyOf(log.id, await linesOf(log.id, transaction));
+}
+
+/** The same from lines that were read already, or that might come to be. Throws `not-found` without an opening. */
+export function historyOf(log: string, lines: readonly LogLine[]): SealedHistory {
+  const standing = standingLines(lines);
   const opening = lines[0] && openedPart<OpeningBody>(lines[0], 'body');
   if (opening === undefined) throw notFound('machine');
   const services = standing.flatMap(serviceOf);
   const terms = standing.findLast((line) => line.entry.kind === 'terms' && line.parts.has('body'));
   return {
-    log: log.id,
+    log,
     opening,
     terms: (terms && openedPart<TermsBody>(terms, 'body')) ?? null,
     termsSeq: terms?.entry.seq ?? null,

@@ -89,8 +89,10 @@ export async function readShelf({
     log: logView(stored),
     name: opening?.name ?? 'Shelf',
     entries: opened.map((entry): ShelfEntryView => {
-      const { kind, leaf, leafHash, values, tokens } = entry;
-      const base = { log: leaf.log, seq: leaf.seq, kind, sealedAt: leaf.sealedAt, leafHash, tokens };
+      const { kind, leaf, leafHash, values, tokens, struckBy, withheld, erasures } = entry;
+      const parts = [...values.keys()];
+      const marks = { struckBy, withheld, erasures, parts };
+      const base = { log: leaf.log, seq: leaf.seq, kind, sealedAt: leaf.sealedAt, leafHash, tokens, ...marks };
       if (kind === 'opening')
         return { ...base, ...(opening === undefined ? {} : { opening }), author: authorOf(entry) };
       const purchase = kind === 'purchase' ? purchaseView(leaf.log, entry, []) : null;
@@ -125,7 +127,7 @@ function entryViews(opened: OpenedEntry[]): EntryView[] {
 }
 
 function entryView(entry: OpenedEntry, referring: OpenedEntry[]): EntryView {
-  const { leaf, leafHash, kind, values, withheld, tokens, struckBy } = entry;
+  const { leaf, leafHash, kind, values, withheld, erasures, tokens, struckBy } = entry;
   const countersignatures = referring.flatMap((other) => {
     const body = other.kind === 'countersignature' ? other.values.get('body') : undefined;
     if (body === undefined) return [];
@@ -148,6 +150,8 @@ function entryView(entry: OpenedEntry, referring: OpenedEntry[]): EntryView {
     attachments: attachmentsOf(entry),
     notes: notesOf(entry),
     withheld,
+    erased: erasures.map(({ name }) => name),
+    erasures,
     tokens,
     countersignatures,
     struckBy,
@@ -158,7 +162,7 @@ function entryView(entry: OpenedEntry, referring: OpenedEntry[]): EntryView {
 
 /** Null when the body is withheld or erased: then nothing can be said of what was bought. */
 function purchaseView(log: string, entry: OpenedEntry, usedBy: number[]): PurchaseView | null {
-  const { leaf, leafHash, values, withheld, tokens, struckBy } = entry;
+  const { leaf, leafHash, values, withheld, erasures, tokens, struckBy } = entry;
   const body = values.get('body') as PurchaseBody | undefined;
   if (body === undefined) return null;
   return {
@@ -174,6 +178,7 @@ function purchaseView(log: string, entry: OpenedEntry, usedBy: number[]): Purcha
     tokens,
     usedBy,
     withheld,
+    erasures,
     struckBy,
   };
 }

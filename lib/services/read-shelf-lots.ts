@@ -1,6 +1,6 @@
 import 'server-only';
 import type { Transaction } from '@/db/index';
-import { drawsFrom, linesOf, struckEntriesOf } from '@/db/queries/lots';
+import { drawsFrom, linesOf, standingLines, struckEntriesOf } from '@/db/queries/lots';
 import { findLogOf } from '@/db/queries/logs';
 import { shelfById } from '@/db/queries/shelves';
 import type { PersonRow } from '@/db/models/people';
@@ -26,11 +26,7 @@ export interface ShelfLots {
  * come between. Struck purchases are left out, and a struck entry gives back what it drew.
  */
 export async function lotsOfLog(shelfLog: string, transaction?: Transaction): Promise<ShelfLot[]> {
-  const lines = await linesOf(shelfLog, transaction);
-  const struck = new Set(
-    lines.filter(({ entry }) => entry.kind === 'strike').map(({ entry }) => entry.refersToSeq ?? -1),
-  );
-  const standing = lines.filter(({ entry }) => !struck.has(entry.seq));
+  const standing = standingLines(await linesOf(shelfLog, transaction));
   const suppliers = new Map<number, string>();
   const purchases = standing.flatMap((line): Purchase[] => {
     const body = line.entry.kind === 'purchase' ? opened<PurchaseBody>(line, 'body') : undefined;
@@ -42,8 +38,9 @@ export async function lotsOfLog(shelfLog: string, transaction?: Transaction): Pr
   const otherwiseTaken = standing.flatMap((line): Taken[] => {
     const { kind, refersToSeq } = line.entry;
     if ((kind !== 'disposal' && kind !== 'correction') || refersToSeq === null) return [];
-    const body = opened<Amount & { line: number }>(line, 'body');
-    if (body === undefined) return [];
+    const body = opened<Partial<Amount & { line: number }>>(line, 'body');
+    // A correction that only says that something was erased takes nothing.
+    if (body?.amount === undefined || body.unit === undefined || body.line === undefined) return [];
     const lot = lotKey({ log: shelfLog, seq: refersToSeq, line: body.line });
     return [{ lot, amount: body.amount, unit: body.unit }];
   });

@@ -63,13 +63,25 @@ export type EntryView = BodyOf & {
   author: AuthorPart | null;
   attachments: Attachment[];
   notes: string | null;
+  /** Kept back from this reader. */
   withheld: PartName[];
+  /** Destroyed for good; `erasures` says when, and which entry records it. */
+  erased: PartName[];
+  erasures: ErasureView[];
   tokens: TokenView[];
   countersignatures: { seq: number; sealedAt: string; author: AuthorPart | null; body: CountersignatureBody }[];
   struckBy: { seq: number; sealedAt: string; reason: string } | null;
   addenda: number[];
   state: 'sealed' | 'countersigned' | 'waiting' | 'struck';
 };
+
+/** A part that was destroyed, with the entry of the same log that says so. */
+export interface ErasureView {
+  name: PartName;
+  /** UTC, milliseconds. */
+  erasedAt: string;
+  recordedSeq: number;
+}
 
 export interface TokenView {
   authority: string;
@@ -92,6 +104,7 @@ export interface PurchaseView {
   /** Seqs of this machine's entries that draw from it, struck ones too. */
   usedBy: number[];
   withheld?: PartName[];
+  erasures?: ErasureView[];
   /** A strike on the shelf's log that withdraws the purchase. */
   struckBy?: { seq: number; sealedAt: string; reason: string } | null;
 }
@@ -109,4 +122,11 @@ export interface ShelfEntryView {
   body?: unknown;
   author?: AuthorPart | null;
   refersTo?: Reference | null;
+  /** The strike on the same log that withdraws it. */
+  struckBy?: { seq: number; sealedAt: string; reason: string } | null;
+  /** Named in the leaf and kept back. */
+  withheld?: PartName[];
+  erasures?: ErasureView[];
+  /** Parts the line has that are still there. */
+  parts?: PartName[];
 }

@@ -188,7 +188,7 @@ function service({
 function entry(seq: number, title: string, sealedAt: string) {
   return {
     seq, title, sealedAt, leafHash: sha256(`leaf ${seq}`), previous: seq === 0 ? null : sha256(`leaf ${seq - 1}`), refersTo: null,
-    author: { person: owner, name: 'Imke Vandersloot', role: 'owner' as const }, attachments: [], notes: null, withheld: [],
+    author: { person: owner, name: 'Imke Vandersloot', role: 'owner' as const }, attachments: [], notes: null, withheld: [], erased: [], erasures: [],
     tokens: [token(sealedAt)], countersignatures: [], struckBy: null, addenda: [], state: 'sealed' as const,
   }; // prettier-ignore
 }
