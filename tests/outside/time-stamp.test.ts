@@ -9,7 +9,7 @@ import { isTokenOf, readToken } from '@/lib/evidence/token';
 import { atTime, now } from '@/lib/ports/clock';
 import { checkReply } from '@/lib/ports/time-stamp-authority/check-reply';
 import { boolean, context, integer, nullValue, octetString, oid, sequence } from '@/lib/ports/time-stamp-authority/der';
-import { oids } from '@/lib/ports/time-stamp-authority/oids';
+import { oids } from '@/lib/evidence/oids';
 import { answerRequest } from '@/lib/ports/time-stamp-authority/own';
 import {
   extension,
@@ -323,7 +323,7 @@ describe('a reply that the client must not take', () => {
     const request = openssl('ts', '-query', '-in', query, '-text');
     const asked = BigInt(/Nonce: (0x[0-9A-F]+)/.exec(request)?.[1] ?? '0');
     expect(() => checkReply(answerRequest(bare), { digest, nonce: asked, at: now() })).toThrow(
-      'the certificate it names',
+      'names is not with it',
     );
   });
 

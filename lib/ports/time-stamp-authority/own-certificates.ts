@@ -26,7 +26,7 @@ import {
   utcTime,
   utf8String,
 } from './der';
-import { oids } from './oids';
+import { oids } from '@/lib/evidence/oids';
 
 export const ownAuthorityName = 'Witnessmark test authority (not independent)';
 const stamperName = 'Witnessmark test time stamps (not independent)';

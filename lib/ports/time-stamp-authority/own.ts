@@ -14,7 +14,8 @@ import {
   setOf,
   utf8String,
 } from './der';
-import { digests, oids } from './oids';
+import { digestOf } from '@/lib/evidence/digests';
+import { oids } from '@/lib/evidence/oids';
 import { ownAuthorityName, type OwnCertificates, ownCertificates, serialNumber } from './own-certificates';
 import { parseRequest } from './request';
 import type { TimeStampAuthority } from './time-stamp-authority';
@@ -42,7 +43,7 @@ export function answerRequest(der: Uint8Array, certificates = ownCertificates())
     return rejection('badDataFormat', 'This is not a time-stamp request in DER.');
   }
   if (request.version !== 1) return rejection('badRequest', 'Only requests of version 1 are answered.');
-  const digest = digests[request.messageImprint.hashAlgorithm.algorithmId];
+  const digest = digestOf(request.messageImprint.hashAlgorithm.algorithmId);
   if (digest === undefined) return rejection('badAlg', 'Digests by SHA-256, SHA-384 and SHA-512 are stamped.');
   if (request.messageImprint.hashedMessage.valueBlock.valueHexView.length !== digest.bytes) {
     return rejection('badDataFormat', `A digest by ${digest.name} is ${digest.bytes} bytes long.`);

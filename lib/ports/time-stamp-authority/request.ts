@@ -3,7 +3,7 @@ import { randomBytes } from 'node:crypto';
 import * as asn1js from 'asn1js';
 import { TimeStampReq } from 'pkijs';
 import { boolean, integer, nullValue, octetString, oid, sequence } from './der';
-import { oids } from './oids';
+import { oids } from '@/lib/evidence/oids';
 
 const nonceBytes = 16;
 
