@@ -322,9 +322,7 @@ describe('a reply that the client must not take', () => {
     const bare = new Uint8Array(readFileSync(query));
     const request = openssl('ts', '-query', '-in', query, '-text');
     const asked = BigInt(/Nonce: (0x[0-9A-F]+)/.exec(request)?.[1] ?? '0');
-    expect(() => checkReply(answerRequest(bare), { digest, nonce: asked, at: now() })).toThrow(
-      'names is not with it',
-    );
+    expect(() => checkReply(answerRequest(bare), { digest, nonce: asked, at: now() })).toThrow('names is not with it');
   });
 
   it('is no reply', () => {
