@@ -21,6 +21,9 @@ export const paths = {
   bench: (machine: string) => `/machines/${machine}`,
   record: (machine: string) => `/machines/${machine}/record`,
   entry: (machine: string, seq: number) => `/machines/${machine}/record/${seq}`,
+  addendum: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/addendum`,
+  strike: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/strike`,
+  erase: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/erase`,
   inviteShop: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/countersign`,
   schedule: (machine: string) => `/machines/${machine}/schedule`,
   specSheet: (machine: string) => `/machines/${machine}/spec-sheet`,
@@ -29,6 +32,8 @@ export const paths = {
   /** One rider's shelf (a household may have one). */
   shelf: (shelf: string) => `/shelves/${shelf}`,
   shelfEntry: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}`,
+  shelfStrike: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}/strike`,
+  shelfErase: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}/erase`,
 
   /** The offline shell: one public static page; what it shows is chosen by the hash. */
   garage: '/garage',

@@ -2,7 +2,6 @@ import { AnchorButton } from '@/components/ui/button';
 import { Notice } from '@/components/ui/notice';
 import { UserText } from '@/components/ui/user-text';
 import { formatInstant } from '@/lib/domain/instants';
-import { paths } from '@/lib/paths';
 import type { OpenWorksheet } from '@/lib/services/read-bench';
 
 export interface OpenWorksheetsProps {
@@ -16,16 +15,16 @@ export function OpenWorksheets({ worksheets, zone }: OpenWorksheetsProps) {
   return (
     <section aria-labelledby="open-worksheets" className="mb-6">
       <h2 id="open-worksheets" className="mb-3">
-        {worksheets.length === 1 ? 'Open worksheet' : 'Open worksheets'}
+        {headingOf(worksheets)}
       </h2>
       <ul className="grid gap-3">
-        {worksheets.map(({ id, title, changedAt, states }) => (
+        {worksheets.map(({ id, href, title, changedAt, states }) => (
           <li key={id}>
             <Notice
               tone={states.length > 0 ? 'gap' : 'plain'}
               title={<UserText>{title}</UserText>}
               actions={
-                <AnchorButton href={paths.worksheet(id)}>
+                <AnchorButton href={href}>
                   Go on<span className="sr-only"> with {title}</span>
                 </AnchorButton>
               }
@@ -42,4 +41,10 @@ export function OpenWorksheets({ worksheets, zone }: OpenWorksheetsProps) {
       </ul>
     </section>
   );
+}
+
+/** An addendum is none of the worksheets, and says itself what it is. */
+function headingOf(open: readonly OpenWorksheet[]): string {
+  if (open.some(({ isAddendum }) => isAddendum)) return 'Begun, not sealed';
+  return open.length === 1 ? 'Open worksheet' : 'Open worksheets';
 }

@@ -15,12 +15,14 @@ export function sentenceOf(answer: Answer<unknown>): string | undefined {
 }
 
 interface DiscardDraftProps {
-  what: 'worksheet' | 'receipt';
+  what: 'worksheet' | 'receipt' | 'addendum';
+  /** Where to go once it is gone; the list of the garage, if nothing else. */
+  leaveTo?: string;
   onProblem: (sentence: string | undefined) => void;
 }
 
 /** Asks once, then takes the draft off every list. */
-export function DiscardDraft({ what, onProblem }: DiscardDraftProps) {
+export function DiscardDraft({ what, leaveTo = '#list', onProblem }: DiscardDraftProps) {
   const { garage } = useGarage();
   const { opened } = useDraftInScreen();
   const [isAsking, setIsAsking] = useState(false);
@@ -29,7 +31,7 @@ export function DiscardDraft({ what, onProblem }: DiscardDraftProps) {
     setIsAsking(false);
     const problem = answer && sentenceOf(answer);
     onProblem(problem);
-    if (problem === undefined) window.location.replace('#list');
+    if (problem === undefined) window.location.replace(leaveTo);
   }
   return (
     <>

@@ -13,7 +13,7 @@ import { offlineProblem } from './offline-page';
 import type { OpenDraft } from './open-draft';
 import { StatusLine } from './status-line';
 
-/** Open worksheets and receipts of this person, and what this device cannot do. */
+/** Open worksheets, receipts and addenda of this person, and what this device cannot do. */
 export function DraftList({ isPart = false }: { isPart?: boolean }) {
   const { view } = useGarage();
   const open = view.drafts.filter(({ view: { draft } }) => draft.state === 'open');
@@ -21,6 +21,10 @@ export function DraftList({ isPart = false }: { isPart?: boolean }) {
   const isKnown = open.length > 0 || view.snapshot !== undefined || view.signal !== 'unknown';
   const worksheets = open.filter(({ view: { draft } }) => draft.kind === 'worksheet');
   const receipts = open.filter(({ view: { draft } }) => draft.kind === 'receipt');
+  // One that was only looked at holds nothing and is on no other device.
+  const addenda = open.filter(
+    ({ view: { draft, fields } }) => draft.kind === 'addendum' && (draft.isOnServer || Object.keys(fields).length > 0),
+  );
   return (
     <>
       {isPart ? null : (
@@ -37,6 +41,7 @@ export function DraftList({ isPart = false }: { isPart?: boolean }) {
       <Missing />
       <Drafts title="Worksheets" drafts={worksheets} />
       <Drafts title="Receipts" drafts={receipts} />
+      <Drafts title="Addenda" drafts={addenda} />
     </>
   );
 }
@@ -73,14 +78,14 @@ export function DraftLine({ opened }: { opened: OpenDraft }) {
   const states = draft.kind === 'worksheet' ? unfinishedStates(fields) : [];
   return (
     <li className="border-b border-line py-2">
-      <a href={`#${draft.kind}/${draft.id}`} className="block min-h-14">
+      <a href={placeOf(draft)} className="block min-h-14">
         {subject ? (
           <span className="label">
             <UserText>{subject}</UserText>
           </span>
         ) : null}
         <span className="figure block text-[1.375rem] text-petrol underline underline-offset-4">
-          <UserText>{draftTitle(draft.kind, fields)}</UserText>
+          <UserText>{draftTitle(draft, fields)}</UserText>
         </span>
         {states.map((state) => (
           <span key={state} className="tone-gap block text-lg">
@@ -91,6 +96,11 @@ export function DraftLine({ opened }: { opened: OpenDraft }) {
       <StatusLine opened={opened} />
     </li>
   );
+}
+
+/** An addendum is written on the page of its entry. */
+function placeOf({ kind, id, subject, refersToSeq }: OpenDraft['view']['draft']): string {
+  return kind === 'addendum' ? paths.addendum(subject, refersToSeq ?? 0) : `#${kind}/${id}`;
 }
 
 const neverChanges = () => () => undefined;

@@ -1,13 +1,15 @@
 import type { FieldChange } from '@/lib/domain/field-changes';
 
-export type DraftKind = 'worksheet' | 'receipt';
+export type DraftKind = 'worksheet' | 'receipt' | 'addendum';
 
-/** A worksheet or receipt as this device keeps it. Instants are ISO 8601 texts. */
+/** A worksheet, receipt or addendum as this device keeps it. Instants are ISO 8601 texts. */
 export interface KeptDraft {
   id: string;
   kind: DraftKind;
-  /** A machine's id for a worksheet, a shelf's for a receipt. */
+  /** A machine's id for a worksheet or an addendum, a shelf's for a receipt. */
   subject: string;
+  /** The entry an addendum adds to. */
+  refersToSeq?: number;
   /** Whose it is: another person on the same phone neither sees nor sends it. */
   person: string;
   createdAt: string;

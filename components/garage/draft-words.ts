@@ -1,9 +1,10 @@
 import { unfinishedState } from '@/lib/domain/procedures';
 import { worksheetFrom, type Fields } from '@/lib/domain/worksheet';
-import type { DraftKind } from './draft-store';
+import type { KeptDraft } from './draft-store';
 
 /** What a draft is called in a list: what its person called it, else what it holds. */
-export function draftTitle(kind: DraftKind, fields: Fields): string {
+export function draftTitle({ kind, refersToSeq }: Pick<KeptDraft, 'kind' | 'refersToSeq'>, fields: Fields): string {
+  if (kind === 'addendum') return `Addendum to entry ${refersToSeq ?? ''}, not sealed`;
   if (kind === 'receipt') return fields['supplier/name'] ?? 'Receipt, supplier not entered';
   const { title, tasks } = worksheetFrom(fields);
   const named = tasks.flatMap((task) => task.title ?? []);

@@ -19,6 +19,7 @@ export interface DraftAnswer {
     changedAt?: string;
     sealedLog?: string | null;
     sealedSeq?: number | null;
+    refersToSeq?: number | null;
   };
   changes: FieldChange[];
   uploads: UploadAnswer[];
@@ -38,7 +39,7 @@ export interface SentAnswer {
 /** The server as the garage sees it; tests give their own. */
 export interface GarageApi {
   readGarage(): Promise<Answer<unknown>>;
-  openDraft(draft: { id: string; kind: DraftKind; subject: string }): Promise<Answer<unknown>>;
+  openDraft(draft: { id: string; kind: DraftKind; subject: string; refersToSeq?: number }): Promise<Answer<unknown>>;
   readDraft(id: string): Promise<Answer<DraftAnswer>>;
   sendChanges(
     id: string,

@@ -52,11 +52,12 @@ export class Garage {
     await this.#fetchOthers(snapshot);
   }
 
-  async create(kind: DraftKind, subject: string, id = mintId()): Promise<OpenDraft> {
+  async create(kind: DraftKind, subject: string, id = mintId(), refersToSeq?: number): Promise<OpenDraft> {
     const at = this.parts.now().toISOString();
     const person = this.view.snapshot?.person.id ?? '';
     const draft: KeptDraft = {
       id, kind, subject, person, createdAt: at, changedAt: at, isOnServer: false, state: 'open',
+      ...(refersToSeq === undefined ? {} : { refersToSeq }),
     }; // prettier-ignore
     await this.parts.store.putDraft(draft);
     return this.#hold(draft);
@@ -79,12 +80,12 @@ export class Garage {
       this.#show({ signal: answer.why === 'refused' ? 'ok' : answer.why });
       return answer;
     }
-    const { kind, subject, createdAt, changedAt } = answer.value.draft;
+    const { kind, subject, createdAt, changedAt, refersToSeq } = answer.value.draft;
     const at = this.parts.now().toISOString();
     const person = this.view.snapshot?.person.id ?? '';
     const draft: KeptDraft = {
       id, kind, subject, person, createdAt: createdAt ?? at, changedAt: changedAt ?? at,
-      isOnServer: true, state: 'open',
+      isOnServer: true, state: 'open', ...(typeof refersToSeq === 'number' ? { refersToSeq } : {}),
     }; // prettier-ignore
     const meanwhile = this.#opened.get(id);
     if (meanwhile) return { ok: true, value: meanwhile };

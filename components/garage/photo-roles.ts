@@ -20,3 +20,6 @@ export const receiptRoles: readonly AttachmentRole[] = ['receipt-front', 'receip
 export const worksheetRoles: readonly AttachmentRole[] = [
   'odometer', 'as-found', 'as-left', 'magnet', 'part', 'manual-page', 'work-order',
 ]; // prettier-ignore
+export const addendumRoles: readonly AttachmentRole[] = [
+  'as-found', 'as-left', 'odometer', 'magnet', 'part', 'manual-page', 'work-order', 'lab-report', 'document',
+]; // prettier-ignore

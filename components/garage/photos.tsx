@@ -13,17 +13,18 @@ export interface PhotosProps {
   roles: readonly AttachmentRole[];
   takeText: string;
   hasPdf?: boolean;
+  /** What a PDF most likely is. */
+  pdfRole?: AttachmentRole;
   /** The role the next photo most likely has; it can be changed by one tap. */
   nextRole: (photos: readonly Photo[]) => AttachmentRole | undefined;
 }
 
-export function Photos({ roles, takeText, hasPdf = false, nextRole }: PhotosProps) {
+export function Photos({ roles, takeText, hasPdf = false, pdfRole = 'receipt-page', nextRole }: PhotosProps) {
   const { view } = useDraftInScreen();
   const photos = useMemo(() => photosOf(view), [view]);
   const roleOf = useCallback(
-    (file: File, others: readonly Photo[]) =>
-      file.type === 'application/pdf' && hasPdf ? ('receipt-page' as const) : nextRole(others),
-    [hasPdf, nextRole],
+    (file: File, others: readonly Photo[]) => (file.type === 'application/pdf' && hasPdf ? pdfRole : nextRole(others)),
+    [hasPdf, pdfRole, nextRole],
   );
   const { add, refused } = useAddPhotos(roleOf);
   return (

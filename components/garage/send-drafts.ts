@@ -18,9 +18,9 @@ function draftFrom({ subject, state, sealedLog, sealedSeq }: DraftAnswer['draft'
 
 /** Makes the draft known to the server; safe to repeat. */
 export async function announceDraft(api: GarageApi, opened: OpenDraft): Promise<Failure | undefined> {
-  const { id, kind, subject, isOnServer } = opened.view.draft;
+  const { id, kind, subject, refersToSeq, isOnServer } = opened.view.draft;
   if (isOnServer) return undefined;
-  const answer = await api.openDraft({ id, kind, subject });
+  const answer = await api.openDraft({ id, kind, subject, ...(refersToSeq === undefined ? {} : { refersToSeq }) });
   if (!answer.ok) return answer;
   await opened.settle([], { accepted: [], draft: { isOnServer: true } });
   return undefined;

@@ -55,3 +55,8 @@ export function standingLines(lines: readonly LogLine[]): LogLine[] {
 export function waitingStamps(logId: string): Promise<StampJobRow[]> {
   return stampJobs.all({ logId, doneAt: null }, { order: [['size', 'ASC']] });
 }
+
+/** What these entries of a machine's log draw. */
+export function drawsOfEntries(machineLog: string, seqs: number[], transaction?: Transaction): Promise<DrawRow[]> {
+  return draws.all({ machineLog, entrySeq: seqs }, inside(transaction));
+}

@@ -5,15 +5,15 @@ import type { PersonRow } from '@/db/models/people';
 import { authorise } from '@/lib/auth/guard';
 import { WitnessmarkError, notFound } from '@/lib/errors';
 
-/** May this person write in worksheets of this machine, or in receipts of this shelf? Throws "not found" if not. */
+/** May this person write in worksheets and addenda of this machine, or in receipts of this shelf? Throws "not found" if not. */
 export async function authoriseDraftSubject(options: {
   person: PersonRow;
   kind: DraftRow['kind'];
   subject: string;
 }): Promise<void> {
   const { person, kind, subject } = options;
-  if (kind === 'worksheet') await authorise({ person, action: 'edit-worksheet', machine: subject });
-  else await authorise({ person, action: 'edit-shelf', shelf: subject });
+  if (kind === 'receipt') await authorise({ person, action: 'edit-shelf', shelf: subject });
+  else await authorise({ person, action: 'edit-worksheet', machine: subject });
 }
 
 /** The draft, for a person who may write in it. */
@@ -26,13 +26,13 @@ export async function demandDraft(options: { person: PersonRow; draftId: string 
 
 /** Why a draft that is no longer open takes no change. */
 export function refuseClosed(draft: DraftRow): WitnessmarkError {
-  const what = draft.kind === 'worksheet' ? 'worksheet' : 'receipt';
   if (draft.state === 'sealed') {
-    const sentence =
-      draft.kind === 'worksheet'
-        ? `This worksheet is already sealed as entry ${draft.sealedSeq}. What is missing can be added there as an addendum.`
-        : `This receipt is already sealed as entry ${draft.sealedSeq} of the shelf.`;
-    return new WitnessmarkError('already-sealed', sentence);
+    const sentences = {
+      worksheet: `This worksheet is already sealed as entry ${draft.sealedSeq}. What is missing can be added there as an addendum.`,
+      receipt: `This receipt is already sealed as entry ${draft.sealedSeq} of the shelf.`,
+      addendum: `This addendum is already sealed as entry ${draft.sealedSeq}. What is missing can be added as another one.`,
+    };
+    return new WitnessmarkError('already-sealed', sentences[draft.kind]);
   }
-  return new WitnessmarkError('conflict', `This ${what} was discarded. Start a new one.`);
+  return new WitnessmarkError('conflict', `This ${draft.kind} was discarded. Start a new one.`);
 }

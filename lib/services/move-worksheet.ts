@@ -23,7 +23,8 @@ export async function moveWorksheet(options: {
 }): Promise<DraftView> {
   const { person, draftId, input } = options;
   const { kind, subjectId, createdBy } = await demandDraft({ person, draftId });
-  if (kind !== 'worksheet') throw new WitnessmarkError('conflict', 'A receipt stays on the shelf it was begun on.');
+  if (kind === 'receipt') throw new WitnessmarkError('conflict', 'A receipt stays on the shelf it was begun on.');
+  if (kind === 'addendum') throw new WitnessmarkError('conflict', 'An addendum stays with the entry it adds to.');
   await authoriseDraftSubject({ person, kind, subject: input.subject });
   // Moved away, it is out of the owner's sight: a helper may not take what others wrote along.
   const { machine } = await standingOf(person, { machine: subjectId });

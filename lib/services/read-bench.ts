@@ -11,6 +11,7 @@ import { formatDistance, units } from '@/lib/domain/units';
 import { warrantyState, type WarrantyState } from '@/lib/domain/warranty';
 import { foldChanges, worksheetFrom } from '@/lib/domain/worksheet';
 import { notFound } from '@/lib/errors';
+import { paths } from '@/lib/paths';
 import { now } from '@/lib/ports/clock';
 import { distanceRule, timeRule, type RuleData } from './bench-rule';
 import { whatWaits, type Waiting } from './bench-waiting';
@@ -19,8 +20,11 @@ import { draftTitle } from './read-garage';
 import { readHistory, type SealedHistory } from './read-history';
 import { doneServices, whatIsDue, type DueLine } from './what-is-due';
 
+/** A worksheet or an addendum that is not sealed yet. */
 export interface OpenWorksheet {
   id: string;
+  href: string;
+  isAddendum: boolean;
   title: string;
   changedAt: string;
   /** The state the machine was left in: `Engine drained, not refilled: do not start.` */
@@ -102,8 +106,13 @@ function readingNote({ readings }: SealedHistory): string {
 
 async function openWorksheet(draft: DraftRow): Promise<OpenWorksheet> {
   const fields = foldChanges(await changesOf(draft.id));
+  const { id, kind, subjectId, refersToSeq, changedAt } = draft;
+  const title = draftTitle(draft, fields);
+  if (kind === 'addendum') {
+    return { id, href: paths.addendum(subjectId, refersToSeq ?? 0), isAddendum: true, title, changedAt, states: [] };
+  }
   const states = worksheetFrom(fields).tasks.flatMap(
     (task) => unfinishedState(task.key, Object.keys(task.steps)) ?? [],
   );
-  return { id: draft.id, title: draftTitle(draft.kind, fields), changedAt: draft.changedAt, states };
+  return { id, href: paths.worksheet(id), isAddendum: false, title, changedAt, states };
 }

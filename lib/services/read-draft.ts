@@ -29,7 +29,7 @@ export interface UploadView {
 export interface DraftView {
   id: string;
   kind: DraftRow['kind'];
-  /** The machine of a worksheet, the shelf of a receipt. */
+  /** The machine of a worksheet or an addendum, the shelf of a receipt. */
   subject: string;
   state: DraftRow['state'];
   createdBy: string;
@@ -38,6 +38,8 @@ export interface DraftView {
   /** Where it was sealed, once it is. */
   sealedLog: string | null;
   sealedSeq: number | null;
+  /** The entry an addendum adds to. */
+  refersToSeq: number | null;
 }
 export interface DraftWithChanges {
   draft: DraftView;

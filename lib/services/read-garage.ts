@@ -40,7 +40,14 @@ export interface GarageData {
   };
   machines: GarageMachineView[];
   shelves: { id: string; name: string; lots: Lot[] }[];
-  drafts: { id: string; kind: DraftRow['kind']; subject: string; changedAt: string; title: string }[];
+  drafts: {
+    id: string;
+    kind: DraftRow['kind'];
+    subject: string;
+    changedAt: string;
+    title: string;
+    refersToSeq: number | null;
+  }[];
   demo: ShellData['demo'];
 }
 
@@ -79,16 +86,17 @@ async function machineView(machine: MachineRow, relation: 'owner' | 'helper'): P
 
 async function draftLine(draft: DraftRow): Promise<GarageData['drafts'][number]> {
   const fields = foldChanges(await changesOf(draft.id));
-  const { id, kind, subjectId, changedAt } = draft;
-  return { id, kind, subject: subjectId, changedAt, title: draftTitle(kind, fields) };
+  const { id, kind, subjectId, changedAt, refersToSeq } = draft;
+  return { id, kind, subject: subjectId, changedAt, title: draftTitle(draft, fields), refersToSeq };
 }
 
 /**
  * What a draft is called in a list: what its person called it, else what it holds.
  *
- * @example draftTitle('worksheet', { 'tasks/a/title': 'Engine oil and filter' }) // 'Engine oil and filter'
+ * @example draftTitle({ kind: 'worksheet', refersToSeq: null }, { 'tasks/a/title': 'Engine oil and filter' }) // 'Engine oil and filter'
  */
-export function draftTitle(kind: DraftRow['kind'], fields: Fields): string {
+export function draftTitle({ kind, refersToSeq }: Pick<DraftRow, 'kind' | 'refersToSeq'>, fields: Fields): string {
+  if (kind === 'addendum') return `Addendum to entry ${refersToSeq}, not sealed`;
   if (kind === 'receipt') return fields['supplier/name'] ?? fields.supplier ?? 'Receipt';
   const { title, tasks } = worksheetFrom(fields);
   const named = tasks.flatMap((task) => task.title ?? []);

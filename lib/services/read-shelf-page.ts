@@ -48,7 +48,7 @@ export async function readShelfEntry(options: {
   return { ...shelf, entry, uses: await usesOf(shelf.log.id, options) };
 }
 
-async function usesOf(shelfLog: string, { person, seq }: { person: PersonRow; seq: number }): Promise<LotUse[]> {
+export async function usesOf(shelfLog: string, { person, seq }: { person: PersonRow; seq: number }): Promise<LotUse[]> {
   const rows = (await drawsFrom(shelfLog)).filter(({ purchaseSeq }) => purchaseSeq === seq);
   const logs = [...new Set(rows.map(({ machineLog }) => machineLog))];
   const struck = await struckEntriesOf(logs);

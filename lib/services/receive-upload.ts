@@ -5,17 +5,17 @@ import { write, type Transaction } from '@/db/index';
 import { drafts, uploads, type DraftRow, type UploadRow } from '@/db/models/drafts';
 import type { PersonRow } from '@/db/models/people';
 import { bytesSentBy, filesBySha256, findUpload, insertUpload } from '@/db/queries/uploads';
-import { authorise } from '@/lib/auth/guard';
 import { WitnessmarkError, notFound } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';
-import { dropBlob, keepBlob, putBlob, receiveBlob, type IncomingBlob } from '@/lib/ports/blob-store';
+import { blobStore, dropBlob, keepBlob, putBlob, receiveBlob, type IncomingBlob } from '@/lib/ports/blob-store';
 import { readPicture, sniff, type KnownType, type Picture } from '@/lib/ports/image';
+import { authoriseDraftSubject } from './draft-access';
 import { uploadView, type UploadView } from './read-draft';
 
 /** Phones make pictures of 3 to 15 MB; a scanned invoice may be larger. */
 export const largestUploadBytes = 40_000_000;
 
-/** Pictures and papers of one worksheet or receipt. */
+/** Pictures and papers of one worksheet, receipt or addendum. */
 export const mostUploadsOfADraft = 100;
 
 /** What one person may send within a day: some five hundred large photographs. */
@@ -54,8 +54,7 @@ export async function receiveUpload(options: {
   const { person, query } = options;
   const draft = await drafts.find({ id: query.draft });
   if (draft === null) throw notFound('worksheet or receipt');
-  if (draft.kind === 'worksheet') await authorise({ person, action: 'edit-worksheet', machine: draft.subjectId });
-  else await authorise({ person, action: 'edit-shelf', shelf: draft.subjectId });
+  await authoriseDraftSubject({ person, kind: draft.kind, subject: draft.subjectId });
 
   const blob = await receiveBlob(options.body, largestUploadBytes);
   try {
@@ -163,9 +162,17 @@ async function keep(options: {
   ];
   await write(async (transaction) => {
     await demandOpen(await drafts.find({ id: row.draftId }, { transaction }), row.name, transaction);
+    await demandStillThere(named, row.name);
     await insertUpload(row, named, transaction);
   });
   return answer(row, original.bytes, mediaType, true);
+}
+
+/** An erasure may have removed the same bytes between their arrival and this moment; both happen in the write queue. */
+async function demandStillThere(named: { sha256: string }[], name: string): Promise<void> {
+  for (const { sha256 } of named) {
+    if (!(await blobStore.has(sha256))) throw new WitnessmarkError('conflict', `${name} was not kept. Send it again.`);
+  }
 }
 
 async function decode(

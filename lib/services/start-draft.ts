@@ -2,10 +2,12 @@ import 'server-only';
 import { z } from 'zod';
 import { write } from '@/db/index';
 import { countOpenDrafts, draftById, insertDraft } from '@/db/queries/drafts';
+import { findEntry } from '@/db/queries/entries';
+import { findLogOf } from '@/db/queries/logs';
 import type { DraftRow } from '@/db/models/drafts';
 import type { PersonRow } from '@/db/models/people';
 import { now } from '@/lib/ports/clock';
-import { WitnessmarkError } from '@/lib/errors';
+import { WitnessmarkError, notFound } from '@/lib/errors';
 import { authoriseDraftSubject, demandDraft } from './draft-access';
 
 /** Ids minted on a device: UUIDs as `crypto.randomUUID` writes them. */
@@ -13,18 +15,20 @@ export const deviceId = z
   .string()
   .regex(/^[0-9a-f]{8}(-[0-9a-f]{4}){3}-[0-9a-f]{12}$/, 'An id is a UUID in lower case.');
 
-/** Worksheets open on one machine, or receipts on one shelf: every device reads all of them. */
+/** Worksheets and addenda open on one machine, or receipts on one shelf: every device reads all of them. */
 export const mostOpenDrafts = 100;
 
 export const startDraftInput = z.object({
   id: deviceId,
-  kind: z.enum(['worksheet', 'receipt']),
-  /** A machine for a worksheet, a shelf for a receipt. */
+  kind: z.enum(['worksheet', 'receipt', 'addendum']),
+  /** A machine for a worksheet or an addendum, a shelf for a receipt. */
   subject: deviceId,
+  /** For an addendum: the number of the entry it adds to. */
+  refersToSeq: z.number().int().min(0).optional(),
 });
 
 /**
- * Opens a worksheet or a receipt under the id its device gave it. A repeated call returns the draft as it is, wherever
+ * Opens a worksheet, a receipt or an addendum under the id its device gave it. A repeated call returns the draft as it is, wherever
  * it has been moved since.
  */
 export async function startDraft(options: {
@@ -41,6 +45,7 @@ export async function startDraft(options: {
     return { draft, isNew: false };
   }
   await authoriseDraftSubject({ person, kind: input.kind, subject: input.subject });
+  const refersToSeq = input.kind === 'addendum' ? await demandEntry(input) : null;
   return write(async (transaction) => {
     const meanwhile = await draftById(input.id, transaction);
     if (meanwhile !== null) return { draft: meanwhile, isNew: false };
@@ -61,9 +66,17 @@ export async function startDraft(options: {
       state: 'open',
       sealedLog: null,
       sealedSeq: null,
-      refersToSeq: null,
+      refersToSeq,
     };
     await insertDraft(draft, transaction);
     return { draft, isNew: true };
   });
+}
+
+/** The entry an addendum adds to; entries never go away, so it need not be asked again at the seal. */
+async function demandEntry({ subject, refersToSeq }: z.infer<typeof startDraftInput>): Promise<number> {
+  const log = await findLogOf(subject);
+  const entry = log === null || refersToSeq === undefined ? null : await findEntry(log.id, refersToSeq);
+  if (entry === null) throw notFound('entry');
+  return entry.seq;
 }
