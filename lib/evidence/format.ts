@@ -295,6 +295,28 @@ export interface CountersignatureBody {
   };
   /** Name of the person who invited the shop. */
   invitedBy: string;
+  /** Made by the signer's own key over this body without it, outside the server. */
+  signature?: StatementSignature;
+}
+
+/**
+ * A signature made on a person's own device (WebAuthn, ES256): a member of a countersignature's body, or the whole body
+ * of a `signature` entry. Each member is base64url without padding.
+ */
+export interface StatementSignature {
+  /** SubjectPublicKeyInfo in DER, as the `key` entry names it. */
+  publicKey: string;
+  authenticatorData: string;
+  clientDataJSON: string;
+  /** ECDSA-Sig-Value in DER. */
+  signature: string;
+}
+/** What a `key` entry says: this is the key of this person. */
+export interface KeyBody {
+  /** UUID of the person, as in the author parts. */
+  person: string;
+  /** SubjectPublicKeyInfo in DER, base64url without padding. */
+  publicKey: string;
 }
 
 export interface AuthorPart {

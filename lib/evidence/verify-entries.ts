@@ -1,5 +1,5 @@
 import { isJsonObject } from '@/lib/evidence/canonical';
-import type { EntryFinding, LogFinding, Stamp } from '@/lib/evidence/finding';
+import type { DeviceSignature, EntryFinding, LogFinding, Stamp } from '@/lib/evidence/finding';
 import type { Findings } from '@/lib/evidence/findings';
 import type { LocalMoment } from '@/lib/evidence/format';
 import type { OpenedLog } from '@/lib/evidence/verify-references';
@@ -9,11 +9,16 @@ const clockToleranceMinutes = 5;
 const millisecondsInMinute = 60_000;
 
 /**
- * What was found at each entry, log by log and in order.
+ * What was found at each entry, log by log and in order. `statements` are the signatures made outside the server that
+ * hold, by `<log>/<seq>`.
  *
  * @example describeEntries(logs, findings)[0]?.kind; // 'opening'
  */
-export function describeEntries(logs: OpenedLog[], findings: Findings): EntryFinding[] {
+export function describeEntries(
+  logs: OpenedLog[],
+  findings: Findings,
+  statements: ReadonlyMap<string, DeviceSignature> = new Map(),
+): EntryFinding[] {
   return logs.flatMap((log) => {
     const earliest = earliestStamps(log);
     return log.lines.map((line): EntryFinding => {
@@ -31,7 +36,7 @@ export function describeEntries(logs: OpenedLog[], findings: Findings): EntryFin
         stampedBy: line.stamps,
         earliestStamp: earliest[line.seq] ?? null,
         proven: null,
-        deviceSignature: null,
+        deviceSignature: statements.get(`${log.source.id}/${line.seq}`) ?? null,
         problems: findings.problemsOf(log.source.id, line.seq),
       };
     });

@@ -11,7 +11,7 @@ export interface OpenedLog extends WalkedLog {
 }
 
 /** Kinds that say something about an earlier entry, and so must name it. */
-const kindsThatRefer: ReadonlySet<EntryKind> = new Set(['strike', 'addendum', 'countersignature']);
+const kindsThatRefer: ReadonlySet<EntryKind> = new Set(['strike', 'addendum', 'countersignature', 'signature']);
 
 /**
  * Checks everything one entry says about another: `refersTo`, the terms a service was judged by, and the purchase

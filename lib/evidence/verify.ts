@@ -1,7 +1,7 @@
 import { bundleStatement, demandBundle, maxBundleCharacters } from '@/lib/evidence/bundle';
 import { canonicalJson, isJsonObject, parseJson } from '@/lib/evidence/canonical';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
-import type { Comparison, Finding } from '@/lib/evidence/finding';
+import type { Comparison, DeviceSignature, Finding } from '@/lib/evidence/finding';
 import { Findings, reasonOf } from '@/lib/evidence/findings';
 import type { Bundle } from '@/lib/evidence/format';
 import { checkNote, chooseKey, type KeyRing } from '@/lib/evidence/key-ring';
@@ -11,6 +11,7 @@ import { checkFiles, type GivenFile } from '@/lib/evidence/verify-files';
 import { walkLog } from '@/lib/evidence/verify-log';
 import { openParts } from '@/lib/evidence/verify-parts';
 import { checkReferences, type OpenedLog } from '@/lib/evidence/verify-references';
+import { checkStatements } from '@/lib/evidence/verify-statements';
 
 /** What is to be checked, and what with. */
 export interface VerifyRequest {
@@ -78,6 +79,7 @@ function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findin
     return { ...walked, parts };
   });
   checkReferences(logs, findings);
+  const statements = checkStatements(logs, findings);
   checkFiles(bundle.files, logs, request.files, findings);
   const against =
     request.against === undefined ? null : compareWith(request.against, logs, bundle.madeAt, ring, findings);
@@ -92,6 +94,7 @@ function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findin
     bundle,
     ring,
     logs,
+    statements,
     against,
     pages: request.pagesNotChecked === true ? 'not-checked' : 'none',
   });
@@ -139,15 +142,16 @@ interface Seen {
   bundle?: Bundle;
   ring?: KeyRing;
   logs?: OpenedLog[];
+  statements?: Map<string, DeviceSignature>;
   against?: Comparison | null;
   pages?: Finding['pages'];
 }
 
 function report(
   findings: Findings,
-  { outcome, bundle, ring, logs = [], against = null, pages = 'none' }: Seen,
+  { outcome, bundle, ring, logs = [], statements, against = null, pages = 'none' }: Seen,
 ): Finding {
-  const entries = describeEntries(logs, findings);
+  const entries = describeEntries(logs, findings, statements);
   const entriesOpened = entries.filter((entry) => entry.openedParts.some((part) => part.name === 'body')).length;
   const sentences = {
     unchanged: 'Unchanged: every line, seal and opened part is what was sealed.',

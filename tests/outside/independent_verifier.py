@@ -1,7 +1,7 @@
 """A second verifier, written from the format's description alone, in another language.
 
-It shares no code with the project: JSON, SHA-256 and base64 come from Python's standard library, Ed25519 signatures and
-RFC 3161 tokens are judged by the openssl command, packets are opened by poppler's pdfdetach.
+It shares no code with the project: JSON, SHA-256 and base64 come from Python's standard library, Ed25519 and ECDSA
+signatures and RFC 3161 tokens are judged by the openssl command, packets are opened by poppler's pdfdetach.
 
     python3 independent_verifier.py record.json|packet.pdf [--tsa-root root.pem]
 
@@ -204,6 +204,121 @@ def check_parts(where, leaf, disclosures):
     return opened
 
 
+def openssl_verifies_es256(public_key, message, signature):
+    """ECDSA over P-256 with SHA-256; the key is its SubjectPublicKeyInfo."""
+    with tempfile.TemporaryDirectory() as folder:
+        paths = {}
+        for name, data in [("key.der", public_key), ("message", message), ("signature", signature)]:
+            paths[name] = os.path.join(folder, name)
+            with open(paths[name], "wb") as file:
+                file.write(data)
+        pem = subprocess.run(["openssl", "pkey", "-pubin", "-inform", "DER", "-in", paths["key.der"], "-pubcheck"],
+                             capture_output=True)
+        if pem.returncode != 0:
+            return False
+        paths["key.pem"] = os.path.join(folder, "key.pem")
+        with open(paths["key.pem"], "wb") as file:
+            file.write(pem.stdout[pem.stdout.index(b"-----BEGIN"):])
+        return subprocess.run(
+            ["openssl", "dgst", "-sha256", "-verify", paths["key.pem"], "-signature", paths["signature"],
+             paths["message"]], capture_output=True).returncode == 0
+
+
+def once(pairs):
+    """For json.loads: an object in which no name stands twice."""
+    if len({name for name, _ in pairs}) != len(pairs):
+        raise ValueError("a name that stands twice")
+    return dict(pairs)
+
+
+def relying_parties(origin):
+    """The host of an origin and its parent domains of two labels or more, if the origin may ask for signatures."""
+    match = re.fullmatch(r"(https?)://([a-z0-9_.-]+|\[[0-9a-f:]+\])(:[1-9][0-9]{0,4})?", origin)
+    if not match:
+        raise ValueError("origin")
+    host = match[2]
+    loopback = re.fullmatch(r"localhost|.+\.localhost|127(\.[0-9]{1,3}){3}|\[::1\]", host)
+    if match[1] == "http" and not loopback:
+        raise ValueError("origin over plain http")
+    if re.fullmatch(r"\[.*\]|[0-9.]+", host):
+        return [host]
+    labels = host.split(".")
+    return [host] + [".".join(labels[i:]) for i in range(1, len(labels) - 1)]
+
+
+SPKI_P256 = bytes.fromhex("3059301306072a8648ce3d020106082a8648ce3d03010703420004")
+
+
+def check_statement(signature, log, refers, body):
+    """W3C WebAuthn Level 2 section 7.2, without the server that asked. Returns the key, or raises ValueError."""
+    if not isinstance(signature, dict) or set(signature) != {
+            "publicKey", "authenticatorData", "clientDataJSON", "signature"}:
+        raise ValueError("members of the signature")
+    if any(not isinstance(value, str) for value in signature.values()):
+        raise ValueError("members of the signature")
+    statement = {"log": log, "refersTo": refers, "body": body}
+    challenge = sha256(b"witnessmark/statement/1\n" + canonical(statement).encode())
+    client = b64url(signature["clientDataJSON"])
+    data = json.loads(client.decode("utf-8"), object_pairs_hook=once)
+    if not isinstance(data, dict) or data.get("type") != "webauthn.get":
+        raise ValueError("type")
+    if data.get("challenge") != base64.urlsafe_b64encode(challenge).decode().rstrip("="):
+        raise ValueError("challenge")
+    if data.get("crossOrigin", False) is not False or "topOrigin" in data:
+        raise ValueError("crossOrigin")
+    names = relying_parties(data["origin"] if isinstance(data.get("origin"), str) else "")
+    authenticator = b64url(signature["authenticatorData"])
+    flags = authenticator[32] if len(authenticator) >= 37 else 0
+    if len(authenticator) < 37 or (len(authenticator) > 37) != bool(flags & 0xC0):
+        raise ValueError("form of the authenticator data")
+    if authenticator[:32] not in [sha256(name.encode()) for name in names]:
+        raise ValueError("rpIdHash")
+    if flags & 0x05 != 0x05:
+        raise ValueError("user present and verified")
+    key = b64url(signature["publicKey"])
+    if len(key) != 91 or not key.startswith(SPKI_P256):
+        raise ValueError("not a P-256 key")
+    if not openssl_verifies_es256(key, authenticator + sha256(client), b64url(signature["signature"])):
+        raise ValueError("openssl refuses the signature")
+    return signature["publicKey"]
+
+
+def is_struck(seq, until, lines):
+    return any(
+        line["kind"] == "strike" and seq < line["seq"] < until and line["refersTo"] and line["refersTo"]["seq"] == seq
+        and not is_struck(line["seq"], until, lines) for line in lines)
+
+
+def check_statements(log, lines):
+    """Signatures made outside the server. `lines` are the leaves of one log with what is opened of each."""
+    for line in lines:
+        body = line["opened"].get("body")
+        where = f"{log['subject']} {log['id'][:8]} entry {line['seq']}"
+        if line["kind"] == "signature" and body is not None:
+            signature, unsigned = body, {}
+        elif line["kind"] == "countersignature" and body is not None and "signature" in body:
+            signature, unsigned = body["signature"], {n: v for n, v in body.items() if n != "signature"}
+        else:
+            continue
+        try:
+            if line["refersTo"] is None:
+                raise ValueError("names no entry")
+            key = check_statement(signature, log["id"], line["refersTo"], unsigned)
+            keys = [other for other in lines if other["kind"] == "key" and other["seq"] < line["seq"]
+                    and not is_struck(other["seq"], line["seq"], lines)]
+            bodies = [other["opened"].get("body") for other in keys]
+            named = [b for b in bodies if b is not None and set(b) == {"person", "publicKey"} and b["publicKey"] == key]
+            if not named and None in bodies:
+                continue
+            if not named:
+                raise ValueError("no key entry names the key")
+            author = line["opened"].get("author")
+            if author is not None and author.get("person") != named[-1]["person"]:
+                raise ValueError("the key of somebody else")
+        except (ValueError, TypeError) as error:
+            problem(where, f"signature made outside the server: {error}")
+
+
 def check_token(where, token, note, tsa_root):
     with tempfile.TemporaryDirectory() as folder:
         token_path, note_path = os.path.join(folder, "token"), os.path.join(folder, "note")
@@ -259,7 +374,7 @@ def verify(text, tsa_root):
                 continue
             leaf["hash"] = previous
             leaves.append(leaf)
-            opened = check_parts(where, leaf, entry["parts"])
+            opened = leaf["opened"] = check_parts(where, leaf, entry["parts"])
             for attachment in opened.get("attachments", []):
                 for file in [attachment] + ([attachment["copy"]] if "copy" in attachment else []):
                     named_files[file["sha256"]] = (file["bytes"], file["mediaType"])
@@ -271,6 +386,7 @@ def verify(text, tsa_root):
             if tsa_root:
                 for token in entry["seal"]["tokens"]:
                     check_token(where, token, entry["seal"]["checkpoint"], tsa_root)
+        check_statements(log, [leaf for leaf in leaves if "opened" in leaf])
         check_checkpoint(f"log {log['id'][:8]}", log["checkpoint"], key, log, len(log["entries"]), hashes)
     for where, body in services:
         check_draws(where, body, purchases)
