@@ -12,6 +12,7 @@ const statusOf = {
   'cross-site': 403,
   'clock-behind': 503,
   'rolled-back': 503,
+  'key-unusable': 503,
   'already-sealed': 409,
   gone: 410,
   internal: 500,

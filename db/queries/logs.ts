@@ -38,6 +38,15 @@ export function findCheckpoint(log: string, size: number, options: In = {}): Pro
   return checkpoints.find({ logId: log, size }, options);
 }
 
+export function countCheckpoints(options: In = {}): Promise<number> {
+  return checkpoints.count({}, options);
+}
+
+/** Every name under which some log is signed. */
+export async function keyNamesOfLogs(options: In = {}): Promise<string[]> {
+  return [...new Set((await logs.all({}, options)).map(({ keyName }) => keyName))];
+}
+
 /** The log is marked for ever: some of its times were injected. */
 export async function markTimesInjected(log: string, transaction: Transaction): Promise<void> {
   await logs.update({ id: log }, { timesInjected: true }, { transaction });

@@ -81,7 +81,9 @@ function readOlder(text: string): { logs: OlderLog[]; madeAt: string | null } {
   const trimmed = text.trimStart();
   if (text.length > maxBundleCharacters) throw new Error('it is too large');
   if (!trimmed.startsWith('{')) {
-    return { logs: [{ note: text, checkpoint: parseCheckpoint(parseNote(text).text), hashes: [] }], madeAt: null };
+    // Saved out of a mail: mail programs end lines in their own way and leave space around what was marked.
+    const note = `${text.replaceAll('\r\n', '\n').trim()}\n`;
+    return { logs: [{ note, checkpoint: parseCheckpoint(parseNote(note).text), hashes: [] }], madeAt: null };
   }
   const bundle = parseJson(text);
   demandBundle(bundle);

@@ -2,7 +2,7 @@ import { type Checkpoint, parseCheckpoint } from '@/lib/evidence/checkpoint';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
 import type { Stamp } from '@/lib/evidence/finding';
 import { type Findings, reasonOf } from '@/lib/evidence/findings';
-import { type BundleLog, type Leaf, machineKinds, shelfKinds } from '@/lib/evidence/format';
+import { type BundleEntry, type BundleLog, type Leaf, machineKinds, shelfKinds } from '@/lib/evidence/format';
 import { checkNote, type KeyRing } from '@/lib/evidence/key-ring';
 import { leafHash, parseLeaf } from '@/lib/evidence/leaf';
 import { CompactTree } from '@/lib/evidence/merkle';
@@ -30,32 +30,78 @@ export interface WalkedLog {
  * @example walkLog(bundle.logs[0], ring, findings).lines.length;
  */
 export function walkLog(source: BundleLog, ring: KeyRing, findings: Findings): WalkedLog {
-  const tree = new CompactTree();
-  const lines: WalkedLine[] = [];
-  const mismatches: Mismatch[] = [];
-  let shift = 0;
-  let hasMoved = false;
-  for (const [seq, entry] of source.entries.entries()) {
-    const place = { log: source.id, seq };
-    const leaf = readLeaf(entry.leaf, source, seq, findings);
-    const hash = leafHash(entry.leaf);
-    tree.append(hash);
-    // One gap moves every later line: it is reported where it is, not again at each of them.
-    const isNewShift = leaf !== null && leaf.seq - seq !== shift;
-    if (leaf !== null) shift = leaf.seq - seq;
-    hasMoved ||= shift !== 0;
-    if (isNewShift && shift !== 0) reportMoved(leaf.seq, place, findings);
-    if (leaf !== null) checkLink(leaf, lines[seq - 1], place, findings);
-    const seal = readSeal(entry.seal.checkpoint, source, ring, findings, seq);
-    const mismatch = seal && whyNotThisTree(seal, tree, seal.size === seq + 1 + shift ? shift : 0);
-    if (mismatch) mismatches.push({ seq, technical: mismatch });
-    lines.push({ seq, hash, leaf, stamps: readStamps(entry.seal, place, seq + 1, findings) });
-  }
-  const checkpoint = readSeal(source.checkpoint, source, ring, findings);
-  const last = checkpoint && checkSize(checkpoint, source, tree, findings);
-  reportMismatches(source, mismatches, last, hasMoved, findings);
-  return { source, lines, checkpoint };
+  const walk = new LogWalk(source, ring, findings);
+  const lines = source.entries.map((entry) => walk.step(entry));
+  return { source, lines, checkpoint: walk.finish(source.checkpoint) };
 }
+
+/**
+ * The same walk, a line at a time: nothing of a line is kept but the one before, so a log of any length can be walked
+ * from where it is stored.
+ *
+ * @example
+ * const walk = new LogWalk(log, ring, findings);
+ * for (const entry of log.entries) walk.step(entry);
+ * walk.finish(log.checkpoint);
+ */
+export class LogWalk {
+  readonly #tree = new CompactTree();
+  readonly #mismatches: Mismatch[] = [];
+  #before: WalkedLine | undefined;
+  #shift = 0;
+  #hasMoved = false;
+
+  constructor(
+    readonly log: LogHead,
+    readonly ring: KeyRing,
+    readonly findings: Findings,
+  ) {}
+
+  /** The tree over every line walked so far, as `CompactTree.from` takes it. */
+  get tree(): string {
+    return this.#tree.serialise();
+  }
+
+  /** Checks the next line and its seal. */
+  step(entry: Pick<BundleEntry, 'leaf' | 'seal'>): WalkedLine {
+    const { log, ring, findings } = this;
+    const seq = this.#tree.size;
+    const place = { log: log.id, seq };
+    const leaf = readLeaf(entry.leaf, log, seq, findings);
+    const hash = leafHash(entry.leaf);
+    this.#tree.append(hash);
+    // One gap moves every later line: it is reported where it is, not again at each of them.
+    const isNewShift = leaf !== null && leaf.seq - seq !== this.#shift;
+    if (leaf !== null) this.#shift = leaf.seq - seq;
+    this.#hasMoved ||= this.#shift !== 0;
+    if (isNewShift && this.#shift !== 0) reportMoved(leaf.seq, place, findings);
+    if (leaf !== null) checkLink(leaf, this.#before, place, findings);
+    const seal = readSeal(entry.seal.checkpoint, log, ring, findings, seq);
+    const mismatch = seal && whyNotThisTree(seal, this.#tree, seal.size === seq + 1 + this.#shift ? this.#shift : 0);
+    if (mismatch) this.#mismatches.push({ seq, technical: mismatch });
+    this.#before = { seq, hash, leaf, stamps: readStamps(entry.seal, place, seq + 1, findings) };
+    return this.#before;
+  }
+
+  /** Checks the log's own signed root against every line walked, and names what does not belong. */
+  finish(checkpointNote: string): Checkpoint | null {
+    const { log, ring, findings } = this;
+    const checkpoint = readSeal(checkpointNote, log, ring, findings);
+    const last = checkpoint && checkSize(checkpoint, log, this.#tree, findings);
+    reportMismatches({
+      log,
+      mismatches: this.#mismatches,
+      size: this.#tree.size,
+      last,
+      hasMoved: this.#hasMoved,
+      findings,
+    });
+    return checkpoint;
+  }
+}
+
+/** What a log is, without its lines. */
+export type LogHead = Pick<BundleLog, 'id' | 'subject' | 'origin'>;
 
 interface Mismatch {
   seq: number;
@@ -98,7 +144,7 @@ function whyNotThisTree(seal: Checkpoint, tree: CompactTree, shift: number): str
 }
 
 /** The log's own signed root: what it says beside the tree, or null if it belongs to it or too few lines are here. */
-function checkSize(checkpoint: Checkpoint, log: BundleLog, tree: CompactTree, findings: Findings): string | null {
+function checkSize(checkpoint: Checkpoint, log: LogHead, tree: CompactTree, findings: Findings): string | null {
   if (checkpoint.size <= tree.size) return whyNotThisTree(checkpoint, tree, 0);
   const sentence = `Entries are missing: the ${log.subject}’s log had ${checkpoint.size} when it was signed, and ${tree.size} are here.`;
   findings.alter('entries-missing', { log: log.id }, sentence, `size ${checkpoint.size}, expected ${tree.size}`);
@@ -109,15 +155,18 @@ function checkSize(checkpoint: Checkpoint, log: BundleLog, tree: CompactTree, fi
  * If from one line on no seal belongs to the tree, and neither does the log's own root, that line was changed: it is
  * named, and not every seal after it. Else each seal that does not belong is named by itself.
  */
-function reportMismatches(
-  log: BundleLog,
-  mismatches: Mismatch[],
-  last: string | null,
-  hasMoved: boolean,
-  findings: Findings,
-): void {
+function reportMismatches(options: {
+  log: LogHead;
+  mismatches: Mismatch[];
+  /** How many lines were walked. */
+  size: number;
+  last: string | null;
+  hasMoved: boolean;
+  findings: Findings;
+}): void {
+  const { log, mismatches, size, last, hasMoved, findings } = options;
   const [first] = mismatches;
-  const reachTheEnd = first !== undefined && mismatches.length === log.entries.length - first.seq;
+  const reachTheEnd = first !== undefined && mismatches.length === size - first.seq;
   if (first !== undefined && reachTheEnd && last !== null && !hasMoved) {
     const sentence = `Entry ${first.seq} was changed after it was sealed: from here on, no seal belongs to the entries as they stand.`;
     findings.alter('leaf-changed', { log: log.id, seq: first.seq }, sentence, first.technical);
@@ -132,7 +181,7 @@ function reportMismatches(
   findings.alter('root-mismatch', { log: log.id }, sentence, last);
 }
 
-function readLeaf(text: string, log: BundleLog, seq: number, findings: Findings): Leaf | null {
+function readLeaf(text: string, log: LogHead, seq: number, findings: Findings): Leaf | null {
   const place = { log: log.id, seq };
   let leaf: Leaf;
   try {
@@ -163,13 +212,7 @@ function readLeaf(text: string, log: BundleLog, seq: number, findings: Findings)
 }
 
 /** `seq` names the entry whose seal this is; without it, it is the log's own checkpoint. */
-function readSeal(
-  noteText: string,
-  log: BundleLog,
-  ring: KeyRing,
-  findings: Findings,
-  seq?: number,
-): Checkpoint | null {
+function readSeal(noteText: string, log: LogHead, ring: KeyRing, findings: Findings, seq?: number): Checkpoint | null {
   const place = seq === undefined ? { log: log.id } : { log: log.id, seq };
   const what = seq === undefined ? `the ${log.subject}’s log` : `entry ${seq}`;
   const note = checkNote(noteText, ring, seq === undefined ? 'chosen' : 'any-listed', place, what, findings);

@@ -13,8 +13,16 @@ const shared = globalThis as typeof globalThis & { witnessmarkIssuedQueue?: Limi
 const folder = () => path.join(env.dataFolder, 'checkpoints');
 const fileOf = (log: string) => path.join(folder(), `${log}.note`);
 
-/** The highest checkpoint of a log that this installation ever gave out; null when none is remembered. */
-export function issuedCheckpoint(log: string): Checkpoint | null {
+export interface IssuedCheckpoint extends Checkpoint {
+  /** The signed note as it was given out. */
+  note: string;
+}
+
+/**
+ * The highest checkpoint of a log that this installation ever gave out; null when none is remembered. Throws if the
+ * file that remembers it cannot be read, or is about another log: that is no reason to forget it.
+ */
+export function issuedCheckpoint(log: string): IssuedCheckpoint | null {
   let note: string;
   try {
     note = readFileSync(fileOf(log), 'utf8');
@@ -22,7 +30,9 @@ export function issuedCheckpoint(log: string): Checkpoint | null {
     if ((error as NodeJS.ErrnoException).code === 'ENOENT') return null;
     throw error;
   }
-  return parseCheckpoint(parseNote(note).text);
+  const checkpoint = parseCheckpoint(parseNote(note).text);
+  if (checkpoint.log !== log) throw new Error(`${fileOf(log)} holds a checkpoint of the log ${checkpoint.log}.`);
+  return { ...checkpoint, note };
 }
 
 /** The logs of which a checkpoint is remembered. */

@@ -1,4 +1,5 @@
 import 'server-only';
+import { lastCheckpoint } from '@/db/queries/logs';
 import { parseCheckpoint, parseNote } from '@/lib/evidence/checkpoint';
 import { isClockInjected } from '@/lib/ports/clock';
 import { rememberIssued } from '@/lib/ports/issued-checkpoints';
@@ -6,13 +7,16 @@ import { kickStamping, stampCheckpoint } from '@/lib/services/stamp-checkpoints'
 
 /** What follows a committed seal. Nothing here may fail it: the entry exists. */
 export async function afterSealing(note: string): Promise<void> {
+  const { log, size } = parseCheckpoint(parseNote(note).text);
   try {
     await rememberIssued(note);
+    // Another process may have sealed after this one and written before it: the newest of all has the last word.
+    const newest = await lastCheckpoint(log);
+    if (newest !== null && newest.size > size) await rememberIssued(newest.note);
   } catch (error) {
     console.error('The newest checkpoint could not be kept outside the database; the next seal tries again.', error);
   }
   if (!isClockInjected()) return kickStamping();
-  const { log, size } = parseCheckpoint(parseNote(note).text);
   try {
     // Under an injected clock the stamp must show that clock's time, so it cannot wait for the background.
     await stampCheckpoint(log, size);

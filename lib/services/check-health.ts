@@ -4,7 +4,7 @@ import { open, rm } from 'node:fs/promises';
 import path from 'node:path';
 import { demandDatabase } from '@/db/queries/logs';
 import { env } from '@/lib/env';
-import { signingKey } from '@/lib/ports/signing-key';
+import { keyTrouble } from '@/lib/services/log-keys';
 import { rollbacksNoticed } from '@/lib/services/start-server-work';
 
 type Answer = 'ok' | 'failed';
@@ -35,11 +35,16 @@ async function check(): Promise<Health> {
   const [database, storage, key] = await Promise.all([
     answer('The database does not answer.', demandDatabase),
     answer('The data folder cannot be written.', writeAndRemove),
-    answer('The signing key cannot be used.', async () => void signingKey()),
+    answer('The signing key cannot be used.', demandSigningKey),
   ]);
   const checkpoints = rollbacksNoticed().length === 0 ? 'ok' : 'failed';
   const ok = [database, storage, key, checkpoints].every((each) => each === 'ok');
   return { ok, database, storage, signingKey: key, checkpoints };
+}
+
+async function demandSigningKey(): Promise<void> {
+  const trouble = keyTrouble();
+  if (trouble !== null) throw new Error(trouble);
 }
 
 async function answer(sentence: string, work: () => Promise<void>): Promise<Answer> {

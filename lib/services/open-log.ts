@@ -8,6 +8,7 @@ import { env } from '@/lib/env';
 import { WitnessmarkError } from '@/lib/errors';
 import { isClockInjected, now } from '@/lib/ports/clock';
 import { afterSealing } from '@/lib/services/after-sealing';
+import { prepareSigningKey } from '@/lib/services/prepare-signing-key';
 import { type NextEntry, type Sealed, sealNext } from '@/lib/services/seal-next';
 
 /**
@@ -28,6 +29,8 @@ export async function openLog(
       const { seq, leafHash, sealedAt } = opening;
       return { sealed: { log: existing.id, seq, leafHash, sealedAt }, note: null };
     }
+    // Only an opening can be the first thing that an installation ever signs.
+    await prepareSigningKey({ transaction });
     const log: LogRow = {
       id: randomUUID(),
       subject,

@@ -5,15 +5,16 @@ import { sweepIncomingBlobs } from '@/lib/ports/blob-store';
 import { ownCertificates } from '@/lib/ports/time-stamp-authority/own-certificates';
 import { appointSteward } from '@/lib/services/appoint-steward';
 import { resumePackets } from '@/lib/services/build-packet';
-import { publishedKeys } from '@/lib/services/log-keys';
+import { keyTrouble, publishedKeys } from '@/lib/services/log-keys';
 import { noticeRollbacks } from '@/lib/services/notice-rollback';
+import { prepareSigningKey } from '@/lib/services/prepare-signing-key';
 import { kickStamping } from '@/lib/services/stamp-checkpoints';
 
 const stampingEveryMilliseconds = 60_000;
 
 /** Next may load a module twice in one process; the work is started once all the same. */
 const shared = globalThis as typeof globalThis & {
-  witnessmarkServerWork?: { started: Promise<void>; rollbacks: string[] };
+  witnessmarkServerWork?: { started: Promise<void>; rollbacks: readonly string[] };
 };
 
 /** In order, each before the server answers its first request. A failure here stops the start, with its sentence. */
@@ -21,8 +22,7 @@ const beforeFirstRequest: (() => Promise<unknown>)[] = [
   prepareDatabase,
   migrate,
   appointSteward,
-  // Made now, so that a key that cannot be used is said at the start and not at somebody's seal.
-  async () => [publishedKeys(), ownCertificates()],
+  reportKeys,
   reportRollbacks,
   () => sweepIncomingBlobs(),
 ];
@@ -56,8 +56,24 @@ async function resume(work: () => void | Promise<void>): Promise<void> {
   }
 }
 
+/**
+ * Keys are made or looked at now, so that one that cannot be used is said at the start and not only at somebody's seal.
+ * Without it nothing is sealed, but every record can be read: the server starts all the same.
+ */
+async function reportKeys(): Promise<void> {
+  await prepareSigningKey();
+  const trouble = keyTrouble();
+  if (trouble === null) publishedKeys();
+  else console.error(`Nothing can be sealed: ${trouble}`);
+  try {
+    ownCertificates();
+  } catch (error) {
+    console.error('No time stamps of this installation’s own:', error instanceof Error ? error.message : error);
+  }
+}
+
 async function reportRollbacks(): Promise<void> {
-  const sentences = await noticeRollbacks();
+  const sentences = (await noticeRollbacks()).map(({ sentence }) => sentence);
   for (const sentence of sentences) console.error(sentence);
-  shared.witnessmarkServerWork?.rollbacks.push(...sentences);
+  if (shared.witnessmarkServerWork) shared.witnessmarkServerWork.rollbacks = sentences;
 }

@@ -48,6 +48,14 @@ it('a record agrees with a signed checkpoint kept from a mail', () => {
   });
 });
 
+it('a checkpoint saved out of a mail counts whatever line ends and space the mail program put around it', () => {
+  const saved = `\r\n${(log.seals[1] ?? '').replaceAll('\n', '\r\n')}\r\n\r\n`;
+  expect(verifyBundle({ bundleText: text, key, against: saved })).toMatchObject({
+    outcome: 'unchanged',
+    against: { result: 'consistent' },
+  });
+});
+
 it('a record with another past is forked: the first differing entry is named and both notes are kept', () => {
   const past = logOf('100');
   const newer = past.fork();
