@@ -10,7 +10,7 @@ export const alterationCodes = {
   'bundle-changed': 'The file as a whole is not what its signature was made for, or not of its form.',
   'part-mismatch': 'An opened part is not the part that was sealed.',
   'reference-broken': 'A line refers to something that is not there, or not what it was.',
-  'token-invalid': 'A time stamp does not belong to the signed root that it hangs on.',
+  'token-invalid': 'A time stamp does not hold, or does not belong to the signed root that it hangs on.',
   'statement-signature-invalid': 'A signature made on a person’s own device does not hold.',
   'entries-missing': 'Lines that must be there are not.',
   'file-changed': 'A file is not the one that was sealed.',
@@ -24,7 +24,7 @@ export type AlterationCode = keyof typeof alterationCodes;
 export const remarkCodes = {
   'key-from-file': 'The key was taken from the file itself.',
   'not-time-stamped': 'Lines are covered by no time stamp.',
-  'authority-unknown': 'It was not established who made a time stamp.',
+  'authority-unknown': 'A time stamp is not shown to be independent.',
   'stamped-late': 'The proven time is more than 72 hours after sealing.',
   'clock-off': 'A time stamp is older than the sealing time of a line that it covers.',
   withheld: 'Parts are withheld.',

@@ -1,4 +1,5 @@
 import { type Checkpoint, parseCheckpoint } from '@/lib/evidence/checkpoint';
+import type { AlterationCode } from '@/lib/evidence/codes';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
 import type { Stamp } from '@/lib/evidence/finding';
 import { type Findings, reasonOf } from '@/lib/evidence/findings';
@@ -6,7 +7,7 @@ import { type BundleEntry, type BundleLog, type Leaf, machineKinds, shelfKinds }
 import { checkNote, type KeyRing } from '@/lib/evidence/key-ring';
 import { leafHash, parseLeaf } from '@/lib/evidence/leaf';
 import { CompactTree } from '@/lib/evidence/merkle';
-import { readStamps } from '@/lib/evidence/verify-stamps';
+import { readStamps, type StampCheck } from '@/lib/evidence/verify-stamps';
 
 /** One line of a log after its walk. */
 export interface WalkedLine {
@@ -14,6 +15,8 @@ export interface WalkedLine {
   hash: string;
   /** Null if the line cannot be read. */
   leaf: Leaf | null;
+  /** Its seal is signed and belongs to the lines up to here: only then do the stamps on it cover them. */
+  isSealed: boolean;
   stamps: Stamp[];
 }
 /** A log after its walk. */
@@ -29,8 +32,8 @@ export interface WalkedLog {
  *
  * @example walkLog(bundle.logs[0], ring, findings).lines.length;
  */
-export function walkLog(source: BundleLog, ring: KeyRing, findings: Findings): WalkedLog {
-  const walk = new LogWalk(source, ring, findings);
+export function walkLog(source: BundleLog, ring: KeyRing, findings: Findings, check?: StampCheck): WalkedLog {
+  const walk = new LogWalk(source, ring, findings, check);
   const lines = source.entries.map((entry) => walk.step(entry));
   return { source, lines, checkpoint: walk.finish(source.checkpoint) };
 }
@@ -55,6 +58,7 @@ export class LogWalk {
     readonly log: LogHead,
     readonly ring: KeyRing,
     readonly findings: Findings,
+    readonly check?: StampCheck,
   ) {}
 
   /** The tree over every line walked so far, as `CompactTree.from` takes it. */
@@ -64,7 +68,7 @@ export class LogWalk {
 
   /** Checks the next line and its seal. */
   step(entry: Pick<BundleEntry, 'leaf' | 'seal'>): WalkedLine {
-    const { log, ring, findings } = this;
+    const { log, ring, findings, check } = this;
     const seq = this.#tree.size;
     const place = { log: log.id, seq };
     const leaf = readLeaf(entry.leaf, log, seq, findings);
@@ -79,7 +83,12 @@ export class LogWalk {
     const seal = readSeal(entry.seal.checkpoint, log, ring, findings, seq);
     const mismatch = seal && whyNotThisTree(seal, this.#tree, seal.size === seq + 1 + this.#shift ? this.#shift : 0);
     if (mismatch) this.#mismatches.push({ seq, technical: mismatch });
-    this.#before = { seq, hash, leaf, stamps: readStamps(entry.seal, place, seq + 1, findings) };
+    const isSealed =
+      seal?.size === this.#tree.size &&
+      seal.root === this.#tree.root &&
+      !isSealRefused(findings.problemsOf(log.id, seq));
+    const stamps = readStamps(entry.seal, place, seq + 1, findings, check);
+    this.#before = { seq, hash, leaf, isSealed, stamps };
     return this.#before;
   }
 
@@ -99,6 +108,9 @@ export class LogWalk {
     return checkpoint;
   }
 }
+
+const sealProblems: ReadonlySet<AlterationCode> = new Set(['bad-signature', 'unknown-key', 'root-mismatch']);
+const isSealRefused = (problems: AlterationCode[]): boolean => problems.some((code) => sealProblems.has(code));
 
 /** What a log is, without its lines. */
 export type LogHead = Pick<BundleLog, 'id' | 'subject' | 'origin'>;

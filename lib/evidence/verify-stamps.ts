@@ -2,12 +2,23 @@ import { fromBase64 } from '@/lib/evidence/bytes';
 import type { Stamp } from '@/lib/evidence/finding';
 import { type Findings, reasonOf } from '@/lib/evidence/findings';
 import { sha256Hex } from '@/lib/evidence/hash';
-import { isTokenOf, readToken } from '@/lib/evidence/token';
+import { StampTrust } from '@/lib/evidence/stamp-trust';
+import { checkToken, isTokenOf } from '@/lib/evidence/token';
 
 const maxTokensPerSeal = 16;
+/** The clock of whoever checks may be this much behind. */
+const clockToleranceMilliseconds = 300_000;
+
+/** What time stamps are judged by. */
+export interface StampCheck {
+  trust: StampTrust;
+  /** When this is checked, in milliseconds since 1970; a stamp from later is none. Undefined: not asked. */
+  at?: number | undefined;
+}
 
 /**
- * Reads the time stamps on a seal: each must have been made for exactly this signed note.
+ * Checks the time stamps on a seal: each must hold by itself and have been made for exactly this signed note. One that
+ * does not is named and left out of what is returned.
  *
  * @param size size of the checkpoint they stand on
  * @example readStamps(entry.seal, { log, seq: 2 }, 3, findings).length;
@@ -17,6 +28,7 @@ export function readStamps(
   place: { log: string; seq: number },
   size: number,
   findings: Findings,
+  check: StampCheck = { trust: new StampTrust() },
 ): Stamp[] {
   const stamps: Stamp[] = [];
   if (seal.tokens.length > maxTokensPerSeal) {
@@ -25,17 +37,20 @@ export function readStamps(
   }
   for (const base64 of seal.tokens.slice(0, maxTokensPerSeal)) {
     try {
-      const token = readToken(fromBase64(base64));
-      if (isTokenOf(token, seal.checkpoint)) {
-        const { genTime, serial, policy } = token;
-        const der = sha256Hex(fromBase64(base64));
-        stamps.push({ genTime, serial, policy, size, sha256: der, signer: null, trust: 'unknown', root: null });
-      } else {
+      const der = fromBase64(base64);
+      const token = checkToken(der);
+      const { genTime, serial, policy } = token;
+      if (!isTokenOf(token, seal.checkpoint)) {
         const sentence = `A time stamp of entry ${place.seq} was made for something else.`;
         findings.alter('token-invalid', place, sentence, 'the imprint is not SHA-256 of the signed checkpoint');
+      } else if (check.at !== undefined && Date.parse(genTime) > check.at + clockToleranceMilliseconds) {
+        const sentence = `A time stamp of entry ${place.seq} says ${genTime}, which has not come yet.`;
+        findings.alter('token-invalid', place, sentence, `checked at ${new Date(check.at).toISOString()}`);
+      } else {
+        stamps.push({ genTime, serial, policy, size, sha256: sha256Hex(der), ...check.trust.of(token) });
       }
     } catch (error) {
-      findings.alter('token-invalid', place, `A time stamp of entry ${place.seq} cannot be read.`, reasonOf(error));
+      findings.alter('token-invalid', place, `A time stamp of entry ${place.seq} does not hold.`, reasonOf(error));
     }
   }
   return stamps;

@@ -6,7 +6,9 @@ import { Findings, reasonOf } from '@/lib/evidence/findings';
 import type { Bundle } from '@/lib/evidence/format';
 import { checkNote, chooseKey, type KeyRing } from '@/lib/evidence/key-ring';
 import { compareWith } from '@/lib/evidence/verify-against';
-import { describeEntries, describeLogs, remarkOnStamps, remarkOnWithheld } from '@/lib/evidence/verify-entries';
+import { remarkOnStamps } from '@/lib/evidence/remark-on-stamps';
+import { StampTrust } from '@/lib/evidence/stamp-trust';
+import { describeEntries, describeLogs, remarkOnWithheld } from '@/lib/evidence/verify-entries';
 import { checkFiles, type GivenFile } from '@/lib/evidence/verify-files';
 import { walkLog } from '@/lib/evidence/verify-log';
 import { openParts } from '@/lib/evidence/verify-parts';
@@ -23,6 +25,13 @@ export interface VerifyRequest {
   key?: string;
   /** An older `record.json` of the same record, or a signed checkpoint. */
   against?: string;
+  /**
+   * Root certificates (DER) of time-stamp authorities that the reader trusts, from wherever the reader got them. Only
+   * what a chain to one of these vouches for is proven; no root is ever taken from the file.
+   */
+  roots?: readonly Uint8Array[];
+  /** When this is checked, as an instant: a time stamp from later is invalid. Absent: not asked. */
+  at?: string;
   /** The record came out of a packet whose pages were not checked. */
   pagesNotChecked?: boolean;
 }
@@ -70,8 +79,10 @@ function verify(request: VerifyRequest): Finding {
 function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findings): Finding {
   const ring = chooseKey(bundle.verifierKeys, request.key, findings);
   checkBundleSignature(bundle, ring, findings);
+  const trust = new StampTrust(request.roots);
+  const check = { trust, at: request.at === undefined ? undefined : Date.parse(request.at) };
   const logs: OpenedLog[] = bundle.logs.map((source) => {
-    const walked = walkLog(source, ring, findings);
+    const walked = walkLog(source, ring, findings, check);
     const parts = source.entries.map((entry, seq) => {
       const line = walked.lines[seq];
       return line === undefined ? { opened: new Map(), withheld: [] } : openParts(entry, line, source.id, findings);
@@ -83,7 +94,7 @@ function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findin
   checkFiles(bundle.files, logs, request.files, findings);
   const against =
     request.against === undefined ? null : compareWith(request.against, logs, bundle.madeAt, ring, findings);
-  remarkOnStamps(logs, findings);
+  remarkOnStamps(logs, trust, findings);
   remarkOnWithheld(logs, findings);
   if (request.pagesNotChecked === true) {
     findings.remark('pages-not-checked', 'The pages were not checked: what counts is the record inside the packet.');

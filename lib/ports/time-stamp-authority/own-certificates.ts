@@ -11,6 +11,8 @@ import {
 import path from 'node:path';
 import { Certificate } from 'pkijs';
 import { env } from '@/lib/env';
+import { oids } from '@/lib/evidence/oids';
+import { ownAuthorityName } from '@/lib/evidence/own-authority';
 import { readOrMakeSecretFile } from '@/lib/ports/secret-file';
 import {
   bitString,
@@ -26,9 +28,7 @@ import {
   utcTime,
   utf8String,
 } from './der';
-import { oids } from '@/lib/evidence/oids';
 
-export const ownAuthorityName = 'Witnessmark test authority (not independent)';
 const stamperName = 'Witnessmark test time stamps (not independent)';
 
 // Certificates are judged at the time of the stamp, and the demo's injected clock stands years back.

@@ -1,6 +1,9 @@
 import 'server-only';
 import { createHash, sign } from 'node:crypto';
 import type { TimeStampReq } from 'pkijs';
+import { digestOf } from '@/lib/evidence/digests';
+import { oids } from '@/lib/evidence/oids';
+import { ownAuthorityName } from '@/lib/evidence/own-authority';
 import { now } from '@/lib/ports/clock';
 import {
   context,
@@ -14,9 +17,7 @@ import {
   setOf,
   utf8String,
 } from './der';
-import { digestOf } from '@/lib/evidence/digests';
-import { oids } from '@/lib/evidence/oids';
-import { ownAuthorityName, type OwnCertificates, ownCertificates, serialNumber } from './own-certificates';
+import { type OwnCertificates, ownCertificates, serialNumber } from './own-certificates';
 import { parseRequest } from './request';
 import type { TimeStampAuthority } from './time-stamp-authority';
 
