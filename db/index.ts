@@ -74,4 +74,29 @@ export function write<T>(work: (transaction: Transaction) => Promise<T>): Promis
   );
 }
 
+/**
+ * Rewrites the whole database file and empties the write-ahead log, so that nothing deleted is left in either: a freed
+ * page, or the unused end of one, keeps its old bytes otherwise. Takes its turn among the writes and, for SQLite
+ * refuses to rewrite while a statement runs on the same connection, a connection of its own.
+ */
+export function purgeDeleted(): Promise<void> {
+  shared.witnessmarkWriteQueue ??= pLimit(1);
+  return shared.witnessmarkWriteQueue(async () => {
+    const own = connect(databaseFile());
+    try {
+      await own.query('VACUUM');
+      const rows = await own.query<{ busy: number }>('PRAGMA wal_checkpoint(TRUNCATE)', { type: QueryTypes.SELECT });
+      if (rows[0]?.busy !== 0)
+        throw new Error('The write-ahead log could not be emptied: somebody is still reading it.');
+    } finally {
+      await own.close();
+    }
+  });
+}
+
+/** What is deleted in this transaction is overwritten with zeros where it stands. */
+export async function overwriteDeleted(transaction: Transaction): Promise<void> {
+  await database().query('PRAGMA secure_delete = ON', { transaction });
+}
+
 export type { Transaction };

@@ -1,5 +1,5 @@
 import 'server-only';
-import { QueryTypes } from 'sequelize';
+import { Op, QueryTypes } from 'sequelize';
 import { database, type Transaction } from '../index';
 import { files, uploads, type FileRow, type UploadRow } from '../models/drafts';
 
@@ -9,6 +9,17 @@ export const findFile = (sha256: string): Promise<FileRow | null> => files.find(
 
 export const filesBySha256 = (hashes: string[], transaction?: Transaction): Promise<FileRow[]> =>
   files.all({ sha256: hashes }, transaction ? { transaction } : {});
+
+/** Which of these files an upload still names, as original, shared copy or thumb. */
+export async function filesNamedByUploads(hashes: string[], transaction: Transaction): Promise<string[]> {
+  const rows = await uploads.all(
+    { [Op.or]: [{ sha256: hashes }, { copySha256: hashes }, { thumbSha256: hashes }] },
+    { transaction },
+  );
+  return rows.flatMap(({ sha256, copySha256, thumbSha256 }) =>
+    [sha256, copySha256, thumbSha256].filter((hash) => hash !== null),
+  );
+}
 
 /** How many bytes a person's uploads since an instant have together; a file sent twice counts twice. */
 export async function bytesSentBy(personId: string, since: string): Promise<number> {

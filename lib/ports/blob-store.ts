@@ -100,6 +100,27 @@ export const blobStore = {
   has: (sha256: string): Promise<boolean> => exists(blobPath(sha256)),
 };
 
+/** Takes a file away for good. Only after the row that named it is gone; one that is not there is no error. */
+export async function removeBlob(sha256: string): Promise<void> {
+  await rm(blobPath(sha256), { force: true });
+}
+
+/** The name of every stored file, folder by folder. */
+export async function* blobNames(): AsyncGenerator<string> {
+  for (const folder of await readdirOrNone(root())) {
+    if (!/^[0-9a-f]{2}$/.test(folder)) continue;
+    for (const name of await readdirOrNone(path.join(root(), folder))) {
+      if (/^[0-9a-f]{64}$/.test(name) && name.startsWith(folder)) yield name;
+    }
+  }
+}
+
+export async function countBlobs(): Promise<number> {
+  let count = 0;
+  for await (const _ of blobNames()) count += 1;
+  return count;
+}
+
 /** Removes what an interrupted upload left behind. Returns how many files that were. */
 export async function sweepIncomingBlobs(olderThanMilliseconds = 3_600_000): Promise<number> {
   await mkdir(incoming(), { recursive: true });
@@ -112,6 +133,13 @@ export async function sweepIncomingBlobs(olderThanMilliseconds = 3_600_000): Pro
     swept += 1;
   }
   return swept;
+}
+
+async function readdirOrNone(folder: string): Promise<string[]> {
+  return readdir(folder).catch((error: NodeJS.ErrnoException) => {
+    if (error.code === 'ENOENT') return [];
+    throw error;
+  });
 }
 
 async function exists(file: string): Promise<boolean> {
