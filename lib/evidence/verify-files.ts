@@ -4,11 +4,15 @@ import { sha256Hex } from '@/lib/evidence/hash';
 import { isAttachments } from '@/lib/evidence/verify-parts';
 import type { OpenedLog } from '@/lib/evidence/verify-references';
 
-/** A file as it was found in a packet or a folder. */
+/** A file as it was found in a packet, an export or a folder. */
 export interface GivenFile {
   name: string;
   bytes: Uint8Array;
+  /** It came at the top of an export for people, as `companionNames` says: no entry has to name it. */
+  isCompanion?: true;
 }
+/** What lies at the top of an export beside the record, for whoever finds it later. */
+export const companionNames: readonly string[] = ['README.txt', 'verify.mjs', 'verify.html'];
 type FileNote = Pick<BundleFile, 'sha256' | 'bytes' | 'mediaType'>;
 
 /**
@@ -32,8 +36,16 @@ export function checkFiles(
     return;
   }
   const byName = new Map(listed.map((file) => [file.name, file]));
+  const companions = given.filter((file) => file.isCompanion === true && !byName.has(file.name));
+  if (companions.length > 0) {
+    const which = companions.map((file) => file.name).join(', ');
+    findings.notChecked.push(
+      `${which}: they come with the export and are no part of the record. To check it, use a program from elsewhere.`,
+    );
+  }
   const present = new Set<string>();
   for (const file of given) {
+    if (companions.includes(file)) continue;
     const hash = sha256Hex(file.bytes);
     const named = byName.get(file.name);
     if (named !== undefined && named.sha256 !== hash) {
