@@ -293,7 +293,7 @@ export interface CountersignatureBody {
     /** Who confirmed the shop (`steward`), or null: "not confirmed; this could be the owner". */
     confirmedBy: string | null;
   };
-  /** Name of the person who invited the shop. */
+  /** UUID of the person who invited the shop, as in the author parts; in earlier entries the name itself. */
   invitedBy: string;
   /** Made by the signer's own key over this body without it, outside the server. */
   signature?: StatementSignature;
@@ -324,6 +324,8 @@ export interface AuthorPart {
   name: string;
   role: 'owner' | 'helper' | 'shop';
   sealedBy?: string;
+  /** Names of others whom the body names by id, such as a helper who did some of the work. */
+  people?: { person: string; name: string }[];
 }
 
 export const attachmentRoles = [

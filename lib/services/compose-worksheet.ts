@@ -68,13 +68,26 @@ export async function composeWorksheet(options: {
     ...missing,
     ...(terms === null ? { terms: 'This machine has no terms yet. Save its schedule once, then seal.' } : {}),
   };
-  const author: AuthorPart = { person: person.id, name: person.name, role: 'owner' };
+  const named = await namesOf(fields, { changes, related, transaction });
+  const others = worksheet.performedBy.flatMap(({ id, capacity }) => {
+    const name = isBusiness(capacity) ? undefined : named.get(id);
+    return id === person.id || name === undefined ? [] : [{ person: id, name }];
+  });
+  const author: AuthorPart = {
+    person: person.id,
+    name: person.name,
+    role: 'owner',
+    ...(others.length === 0 ? {} : { people: others }),
+  };
   const base = { machine, worksheet, attachments, author, problems };
   if (terms === null || termsSeq === null || Object.keys(problems).length > 0) {
     return { ...base, parts: {}, fingerprint: '' };
   }
-  const names = await namesOf(fields, { changes, related, transaction });
-  const unchecked = serviceFrom({ worksheet, terms, termsSeq, lots, people: names });
+  const businesses = worksheet.performedBy.flatMap(({ id, capacity }) => {
+    const name = isBusiness(capacity) ? named.get(id) : undefined;
+    return name === undefined ? [] : [[id, name] as const];
+  });
+  const unchecked = serviceFrom({ worksheet, terms, termsSeq, lots, people: Object.fromEntries(businesses) });
   const body = { ...unchecked, checks: checksOf({ body: unchecked, history, attachments, at }) };
   const notes = worksheet.notes === undefined ? undefined : { text: worksheet.notes };
   return {
@@ -99,11 +112,15 @@ function withDefaults(
   return { ...given, ...Object.fromEntries(writers.map((id) => [`performedBy/${id}/capacity`, capacityOf(id)])) };
 }
 
+/** The name of a business stands in the body; of a person it has the id, and the name stands in the author part. */
+const isBusiness = (capacity: Worksheet['performedBy'][number]['capacity']) =>
+  capacity === 'shop' || capacity === 'dealer';
+
 /** Names of those who did the work: as typed for a shop, else of people of this machine only. */
 async function namesOf(
   fields: Fields,
   options: { changes: DraftChangeRow[]; related: RelationRow[]; transaction?: Transaction | undefined },
-): Promise<Record<string, string>> {
+): Promise<Map<string, string>> {
   const { changes, related, transaction } = options;
   const ids = [...new Set([...changes, ...related].map(({ personId }) => personId))];
   const rows = await people.all({ id: ids }, transaction ? { transaction } : {});
@@ -111,7 +128,7 @@ async function namesOf(
     const id = /^performedBy\/([^/]+)\/name$/.exec(field)?.[1];
     return id === undefined || value.trim() === '' ? [] : [[id, value.trim()] as const];
   });
-  return Object.fromEntries([...typed, ...rows.map(({ id, name }) => [id, name] as const)]);
+  return new Map([...typed, ...rows.map(({ id, name }) => [id, name] as const)]);
 }
 
 async function lotsOfOwners(related: RelationRow[], transaction?: Transaction): Promise<ShelfLot[]> {

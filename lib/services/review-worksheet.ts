@@ -4,11 +4,13 @@ import type { PersonRow } from '@/db/models/people';
 import { standingOf } from '@/lib/auth/guard';
 import { procedureFor } from '@/lib/domain/procedures';
 import { notFound } from '@/lib/errors';
+import type { ServiceBody } from '@/lib/evidence/format';
 import { paths } from '@/lib/paths';
 import { now } from '@/lib/ports/clock';
 import { composeWorksheet, type ComposedWorksheet } from './compose-worksheet';
 import { demandDraft, refuseClosed } from './draft-access';
 import { machineName } from './list-machines';
+import { nameOfPeople, withPerformers } from './names-of-people';
 
 export interface Problem {
   field: string;
@@ -26,6 +28,8 @@ export interface WorksheetReview {
   /** The number the entry would have now. */
   nextSeq: number;
   composed: ComposedWorksheet | null;
+  /** What would be sealed, as people read it. */
+  body: ServiceBody | null;
   problems: Problem[];
   mayISeal: boolean;
 }
@@ -62,6 +66,7 @@ export async function reviewWorksheet(options: { person: PersonRow; draftId: str
     sealedAs: draft.state === 'sealed' ? draft.sealedSeq : null,
     nextSeq: (head?.lastEntry?.seq ?? -1) + 1,
     composed,
+    body: composed?.body === undefined ? null : withPerformers(composed.body, nameOfPeople([composed.author])),
     problems: Object.entries(composed?.problems ?? {}).map(([field, sentence]) => ({
       field,
       where: composed === null ? '' : whereOf(field, composed),

@@ -1,4 +1,5 @@
 import { confirmedWords } from '@/components/entry/words';
+import { isPersonId } from '@/lib/domain/person-id';
 import { formatInstant, formatLocalMoment } from '@/lib/domain/instants';
 import { formatAmount, formatDistance, isDecimalString, isUnitCode } from '@/lib/domain/units';
 import type { EntryFinding } from '@/lib/evidence/finding';
@@ -108,7 +109,8 @@ function bodyWords(
     case 'countersignature': {
       const shop = textOf(looseOf(body.shop).name);
       const capacity = capacities[textOf(body.capacity)] ?? textOf(body.capacity);
-      const invited = textOf(body.invitedBy) === '' ? '' : `Invited by ${textOf(body.invitedBy)}.`;
+      const inviter = textOf(body.invitedBy);
+      const invited = inviter === '' ? '' : `Invited by ${isPersonId(inviter) ? 'the owner' : inviter}.`;
       const confirmedBy = textOf(looseOf(body.shop).confirmedBy);
       const since = textOf(looseOf(body.shop).accountSince).slice(0, 10);
       const known =

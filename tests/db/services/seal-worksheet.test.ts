@@ -7,6 +7,7 @@ import { confirmReceipt } from '@/lib/services/confirm-receipt';
 import { readBench } from '@/lib/services/read-bench';
 import { readDraft } from '@/lib/services/read-draft';
 import { readGarage } from '@/lib/services/read-garage';
+import { readRecord } from '@/lib/services/read-record';
 import { readHistory } from '@/lib/services/read-history';
 import { readShelfLots } from '@/lib/services/read-shelf-lots';
 import { reviewWorksheet } from '@/lib/services/review-worksheet';
@@ -92,7 +93,7 @@ describe('a worksheet on its way into the record', () => {
     expect(body).toMatchObject({
       termsSeq: 1,
       odometer: { value: '10238', unit: '[mi_i]', instrument: 0 },
-      performedBy: [{ person: 'Imke Vandersloot', capacity: 'owner' }],
+      performedBy: [{ person: person.id, capacity: 'owner' }],
     });
     const [task] = body.tasks;
     expect(task?.fills[0]?.amounts).toEqual([
@@ -158,7 +159,7 @@ describe('a worksheet on its way into the record', () => {
     expect((await readDraft({ person, draftId })).draft.state).toBe('open');
   });
 
-  it('may be filled in by a helper, who is named, but only an owner seals', async () => {
+  it('may be filled in by a helper, who is named in the author part alone, but only an owner seals', async () => {
     const { person, machine, begin } = await riderWithOil();
     const helper = await lendAHand(machine);
     const draftId = await begin();
@@ -166,7 +167,12 @@ describe('a worksheet on its way into the record', () => {
     await expect(sealWorksheet({ person: helper, draftId })).rejects.toMatchObject({ code: 'forbidden' });
     await sealWorksheet({ person, draftId });
     const [service] = (await readHistory(machine)).services;
-    expect(service?.body.performedBy).toEqual(
+    expect(JSON.stringify(service?.body)).not.toContain('Vandersloot');
+    const { entries } = await readRecord({ machineId: machine });
+    const entry = entries.at(-1);
+    expect(entry?.author?.people).toEqual([{ person: helper.id, name: 'Joost Vandersloot' }]);
+    // People read names all the same.
+    expect(entry?.kind === 'service' && entry.body?.performedBy).toEqual(
       expect.arrayContaining([
         { person: 'Imke Vandersloot', capacity: 'owner' },
         { person: 'Joost Vandersloot', capacity: 'helper' },

@@ -46,15 +46,15 @@ export default async function ReviewPage({ params }: { params: Promise<{ workshe
         }
       />
       <ProblemList problems={problems} />
-      {composed.body === undefined ? null : (
+      {review.body === null ? null : (
         <>
           <EntryPreview
-            body={composed.body}
+            body={review.body}
             notes={composed.notes?.text}
             attachments={composed.attachments}
             machine={machine.id}
           />
-          <ReaderChecks checks={composed.body.checks} href={`${paths.worksheet(worksheet)}/summary`} />
+          <ReaderChecks checks={review.body.checks} href={`${paths.worksheet(worksheet)}/summary`} />
         </>
       )}
       {review.mayISeal ? (
