@@ -8,9 +8,10 @@ export function pagerOf(options: { path: string; what: string; page: number; per
   const { path, what, page, perPage, total } = options;
   const first = Math.min((page - 1) * perPage + 1, total);
   const last = Math.min(page * perPage, total);
+  const addressOf = (wanted: number) => `${path}${path.includes('?') ? '&' : '?'}page=${wanted}`;
   return {
-    previousHref: page > 1 ? `${path}?page=${page - 1}` : undefined,
-    nextHref: last < total ? `${path}?page=${page + 1}` : undefined,
+    previousHref: page > 1 ? addressOf(page - 1) : undefined,
+    nextHref: last < total ? addressOf(page + 1) : undefined,
     words: `${what} ${first} to ${last} of ${total}`,
   };
 }

@@ -36,7 +36,7 @@ export function CheckItYourself({ viewing }: { viewing: Viewing }) {
         </LinkButton>
       </div>
       {packet === null ? (
-        <p className="tag mt-3">No packet has been built of this record yet; record.json holds the same entries.</p>
+        <p className="tag mt-3">No packet goes with this link; record.json holds the same entries.</p>
       ) : packet.logSize !== null && packet.logSize < log.size ? (
         <p className="tag mt-3">
           The packet was built when the record had {packet.logSize} entries; it now has {log.size}.

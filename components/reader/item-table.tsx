@@ -10,7 +10,11 @@ export function ItemTable({ items }: { items: Viewing['summary']['items'] }) {
   return (
     <section className="mt-8">
       <Table
-        caption="Each item of the schedule, from first use until now"
+        caption={
+          items.every(({ isJudged }) => isJudged)
+            ? 'Each item of the schedule, from first use until now'
+            : 'Each item of the schedule, as far as it is opened'
+        }
         columns={[
           { label: 'Item', isRowHead: true },
           { label: 'Limit' },
@@ -19,14 +23,14 @@ export function ItemTable({ items }: { items: Viewing['summary']['items'] }) {
           { label: 'Longest by time', isNumber: true },
           { label: 'Kept' },
         ]}
-        rows={items.map(({ item, summary }) => ({
+        rows={items.map(({ item, summary, isJudged }) => ({
           key: item.item,
           cells: [
             <UserText key="title">{item.title}</UserText>,
             limitOf(item),
             summary.done,
-            summary.longestDistance === undefined ? 'not known' : formatDistance(roundedDown(summary.longestDistance)),
-            summary.longestMonths > 0 ? `${summary.longestMonths} months` : `${summary.longestDays} days`,
+            isJudged ? longestDistance(summary) : '',
+            isJudged ? longestTime(summary) : '',
             <span key="kept" className={summary.late > 0 ? 'tone-gap' : ''}>
               {summary.sentence}
             </span>,
@@ -36,6 +40,14 @@ export function ItemTable({ items }: { items: Viewing['summary']['items'] }) {
     </section>
   );
 }
+
+type Kept = Viewing['summary']['items'][number]['summary'];
+
+const longestDistance = ({ longestDistance: longest }: Kept): string =>
+  longest === undefined ? 'not known' : formatDistance(roundedDown(longest));
+
+const longestTime = ({ longestMonths, longestDays }: Kept): string =>
+  longestMonths > 0 ? `${longestMonths} months` : `${longestDays} days`;
 
 /** Of an item with a first service alone, that one. */
 function limitOf({ interval, firstService }: Viewing['summary']['items'][number]['item']): string {

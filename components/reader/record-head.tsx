@@ -1,10 +1,11 @@
 import { Box, Boxes } from '@/components/ui/box';
 import { Hash } from '@/components/ui/hash';
 import { UserText } from '@/components/ui/user-text';
+import { counted } from '@/components/entry/words';
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { formatDistance } from '@/lib/domain/units';
 import type { OpeningBody } from '@/lib/evidence/format';
-import type { Viewing } from '@/lib/services/read-viewing';
+import type { Shown } from '@/lib/services/read-viewing';
 
 const whyWords: Record<OpeningBody['recordStarts']['why'], string> = {
   new: 'bought new',
@@ -19,25 +20,36 @@ function startWords({ recordStarts, firstUse }: OpeningBody): string {
   return `${formatLocalDate(recordStarts.on)}${at}, ${whyWords[recordStarts.why]}${used}`;
 }
 
+type Opened = Shown['summary']['opened'];
+
+/** Every line is there; what is kept back from this reader is counted. */
+function withheldWords({ partsWithheld, partsErased }: Opened): string {
+  const erased = partsErased === 0 ? '' : `, ${counted(partsErased, 'part', 'parts')} erased`;
+  return `${counted(partsWithheld, 'part', 'parts')} withheld${erased}`;
+}
+
+const readWords = (on: string, { unjudged }: Opened): string =>
+  `read ${formatLocalDate(on)}${unjudged === 0 ? '' : '; later ones may be withheld'}`;
+
 /** Which machine, how far the record goes, and the figures by which anybody can recognise it later. */
-export function RecordHead({ viewing }: { viewing: Viewing }) {
-  const { record, summary, zone, readAt } = viewing;
+export function RecordHead({ shown }: { shown: Shown }) {
+  const { record, summary, zone, readAt } = shown;
   const { identity, log, machine, opening } = record;
-  const { counts, now } = summary;
+  const { counts, now, opened } = summary;
   return (
     <Boxes columns={4} label="The record">
       <Box label="Machine" span={2} note={<UserText>{machine.kind}</UserText>}>
         <UserText>{machine.name}</UserText>
       </Box>
-      <Box label={identity?.vin === undefined ? 'Frame number' : 'VIN'} span={2}>
+      <Box label={identity?.vin === undefined && identity !== null ? 'Frame number' : 'VIN'} span={2}>
         <span className="font-mono text-base">
           <UserText>{identity?.vin ?? identity?.frameNumber ?? 'withheld'}</UserText>
         </span>
       </Box>
-      <Box label="Odometer" isMeasure note={now === undefined ? undefined : `read ${formatLocalDate(now.on)}`}>
+      <Box label="Odometer" isMeasure note={now === undefined ? undefined : readWords(now.on, opened)}>
         {now === undefined ? 'No reading' : formatDistance(now)}
       </Box>
-      <Box label="Entries opened" isMeasure note="as of this reading">
+      <Box label="Entries opened" isMeasure note={withheldWords(opened)}>
         {counts.entries}
       </Box>
       <Box label="Sealed within 7 days" isMeasure note="of the work, services that stand">

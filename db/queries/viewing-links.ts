@@ -16,8 +16,6 @@ export const viewingLinksOfMachine = (machineId: string) =>
 export const updateViewingLink = (id: string, values: Partial<ViewingLinkRow>, transaction: Transaction) =>
   viewingLinks.update({ id }, values, { transaction });
 
-/** The newest packet that a reader of this machine's record may download. */
-export async function newestReadyPacket(machineId: string): Promise<PacketRow | null> {
-  const [newest] = await packets.all({ machineId, state: 'ready' }, { order: [['createdAt', 'DESC']], limit: 1 });
-  return newest ?? null;
-}
+/** A machine's packets that are ready and were built for exactly this stored scope, newest first. */
+export const readyPacketsOf = (machineId: string, scope: string | null) =>
+  packets.all({ machineId, scope, state: 'ready' }, { order: [['createdAt', 'DESC']] });

@@ -1,4 +1,6 @@
+import type { Scope } from '@/lib/domain/scope';
 import type { Attachment } from '@/lib/evidence/format';
+import type { PageSigner } from '@/lib/ports/sign-pages';
 import type { EntryView, PurchaseView, RecordView } from '@/lib/services/record-view';
 import type { Source } from './layer/file-stream';
 import type { JpegSize } from './layer/jpeg';
@@ -24,11 +26,16 @@ export interface PacketContent {
   madeAt: string;
   /** The zone in which instants are written out. */
   zone: string;
-  owner: string;
+  /** Null where names stay closed. */
+  owner: string | null;
+  /** What is opened. */
+  scope: Scope;
   /** The packet's own viewing link; null when it has none. */
   link: string | null;
   /** Where people reach this installation. */
   site: string;
+  /** Signs the file; record.json names its certificate. */
+  signer: PageSigner;
   /** By SHA-256 of the shared copy. */
   files: Map<string, PacketFile>;
 }

@@ -25,7 +25,7 @@ export type Progress = (stage: 'drawing' | 'writing', done: number) => Promise<v
 
 /** Draws the whole packet into an open file: cover, contents, terms, ledger, entries, receipts, how to check it. */
 export async function drawPacket(content: PacketContent, file: FileHandle, progress: Progress): Promise<DrawnPacket> {
-  const { record, number, madeAt, recordJson } = content;
+  const { record, number, madeAt, recordJson, signer } = content;
   const { identity, machine } = record;
   const notice = areTimesInjected(record) ? 'demo, times injected' : undefined;
   const vin = identity?.vin ?? identity?.frameNumber;
@@ -62,6 +62,7 @@ export async function drawPacket(content: PacketContent, file: FileHandle, progr
       identity: `${number}\n${recordJson}`,
     },
     attachmentsOf(content),
+    { reason: `Packet ${number}`, madeAt, sign: signer.sign },
     (done) => progress('writing', done),
   );
   return { pages: layer.pageCount, ...written, missing: [...layer.missing] };
@@ -81,8 +82,8 @@ function receiptsNote({ shelves }: PacketContent['record']): string {
   const printed = shelves.reduce((sum, { purchases }) => sum + purchases.length, 0);
   const lines = shelves.reduce((sum, { log }) => sum + log.size, 0);
   return (
-    `R and a number is the receipt’s line in the shelf’s log. Printed here: the ${printed} purchases this record draws ` +
-    `from, of ${lines} lines of the shelf; the others are withheld, named and counted in record.json. ` +
+    `R and a number is the receipt’s line in the shelf’s log. Printed here: the ${printed} purchases that the opened ` +
+    `entries draw from, of ${lines} lines of the shelf; the others are withheld, named and counted in record.json. ` +
     'A receipt shows that something was bought; that it went into this machine is the owner’s word.'
   );
 }

@@ -8,6 +8,7 @@ import { machineById } from '@/db/queries/machines';
 import { findPacket, unfinishedPackets, updatePacket, type PacketRow } from '@/db/queries/packets';
 import { findPerson } from '@/db/queries/people';
 import { updateViewingLink } from '@/db/queries/viewing-links';
+import { readScope } from '@/lib/domain/stored-scope';
 import { env } from '@/lib/env';
 import { WitnessmarkError, notFound } from '@/lib/errors';
 import { nameFiles, type PacketContent, type PacketFile } from '@/lib/packet/content';
@@ -17,6 +18,7 @@ import { blobStore } from '@/lib/ports/blob-store';
 import { now } from '@/lib/ports/clock';
 import { bundleRecord } from '@/lib/services/bundle-record';
 import { createViewingLink } from '@/lib/services/create-viewing-link';
+import { packetSigner } from '@/lib/services/packet-signing';
 import { readRecord } from '@/lib/services/read-record';
 
 /** Next may load a module twice in one process; packets are built one at a time all the same. */
@@ -51,7 +53,9 @@ export async function buildPacket(packet: PacketRow): Promise<void> {
     await build(packet);
   } catch (error) {
     const isOurs = error instanceof WitnessmarkError;
-    if (!isOurs) console.error(`Packet ${packet.number} could not be built.`, error);
+    // A refusal speaks to the person who asked; what the steward needs stands in its log.
+    const told = isOurs ? error.log : error;
+    if (told !== undefined) console.error(`Packet ${packet.number} could not be built.`, told);
     const sentence = isFull(error)
       ? 'This server has no room left for the packet. Tell the steward, then ask for it again.'
       : isOurs
@@ -68,8 +72,9 @@ const update = (id: string, values: Parameters<typeof updatePacket>[1]) =>
 
 async function build(packet: PacketRow): Promise<void> {
   await update(packet.id, { state: 'building', stage: 'Reading the record', progress: 2, error: null });
+  const signer = packetSigner();
   const link = await mintLink(packet);
-  const content = await gather(packet, link.url);
+  const content = await gather(packet, link.url, signer);
   const target = packetFile(packet.number);
   const temporary = `${target}.part`;
   await mkdir(path.dirname(target), { recursive: true });
@@ -112,7 +117,15 @@ async function mintLink(packet: PacketRow): Promise<{ url: string }> {
   const old = row?.linkId ?? null;
   const { number, machineId, createdBy, purpose } = packet;
   const label = purpose === '' ? `Packet ${number}` : `Packet ${number}: ${purpose}`;
-  const link = await createViewingLink({ machineId, by: createdBy, label, expiresAt: null, packetId: packet.id });
+  const scope = readScope(packet.scope);
+  const link = await createViewingLink({
+    machineId,
+    by: createdBy,
+    label,
+    expiresAt: null,
+    packetId: packet.id,
+    scope,
+  });
   await write(async (transaction) => {
     await updatePacket(packet.id, { linkId: link.id }, transaction);
     if (old !== null) await updateViewingLink(old, { revokedAt: now().toISOString() }, transaction);
@@ -123,21 +136,26 @@ async function mintLink(packet: PacketRow): Promise<{ url: string }> {
 const mostReadings = 5;
 
 /** Record and bundle of the same moment: an entry sealed between the two makes it read both again. */
-async function gather(packet: PacketRow, link: string): Promise<PacketContent> {
+async function gather(packet: PacketRow, link: string, signer: PacketContent['signer']): Promise<PacketContent> {
   const { machineId, number, purpose } = packet;
   const [machine, owner] = await Promise.all([machineById(machineId), findPerson(packet.createdBy)]);
   if (machine === null || owner === null) throw notFound('machine');
+  const scope = readScope(packet.scope);
+  // Whoever asks for the packet is its owner on the cover, unless names stay closed.
+  const name = scope.closed.includes('names') ? null : owner.name;
   for (let reading = 0; reading < mostReadings; reading++) {
-    const record = await readRecord({ machineId });
+    const record = await readRecord({ machineId, scope });
     const files = await filesOf(record);
     const included = new Map([...files].map(([sha256, { name }]) => [sha256, name]));
-    const { text, bundle } = await bundleRecord({ machineId, purpose, number, included });
+    const packetCertificate = signer.certificate;
+    const { text, bundle } = await bundleRecord({ machineId, purpose, number, scope, included, packetCertificate });
     const sizes = new Map(bundle.logs.map(({ id, entries }) => [id, entries.length]));
     const logs = [record.log, ...record.shelves.map((shelf) => shelf.log)];
     if (!logs.every(({ id, size }) => sizes.get(id) === size)) continue;
     const { madeAt } = bundle;
     const zone = machine.timeZone;
-    return { record, recordJson: text, number, purpose, madeAt, zone, owner: owner.name, link, site: env.url, files };
+    const about = { number, purpose, madeAt, zone, owner: name, scope, link, site: env.url };
+    return { ...about, record, recordJson: text, signer, files };
   }
   throw new WitnessmarkError('conflict', 'The record kept growing while it was read. Ask for the packet again.');
 }

@@ -1,7 +1,6 @@
 import 'server-only';
-import { readStoredLogs, type StoredLog } from '@/db/queries/entries';
-import { findLogOf } from '@/db/queries/logs';
-import { notFound } from '@/lib/errors';
+import type { StoredLog } from '@/db/queries/entries';
+import { usualScope, type Scope } from '@/lib/domain/scope';
 import { bundleText, signBundle } from '@/lib/evidence/bundle';
 import {
   isNoteOf,
@@ -15,38 +14,29 @@ import type { Bundle, BundleFile, BundleLog, PartName } from '@/lib/evidence/for
 import { now } from '@/lib/ports/clock';
 import { signingKey } from '@/lib/ports/signing-key';
 import { publishedKeys, signerNamed } from '@/lib/services/log-keys';
-import { attachmentsOf, type OpenedEntry, openStoredLog } from '@/lib/services/open-stored-log';
-import { purchasesDrawn, readShelvesDrawn } from '@/lib/services/purchases-drawn';
+import { openInScope, type ScopedLog } from '@/lib/services/open-in-scope';
+import { attachmentsOf, type OpenedEntry } from '@/lib/services/open-stored-log';
 
 export interface BundleOptions {
   machineId: string;
   purpose: string;
   number: string;
+  /** What it opens; left out: everything but prices. */
+  scope?: Scope;
   /** Files that go with the bundle: SHA-256 of an attachment or of its copy → the name it has beside the bundle. */
   included?: Map<string, string>;
   /** SHA-256 (hex) of the certificate that signs the packet around it. */
   packetCertificate?: string | null;
 }
 
-/** What a packet shows of a purchase it draws from. Prices are nobody's business but the rider's. */
-const openPurchaseParts: ReadonlySet<PartName> = new Set(['body', 'supplier', 'attachments', 'author']);
-
 /**
- * The record as others check it: every leaf of the machine's log and of the shelf logs it draws from, all parts of
- * the machine's entries, and of the shelves only the purchases this machine drew from.
+ * The record as others check it: every leaf of the machine's log and of the shelf logs that its opened entries draw
+ * from, and of their parts those that the scope opens; of the shelves only the purchases drawn.
  */
 export async function bundleRecord(options: BundleOptions): Promise<{ text: string; bundle: Bundle }> {
-  const log = await findLogOf(options.machineId);
-  const [machine] = log?.subject === 'machine' ? await readStoredLogs([log.id]) : [];
-  if (machine === undefined) throw notFound('machine');
-  const entries = openStoredLog(machine);
-  const drawn = purchasesDrawn(entries);
-  const shelves = await readShelvesDrawn(drawn);
-  const isOpen = (shelf: StoredLog) => (part: PartName, seq: number) =>
-    openPurchaseParts.has(part) && drawn.get(shelf.log.id)?.has(seq) === true;
-  const shelfEntries = shelves.flatMap((shelf) => openStoredLog(shelf, isOpen(shelf)));
-
-  const signer = signerNamed(machine.log.keyName);
+  const { machineId, scope = usualScope } = options;
+  const { machine, shelves } = await openInScope({ machineId, scope });
+  const signer = signerNamed(machine.stored.log.keyName);
   const key = verifierKey(signer.name, signingKey().publicKey);
   const others = publishedKeys().map((published) => published.verifierKey);
   const unsigned: Omit<Bundle, 'signature'> = {
@@ -56,22 +46,17 @@ export async function bundleRecord(options: BundleOptions): Promise<{ text: stri
     number: options.number,
     verifierKeys: [key, ...others.filter((other) => other !== key)],
     packetCertificate: options.packetCertificate ?? null,
-    logs: [
-      bundleLog(machine, () => true, signer, key),
-      ...shelves.map((shelf) => bundleLog(shelf, isOpen(shelf), signer, key)),
-    ],
-    files: bundleFiles([...entries, ...shelfEntries], options.included ?? new Map<string, string>()),
+    logs: [machine, ...shelves].map((log) => bundleLog(log, signer, key)),
+    files: bundleFiles(
+      [machine, ...shelves].flatMap(({ entries }) => entries),
+      options.included ?? new Map<string, string>(),
+    ),
   };
   const bundle = signBundle(unsigned, signer);
   return { text: bundleText(bundle), bundle };
 }
 
-function bundleLog(
-  stored: StoredLog,
-  isOpen: (part: PartName, seq: number) => boolean,
-  signer: NoteSigner,
-  key: string,
-): BundleLog {
+function bundleLog({ stored, isOpen }: ScopedLog, signer: NoteSigner, key: string): BundleLog {
   const isShown = ({ name, seq }: StoredLog['parts'][number]) => isOpen(name as PartName, seq);
   const partsOf = grouped(stored.parts.filter(isShown), ({ seq }) => seq);
   const tokensOf = grouped(stored.tokens, ({ size }) => size);

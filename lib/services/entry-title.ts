@@ -2,8 +2,13 @@ import 'server-only';
 import type { CountersignatureBody, ServiceBody } from '@/lib/evidence/format';
 import type { OpenedEntry } from '@/lib/services/open-stored-log';
 
-/** The words by which a ledger line names an entry of a machine's log. */
-export function entryTitle({ kind, leaf, values }: OpenedEntry): string {
+/** The words by which a ledger line names an entry of a machine's log: "Service, withheld" where its body is closed. */
+export function entryTitle(entry: OpenedEntry): string {
+  const title = titleOf(entry);
+  return entry.withheld.includes('body') ? `${title}, withheld` : title;
+}
+
+function titleOf({ kind, leaf, values }: OpenedEntry): string {
   const body = values.get('body');
   const of = leaf.refersTo === null ? '' : ` of entry ${leaf.refersTo.seq}`;
   const to = leaf.refersTo === null ? '' : ` to entry ${leaf.refersTo.seq}`;

@@ -6,7 +6,7 @@ import { openDisclosure } from '@/lib/evidence/disclosure';
 import type { Attachment, AuthorPart, EntryKind, Leaf, NotesPart, PartName } from '@/lib/evidence/format';
 import { parseLeaf } from '@/lib/evidence/leaf';
 import { keyOfNote } from '@/lib/services/log-keys';
-import type { ErasureView, LogView, TokenView } from '@/lib/services/record-view';
+import type { ErasureView, LogView, StruckView, TokenView } from '@/lib/services/record-view';
 
 /** A line of a log with the parts that are to be shown. */
 export interface OpenedEntry {
@@ -22,7 +22,7 @@ export interface OpenedEntry {
   /** The earliest stamp of each authority over this entry. */
   tokens: TokenView[];
   /** The strike that withdraws it, if one stands. */
-  struckBy: { seq: number; sealedAt: string; reason: string } | null;
+  struckBy: StruckView | null;
 }
 
 /** Opens the parts of every line that `isOpen` lets through. */
@@ -59,6 +59,17 @@ export function openStoredLog(
   });
   markStruck(opened);
   return opened;
+}
+
+/** The same lines with fewer parts opened; a strike's reason is known only where its body is. */
+export function keepOpened(opened: OpenedEntry[], isOpen: (part: PartName, seq: number) => boolean): OpenedEntry[] {
+  const kept = opened.map((entry): OpenedEntry => {
+    const values = new Map([...entry.values].filter(([part]) => isOpen(part, entry.leaf.seq)));
+    const closed = [...entry.values.keys()].filter((part) => !values.has(part));
+    return { ...entry, values, withheld: [...entry.withheld, ...closed].sort(), struckBy: null };
+  });
+  markStruck(kept);
+  return kept;
 }
 
 export function logView({ log, checkpoints }: StoredLog): LogView {
@@ -111,6 +122,7 @@ function markStruck(opened: OpenedEntry[]): void {
     const [target, strike] = [opened[seq], opened[by]];
     if (target === undefined || strike === undefined) continue;
     const reason = (strike.values.get('body') as { reason?: string } | undefined)?.reason ?? '';
-    target.struckBy = { seq: by, sealedAt: strike.leaf.sealedAt, reason };
+    const who = authorOf(strike)?.name;
+    target.struckBy = { seq: by, sealedAt: strike.leaf.sealedAt, reason, ...(who === undefined ? {} : { by: who }) };
   }
 }

@@ -1,5 +1,7 @@
 import 'server-only';
 import { lastCheckpoint, findLogOf } from '@/db/queries/logs';
+import { usualScope, type Scope } from '@/lib/domain/scope';
+import { storeScope } from '@/lib/domain/stored-scope';
 import { notFound } from '@/lib/errors';
 import type { Attachment } from '@/lib/evidence/format';
 import { readFileOf, type OpenFile } from '@/lib/services/read-file';
@@ -12,14 +14,17 @@ export interface RecordFileRequest {
   kind: 'thumb' | 'plate' | 'copy';
   /** Only files of this entry and of the purchases it drew from. */
   seq?: number;
+  /** What the reader's link opens; left out: everything but prices. */
+  scope?: Scope;
 }
 
 /**
  * A file that an opened part of the record names; anything else of the machine, such as a picture on an unfinished
  * worksheet, is not found. Pictures come as their shared copy; a PDF has none and is handed over as an attachment.
  */
-export async function readRecordFile({ machineId, sha256, kind, seq }: RecordFileRequest): Promise<OpenFile> {
-  const shown = (await filesShown(machineId)).get(sha256);
+export async function readRecordFile(request: RecordFileRequest): Promise<OpenFile> {
+  const { machineId, sha256, kind, seq, scope = usualScope } = request;
+  const shown = (await filesShown(machineId, scope)).get(sha256);
   if (shown === undefined || (seq !== undefined && !shown.seqs.has(seq))) throw notFound('file');
   const isPdf = shown.mediaType === 'application/pdf';
   const file = await readFileOf({ subject: machineId, sha256, kind: isPdf ? 'original' : kind });
@@ -49,13 +54,14 @@ const remembered = new Map<string, Remembered>();
 const mostRemembered = 20;
 const longestMemoryMs = 30_000;
 
-async function filesShown(machineId: string): Promise<Map<string, ShownFile>> {
+async function filesShown(machineId: string, scope: Scope): Promise<Map<string, ShownFile>> {
   const log = await findLogOf(machineId);
   const size = log === null ? 0 : ((await lastCheckpoint(log.id))?.size ?? 0);
-  const known = remembered.get(machineId);
+  const key = `${machineId} ${storeScope(scope) ?? 'usual'}`;
+  const known = remembered.get(key);
   if (known?.size === size && performance.now() - known.readAtMs < longestMemoryMs) return known.files;
 
-  const record = await readRecord({ machineId });
+  const record = await readRecord({ machineId, scope });
   const files = new Map<string, ShownFile>();
   const take = (attachments: Attachment[], seqs: number[]) => {
     for (const { sha256, mediaType, copy } of attachments) {
@@ -69,6 +75,6 @@ async function filesShown(machineId: string): Promise<Map<string, ShownFile>> {
   for (const { purchases } of record.shelves) for (const one of purchases) take(one.attachments, one.usedBy);
 
   if (remembered.size >= mostRemembered) remembered.clear();
-  remembered.set(machineId, { size: record.log.size, readAtMs: performance.now(), files });
+  remembered.set(key, { size: record.log.size, readAtMs: performance.now(), files });
   return files;
 }

@@ -1,6 +1,7 @@
 import 'server-only';
 import { readStoredLogs, type StoredLog } from '@/db/queries/entries';
 import { findLogOf } from '@/db/queries/logs';
+import { usualScope, type Scope } from '@/lib/domain/scope';
 import { notFound } from '@/lib/errors';
 import type {
   CountersignatureBody,
@@ -14,6 +15,7 @@ import type {
 } from '@/lib/evidence/format';
 import { entryTitle } from '@/lib/services/entry-title';
 import { machineName } from '@/lib/services/list-machines';
+import { openInScope } from '@/lib/services/open-in-scope';
 import {
   attachmentsOf,
   authorOf,
@@ -22,22 +24,23 @@ import {
   type OpenedEntry,
   openStoredLog,
 } from '@/lib/services/open-stored-log';
-import { purchasesDrawn, readShelvesDrawn } from '@/lib/services/purchases-drawn';
+import { withOwnSignatures } from '@/lib/services/own-signatures';
 import type { BodyOf, EntryView, LogView, PurchaseView, RecordView, ShelfEntryView } from '@/lib/services/record-view';
+import { type NameOf, nameOfPeople, withInviter, withPerformers } from '@/lib/services/names-of-people';
 
 /**
- * A machine's whole record, made from its leaves and those of the purchases it drew from. Prices are withheld unless
- * they are asked for: the same view is shown to readers. Who may see it is decided before this is called.
+ * A machine's record as far as a scope opens it, made from its leaves and those of the purchases it drew from. The
+ * usual scope withholds prices: the same view is shown to readers. Who may see it is decided before this is called.
  */
 export async function readRecord({
   machineId,
-  withPrices = false,
+  scope = usualScope,
 }: {
   machineId: string;
-  withPrices?: boolean;
+  scope?: Scope;
 }): Promise<RecordView> {
-  const stored = await readLogOf('machine', machineId);
-  const opened = openStoredLog(stored);
+  const { machine, shelves: drawnFrom } = await openInScope({ machineId, scope });
+  const { stored, entries: opened } = machine;
   const opening = opened[0]?.values.get('body') as OpeningBody | undefined;
   if (opening === undefined) throw new Error(`The opening of log ${stored.log.id} cannot be read.`);
 
@@ -47,14 +50,11 @@ export async function readRecord({
     if (terms !== undefined) termsBySeq.set(leaf.seq, terms);
   }
   const newestTerms = opened.findLast(({ leaf, struckBy }) => struckBy === null && termsBySeq.has(leaf.seq));
-  const drawn = purchasesDrawn(opened);
-  const shelves = (await readShelvesDrawn(drawn)).map((shelf) => {
-    const usedBy = drawn.get(shelf.log.id) ?? new Map<number, number[]>();
-    const lines = openStoredLog(shelf, (part, seq) => usedBy.has(seq) && (withPrices || part !== 'prices'));
-    const purchases = lines
+  const shelves = drawnFrom.map(({ stored: shelf, entries, usedBy }) => {
+    const purchases = entries
       .filter(({ kind, leaf }) => kind === 'purchase' && usedBy.has(leaf.seq))
       .flatMap((line) => purchaseView(shelf.log.id, line, usedBy.get(line.leaf.seq) ?? []) ?? []);
-    return { log: logView(shelf), purchases, size: shelf.entries.length };
+    return { log: logView(shelf), purchases, size: shelf.entries.length, partsWithheld: partsWithheldIn(entries) };
   });
   const { make, model, modelYear, kindOfMachine } = opening;
   return {
@@ -123,21 +123,25 @@ function entryViews(opened: OpenedEntry[]): EntryView[] {
       referring.set(target, [...(referring.get(target) ?? []), entry]);
     }
   }
-  return opened.map((entry) => entryView(entry, referring.get(entry.leaf.seq) ?? []));
+  const nameOf = nameOfPeople(opened.map(authorOf));
+  const views = opened.map((entry) => entryView(entry, referring.get(entry.leaf.seq) ?? [], nameOf));
+  return withOwnSignatures(views, opened);
 }
 
-function entryView(entry: OpenedEntry, referring: OpenedEntry[]): EntryView {
+const partsWithheldIn = (entries: OpenedEntry[]): number =>
+  entries.reduce((sum, { withheld }) => sum + withheld.length, 0);
+
+function entryView(entry: OpenedEntry, referring: OpenedEntry[], nameOf: NameOf): EntryView {
   const { leaf, leafHash, kind, values, withheld, erasures, tokens, struckBy } = entry;
   const countersignatures = referring.flatMap((other) => {
     const body = other.kind === 'countersignature' ? other.values.get('body') : undefined;
     if (body === undefined) return [];
     const { seq, sealedAt } = other.leaf;
-    return [{ seq, sealedAt, author: authorOf(other), body: body as CountersignatureBody }];
+    return [{ seq, sealedAt, author: authorOf(other), body: withInviter(body as CountersignatureBody, nameOf) }];
   });
   const isCountersigned = referring.some((other) => other.kind === 'countersignature');
   const standing = isCountersigned ? 'countersigned' : tokens.length === 0 ? 'waiting' : 'sealed';
-  // The leaf says the kind; the body was sealed as that kind's.
-  const body = { kind, body: values.get('body') ?? null } as BodyOf;
+  const body = readableBody({ kind, body: values.get('body') ?? null } as BodyOf, nameOf);
   return {
     ...body,
     seq: leaf.seq,
@@ -158,6 +162,13 @@ function entryView(entry: OpenedEntry, referring: OpenedEntry[]): EntryView {
     addenda: referring.filter((other) => other.kind === 'addendum').map((other) => other.leaf.seq),
     state: struckBy === null ? standing : 'struck',
   };
+}
+
+/** The leaf says the kind; the body was sealed as that kind's. People are named as far as author parts are opened. */
+function readableBody(sealed: BodyOf, nameOf: NameOf): BodyOf {
+  if (sealed.body === null) return sealed;
+  if (sealed.kind === 'service') return { ...sealed, body: withPerformers(sealed.body, nameOf) };
+  return sealed.kind === 'countersignature' ? { ...sealed, body: withInviter(sealed.body, nameOf) } : sealed;
 }
 
 /** Null when the body is withheld or erased: then nothing can be said of what was bought. */

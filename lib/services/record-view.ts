@@ -14,6 +14,7 @@ import type {
   SupplierPart,
   TermsBody,
 } from '@/lib/evidence/format';
+import type { StatementFinding } from '@/lib/evidence/verify-statements';
 
 /** What pages, viewing links and the packet read: one shape, made from the leaves and from nothing else. */
 export interface RecordView {
@@ -27,8 +28,8 @@ export interface RecordView {
   log: LogView;
   /** Ascending by seq. */
   entries: EntryView[];
-  /** The shelf logs this machine's entries draw from, and the purchases drawn, ascending. */
-  shelves: { log: LogView; purchases: PurchaseView[]; size: number }[];
+  /** The shelf logs this machine's opened entries draw from, and the purchases drawn, ascending. */
+  shelves: { log: LogView; purchases: PurchaseView[]; size: number; partsWithheld: number }[];
 }
 
 export interface LogView {
@@ -44,13 +45,21 @@ export interface LogView {
   fingerprint: string;
 }
 
-/** A body by its kind; null when the body is withheld. */
+/** A body by its kind, with people by name as far as that is opened; null when the body is withheld. */
 export type BodyOf =
   | { kind: 'opening'; body: OpeningBody | null }
   | { kind: 'terms'; body: TermsBody | null }
   | { kind: 'service'; body: ServiceBody | null }
   | { kind: 'countersignature'; body: CountersignatureBody | null }
   | { kind: Exclude<EntryKind, 'opening' | 'terms' | 'service' | 'countersignature'>; body: unknown };
+
+/** Somebody who stands by another entry, in an entry of their own. */
+export interface SignedBy {
+  seq: number;
+  sealedAt: string;
+  author: AuthorPart | null;
+  ownSignature?: StatementFinding;
+}
 
 export type EntryView = BodyOf & {
   seq: number;
@@ -69,11 +78,24 @@ export type EntryView = BodyOf & {
   erased: PartName[];
   erasures: ErasureView[];
   tokens: TokenView[];
-  countersignatures: { seq: number; sealedAt: string; author: AuthorPart | null; body: CountersignatureBody }[];
-  struckBy: { seq: number; sealedAt: string; reason: string } | null;
+  countersignatures: (SignedBy & { body: CountersignatureBody })[];
+  /** What was found about the signature made outside the server that this entry carries; absent if it carries none. */
+  ownSignature?: StatementFinding;
+  /** Those who signed this entry outside the server, in entries of their own; absent if nobody did. */
+  signedBy?: SignedBy[];
+  struckBy: StruckView | null;
   addenda: number[];
   state: 'sealed' | 'countersigned' | 'waiting' | 'struck';
 };
+
+/** The strike that withdraws an entry; its reason is empty where it is withheld. */
+export interface StruckView {
+  seq: number;
+  sealedAt: string;
+  reason: string;
+  /** Name of who struck it, where that is not withheld. */
+  by?: string;
+}
 
 /** A part that was destroyed, with the entry of the same log that says so. */
 export interface ErasureView {
@@ -106,7 +128,7 @@ export interface PurchaseView {
   withheld?: PartName[];
   erasures?: ErasureView[];
   /** A strike on the shelf's log that withdraws the purchase. */
-  struckBy?: { seq: number; sealedAt: string; reason: string } | null;
+  struckBy?: StruckView | null;
 }
 
 export interface ShelfEntryView {
@@ -123,7 +145,7 @@ export interface ShelfEntryView {
   author?: AuthorPart | null;
   refersTo?: Reference | null;
   /** The strike on the same log that withdraws it. */
-  struckBy?: { seq: number; sealedAt: string; reason: string } | null;
+  struckBy?: StruckView | null;
   /** Named in the leaf and kept back. */
   withheld?: PartName[];
   erasures?: ErasureView[];

@@ -5,10 +5,14 @@ import { write, type Transaction } from '@/db/index';
 import type { PersonRow } from '@/db/queries/people';
 import { countPacketsAskedBy, insertPacket, isPacketNumberTaken, type PacketRow } from '@/db/queries/packets';
 import { authorise } from '@/lib/auth/guard';
-import { WitnessmarkError } from '@/lib/errors';
+import { usualScope, type Scope } from '@/lib/domain/scope';
+import { storeScope } from '@/lib/domain/stored-scope';
+import { WitnessmarkError, invalidInput } from '@/lib/errors';
 import { isAcceptableText } from '@/lib/evidence/text';
 import { now } from '@/lib/ports/clock';
 import { kickPackets } from '@/lib/services/build-packet';
+import { openInScope } from '@/lib/services/open-in-scope';
+import { scopeFields } from '@/lib/services/scope-input';
 
 const longestPurpose = 200;
 /** Each packet holds every picture of the record again, and they are built one at a time for everybody. */
@@ -25,19 +29,24 @@ export const requestPacketInput = z.object({
     .refine((text) => isAcceptableText(text.normalize('NFC')), 'Leave out control and direction characters.')
     .transform((text) => text.normalize('NFC'))
     .default(''),
+  ...scopeFields,
 });
-export type RequestPacketInput = z.infer<typeof requestPacketInput>;
+export type RequestPacketInput = Pick<z.infer<typeof requestPacketInput>, 'purpose'>;
 
 /** Puts a packet in the queue; it is built in the background and its row says how far it is. */
 export async function requestPacket(options: {
   person: PersonRow;
   machineId: string;
   input: RequestPacketInput;
+  /** What it opens; left out: everything but prices. */
+  scope?: Scope;
 }): Promise<PacketRow> {
-  const { person, machineId, input } = options;
+  const { person, machineId, input, scope = usualScope } = options;
+  const { purpose } = input;
   await authorise({ person, action: 'share', machine: machineId });
   await refuseTooMany(person);
-  const packet = await queuePacket({ machineId, by: person.id, purpose: input.purpose });
+  await refuseTellingPurpose({ machineId, scope, purpose });
+  const packet = await queuePacket({ machineId, by: person.id, purpose, scope });
   kickPackets();
   return packet;
 }
@@ -59,8 +68,26 @@ async function refuseTooMany(person: PersonRow): Promise<void> {
   }
 }
 
+/** The cover would say what the packet is asked to keep closed. */
+async function refuseTellingPurpose(options: { machineId: string; scope: Scope; purpose: string }): Promise<void> {
+  const { machineId, scope, purpose } = options;
+  if (purpose === '' || !(scope.closed.includes('names') || scope.closed.includes('vin'))) return;
+  const { spelledOut } = await openInScope({ machineId, scope });
+  if (scope.closed.includes('names') && spelledOut.isNaming(purpose)) {
+    throw invalidInput({ purpose: 'This names a person, and names stay closed in this packet. Leave the name out.' });
+  }
+  if (scope.closed.includes('vin') && spelledOut.isIdentifying(purpose)) {
+    throw invalidInput({ purpose: 'This names the VIN, which stays closed in this packet. Leave it out.' });
+  }
+}
+
 /** Makes the row with a number nobody has. Who may ask is decided before this is called. */
-export function queuePacket(options: { machineId: string; by: string; purpose: string }): Promise<PacketRow> {
+export function queuePacket(options: {
+  machineId: string;
+  by: string;
+  purpose: string;
+  scope?: Scope;
+}): Promise<PacketRow> {
   return write(async (transaction) => {
     const row: PacketRow = {
       id: randomUUID(),
@@ -79,7 +106,7 @@ export function queuePacket(options: { machineId: string; by: string; purpose: s
       pages: null,
       logSize: null,
       linkId: null,
-      scope: null,
+      scope: storeScope(options.scope ?? usualScope),
     };
     await insertPacket(row, transaction);
     return row;

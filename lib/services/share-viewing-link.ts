@@ -3,9 +3,11 @@ import { z } from 'zod';
 import type { PersonRow } from '@/db/models/people';
 import { authorise } from '@/lib/auth/guard';
 import { addMonths } from '@/lib/domain/instants';
+import { usualScope, type Scope } from '@/lib/domain/scope';
 import { isAcceptableText, normaliseText } from '@/lib/evidence/text';
 import { now } from '@/lib/ports/clock';
 import { createViewingLink } from '@/lib/services/create-viewing-link';
+import { scopeFields } from '@/lib/services/scope-input';
 
 export const lastsChoices = ['30-days', '90-days', '1-year', 'until-revoked'] as const;
 
@@ -18,6 +20,7 @@ export const viewingLinkInput = z.object({
     .transform(normaliseText)
     .refine(isAcceptableText, 'Leave out control and direction characters.'),
   lasts: z.enum(lastsChoices, 'Choose how long the link lasts.'),
+  ...scopeFields,
 });
 
 const millisecondsInDay = 24 * 60 * 60 * 1000;
@@ -26,12 +29,14 @@ const millisecondsInDay = 24 * 60 * 60 * 1000;
 export async function shareViewingLink(options: {
   person: PersonRow;
   machineId: string;
-  input: z.infer<typeof viewingLinkInput>;
+  input: Pick<z.infer<typeof viewingLinkInput>, 'label' | 'lasts'>;
+  /** What it opens; left out: everything but prices. */
+  scope?: Scope;
 }): Promise<{ id: string; url: string }> {
-  const { person, machineId, input } = options;
+  const { person, machineId, input, scope = usualScope } = options;
   await authorise({ person, action: 'share', machine: machineId });
   const expiresAt = endOf(input.lasts, now());
-  const { id, url } = await createViewingLink({ machineId, by: person.id, label: input.label, expiresAt });
+  const { id, url } = await createViewingLink({ machineId, by: person.id, label: input.label, expiresAt, scope });
   return { id, url };
 }
 

@@ -59,7 +59,7 @@ describe('reading a record', () => {
       usedBy: [2],
       withheld: ['prices'],
     });
-    const own = await readRecord({ machineId, withPrices: true });
+    const own = await readRecord({ machineId, scope: { closed: [] } });
     expect(own.shelves[0]?.purchases[0]?.prices?.total).toBe('7194');
   });
 

@@ -1,6 +1,7 @@
 import { createHash } from 'node:crypto';
 import { Readable } from 'node:stream';
 import sharp from 'sharp';
+import { usualScope } from '@/lib/domain/scope';
 import type {
   Attachment,
   AttachmentRole,
@@ -248,7 +249,7 @@ export async function packetFixture(): Promise<PacketContent> {
     identity: { vin: 'AAACRVSR3NA000417', engineNumber: 'SR18-20417' },
     opening: { make: 'Corvane', model: 'Sorrel 1800', modelYear: '2022', kindOfMachine: 'big V-twin tourer', firstUse: { on: '2023-06-14', odometer: miles('4') }, recordStarts: { on: '2023-06-14', odometer: miles('4'), why: 'new' } },
     terms, termsBySeq: new Map([[1, terms]]), log: log(machineLog, entries.length), entries,
-    shelves: [{ log: log(shelfLog, 6), purchases, size: 6 }],
+    shelves: [{ log: log(shelfLog, 6), purchases, size: 6, partsWithheld: 6 }],
   }; // prettier-ignore
   const files = new Map<string, PacketFile>();
   for (const [hash, { name, mediaType }] of nameFiles(record)) {
@@ -259,7 +260,7 @@ export async function packetFixture(): Promise<PacketContent> {
   }
   return {
     record, recordJson: JSON.stringify({ format: 'witnessmark/bundle/1', number: 'WM-7Q4K-0031' }), number: 'WM-7Q4K-0031',
-    purpose: 'a warranty claim on the gearbox', madeAt: '2026-04-12T16:14:00.000Z', zone, owner: 'Imke Vandersloot',
+    purpose: 'a warranty claim on the gearbox', madeAt: '2026-04-12T16:14:00.000Z', zone, owner: 'Imke Vandersloot', scope: usualScope,
     link: 'http://localhost:3000/v/Zk3mQ8rT1yUvWx5bC7dE9g', site: 'http://localhost:3000', files,
   }; // prettier-ignore
 }

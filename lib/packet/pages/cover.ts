@@ -2,7 +2,6 @@ import 'server-only';
 import type { AdherenceSummary } from '@/lib/domain/adherence';
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { formatDistance } from '@/lib/domain/units';
-import { warrantyState } from '@/lib/domain/warranty';
 import { whatIsShown } from '@/lib/evidence/format';
 import { entryAnchor, type PacketContent } from '../content';
 import { breakLines } from '../layer/shaping';
@@ -11,7 +10,7 @@ import { drawMark } from '../sheet/mark';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
 import type { PacketSummary } from '../summary';
-import { limitWords, lowered, roundedOf } from '../words';
+import { counted, limitWords, lowered, roundedOf } from '../words';
 import { drawDoneInTime } from './done-in-time';
 
 const markSize = 66;
@@ -24,7 +23,7 @@ export function drawCover(sheet: Sheet, content: PacketContent, summary: PacketS
     drawHead(sheet, content, summary);
     const { counts, gaps } = summary;
     drawBoxes(sheet, 5, [
-      { label: 'Entries opened', value: counts.entries, kind: 'number' },
+      { label: 'Entries opened', value: counts.entries, kind: 'number', note: withheldWords(summary) },
       { label: 'Sealed within 7 days', value: counts.prompt, kind: 'number' },
       { label: 'Time proven independently', value: counts.proven, kind: 'number', isGap: counts.proven === 'none' },
       { label: 'Countersigned', value: counts.countersigned, kind: 'number' },
@@ -35,7 +34,7 @@ export function drawCover(sheet: Sheet, content: PacketContent, summary: PacketS
         isGap: gaps.length > 0,
       },
     ]);
-    drawWarranty(sheet, content, summary);
+    drawWarranty(sheet, summary);
     drawGaps(sheet, summary);
     drawSchedule(sheet, content, summary);
     drawUses(sheet, summary);
@@ -64,7 +63,18 @@ function drawHead(sheet: Sheet, content: PacketContent, { headline, now }: Packe
   sheet.y = Math.max(sheet.y + words.length * types.body.leading, top + markSize) + 12;
 }
 
-function machineWords({ record }: PacketContent, owner: string, purpose: string, now: PacketSummary['now']): string {
+/** Every line stays in the file; what is closed is counted here, on the first page. */
+function withheldWords({ opened: { partsWithheld, partsErased } }: PacketSummary): string {
+  const erased = partsErased === 0 ? '' : `, ${counted(partsErased, 'part', 'parts')} erased`;
+  return `${counted(partsWithheld, 'part', 'parts')} withheld${erased}`;
+}
+
+function machineWords(
+  { record }: PacketContent,
+  owner: string | null,
+  purpose: string,
+  now: PacketSummary['now'],
+): string {
   const { machine, identity, opening } = record;
   const name = [machine.modelYear, machine.make, machine.model].filter(Boolean).join(' ');
   const vin = identity?.vin === undefined ? undefined : `VIN ${identity.vin}`;
@@ -72,30 +82,28 @@ function machineWords({ record }: PacketContent, owner: string, purpose: string,
   const { firstUse } = opening;
   const used = firstUse?.on === undefined ? 'First use not stated' : `First used ${formatLocalDate(firstUse.on)}`;
   const at = firstUse?.odometer === undefined ? '' : ` at ${formatDistance(firstUse.odometer)}`;
-  const today = now === undefined ? '' : `; last reading ${formatDistance(now)} on ${formatLocalDate(now.on)}`;
+  const today = now === undefined ? '' : `; last opened reading ${formatDistance(now)} on ${formatLocalDate(now.on)}`;
   const made = purpose === '' ? '' : ` Made for: ${purpose}${/[.!?]$/.test(purpose) ? '' : '.'}`;
-  return `${[name, vin ?? frame ?? 'VIN withheld'].join(', ')}. ${used}${at}${today}. Owner ${owner}.${made}`;
+  return `${[name, vin ?? frame ?? 'VIN withheld'].join(', ')}. ${used}${at}${today}. ${owner === null ? 'Owner withheld' : `Owner ${owner}`}.${made}`;
 }
 
-function drawWarranty(sheet: Sheet, { record, madeAt, zone }: PacketContent, { history }: PacketSummary): void {
-  const states = (record.terms?.warranty ?? []).map((term) =>
-    warrantyState(term, history.readings, { now: madeAt, zone }),
-  );
-  if (states.length === 0) return;
+function drawWarranty(sheet: Sheet, { warranty }: PacketSummary): void {
+  if (warranty.length === 0) return;
   sheet.gap(6);
-  for (const { title, sentence } of states) sheet.paragraph(`${title}: ${lowered(sentence)}`);
+  for (const { title, sentence } of warranty) sheet.paragraph(`${title}: ${lowered(sentence)}`);
   sheet.paragraph('The warranty’s own text decides; this only counts.', types.small);
 }
 
 function drawSchedule(sheet: Sheet, { record }: PacketContent, summary: PacketSummary): void {
   const shown = summary.items.filter(({ summary: { done, late } }) => done > 0 || late > 0);
   const others = summary.items.filter((item) => !shown.includes(item));
-  sheet.heading('Done in time', { below: 120 });
+  const isJudged = summary.opened.unjudged === 0;
+  sheet.heading(isJudged ? 'Done in time' : 'Done, as far as opened', { below: isJudged ? 120 : 60 });
   if (shown.length === 0) {
-    sheet.paragraph('No item of the schedule has been done in this record yet.');
+    sheet.paragraph(`No item of the schedule has been done in ${isJudged ? 'this record yet' : 'what is opened'}.`);
     return;
   }
-  drawDoneInTime(sheet, summary, shown);
+  if (isJudged) drawDoneInTime(sheet, summary, shown);
   drawTable(
     sheet,
     [
@@ -105,21 +113,25 @@ function drawSchedule(sheet: Sheet, { record }: PacketContent, summary: PacketSu
       { title: 'Longest distance, longest time', share: 2.2, type: types.strong },
       { title: 'Result', share: 2.2 },
     ],
-    shown.map(({ item, summary: one }) => [
+    shown.map(({ item, summary: one, isJudged: isKnown }) => [
       item.title,
       limitWords(item),
       String(one.done),
-      longestWords(one),
+      isKnown ? longestWords(one) : '',
       { text: one.sentence, isGap: one.late > 0 },
     ]),
   );
   sheet.gap(3);
   if (others.length > 0) {
     const words = others.map(({ item, summary: one }) => `${lowered(item.title)} (${one.sentence})`);
-    sheet.paragraph(`Not done in this record yet: ${words.join(', ')}.`, types.small);
+    const titles = others.map(({ item }) => lowered(item.title)).join(', ');
+    const told = isJudged ? `Not done in this record yet: ${words.join(', ')}.` : `Not in what is opened: ${titles}.`;
+    sheet.paragraph(told, types.small);
   }
   const terms = [...record.termsBySeq.keys()].sort((a, b) => a - b);
-  const newest = `Judged by the newest terms, entry ${terms.at(-1)}.`;
+  const newest = isJudged
+    ? `Judged by the newest terms, entry ${terms.at(-1)}.`
+    : `The newest terms are entry ${terms.at(-1)}.`;
   const earlier = terms.length < 2 ? '' : ` Terms were sealed ${terms.length} times, in entries ${terms.join(', ')}.`;
   sheet.paragraph(newest + earlier, types.small);
 }
@@ -135,7 +147,7 @@ function longestWords({ longestDistance, longestMonths, longestDays }: Adherence
 function drawUses(sheet: Sheet, { uses }: PacketSummary): void {
   sheet.heading('Bought and used');
   if (uses.length === 0) {
-    sheet.paragraph('No fluid or part in this record was drawn from a receipt.');
+    sheet.paragraph('No fluid or part in what is opened was drawn from a receipt.');
     return;
   }
   drawTable(

@@ -6,7 +6,8 @@ import type { AdherenceInterval } from '@/lib/domain/adherence';
 import { colours } from '../layer/colours';
 import { breakLines, widthOf } from '../layer/shaping';
 import { edges, types, type Sheet } from '../sheet/sheet';
-import type { ItemSummary, PacketSummary } from '../summary';
+import type { PacketSummary } from '../summary';
+import type { ItemSummary } from '../summary/items';
 import { roundedOf } from '../words';
 
 const labelWidth = 104;

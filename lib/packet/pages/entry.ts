@@ -24,7 +24,7 @@ const markSize = 40;
 export function drawEntry(sheet: Sheet, entry: EntryView, content: PacketContent): void {
   const name = `Entry ${entry.seq}`;
   sheet.during(`${name}, continued: ${entry.title.slice(0, 80)}`, () => {
-    if (isService(entry) || sheet.left < 200) sheet.newPage();
+    if ((isService(entry) && entry.body !== null) || sheet.left < 200) sheet.newPage();
     else sheet.gap(26);
     sheet.anchor(entryAnchor(entry.seq));
     sheet.layer.bookmark(`${entry.seq} ${entry.title}`, 1, sheet.y - 6);

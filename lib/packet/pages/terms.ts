@@ -42,7 +42,7 @@ function drawMachine(sheet: Sheet, { record, owner }: PacketContent): void {
   drawBoxes(sheet, 4, [
     { label: 'Machine', value: [machine.modelYear, machine.make, machine.model].filter(Boolean).join(' '), span: 2 },
     { label: 'Kind', value: machine.kind },
-    { label: 'Owner', value: owner },
+    { label: 'Owner', value: owner ?? 'withheld' },
     { label: 'VIN or frame number', value: identity?.vin ?? identity?.frameNumber ?? 'withheld', span: 2 },
     { label: 'Engine number', value: identity === null ? 'withheld' : (identity.engineNumber ?? 'not stated') },
     {

@@ -8,6 +8,7 @@ import { drawQr } from '../sheet/qr';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
 import { counted } from '../words';
+import { drawPageSignature } from './page-signature';
 
 /** 29 mm: with its quiet zone still above the 25 mm that a phone reads without trouble. */
 const qrSize = 83;
@@ -24,6 +25,7 @@ export function drawVerification(sheet: Sheet, content: PacketContent): void {
     drawSteps(sheet, content);
     drawLogs(sheet, content);
     drawFiles(sheet, content);
+    drawPageSignature(sheet, content);
     drawNotChecked(sheet);
   });
 }
@@ -84,7 +86,8 @@ function drawSteps(sheet: Sheet, { site, record }: PacketContent): void {
   ]);
 }
 
-function drawLogs(sheet: Sheet, { record }: PacketContent): void {
+function drawLogs(sheet: Sheet, { record, scope }: PacketContent): void {
+  const closed = scope.closed.includes('prices') ? 'without prices' : 'prices opened where sealed';
   sheet.heading('Logs in this packet');
   const row = (log: LogView, subject: string, opened: string) => [
     subject,
@@ -111,7 +114,7 @@ function drawLogs(sheet: Sheet, { record }: PacketContent): void {
         row(
           log,
           'shelf',
-          `${counted(purchases.length, 'purchase', 'purchases')} of ${counted(log.size, 'entry', 'entries')}, without prices`,
+          `${counted(purchases.length, 'purchase', 'purchases')} of ${counted(log.size, 'entry', 'entries')}, ${closed}`,
         ),
       ),
     ],
@@ -148,6 +151,6 @@ function drawNotChecked(sheet: Sheet): void {
   sheet.paragraph(whatIsShown);
   sheet.gap(4);
   sheet.paragraph(
-    'Not checked by any of this: whether the work was done as written; whether the papers are genuine; whether what was bought went into this machine; whether a person is who they say; whether a time stamp’s authority is independent, until you supply its root. The pages themselves carry no signature: what counts is record.json, and a checker shows the entries from there. Nothing here is legal advice; the warranty’s text and the law where you live decide.',
+    'Not checked by any of this: whether the work was done as written; whether the papers are genuine; whether what was bought went into this machine; whether a person is who they say; whether a time stamp’s authority is independent, until you supply its root; whether the pages say the same as record.json. What counts is record.json, and a checker shows the entries from there. Nothing here is legal advice; the warranty’s text and the law where you live decide.',
   );
 }

@@ -5,16 +5,17 @@ import { z } from 'zod';
 import { formAction } from '@/lib/auth/action';
 import { paths } from '@/lib/paths';
 import { requestPacket, requestPacketInput } from '@/lib/services/request-packet';
+import { refuseBackwards, scopeOf } from '@/lib/services/scope-input';
 import { revokeViewingLink } from '@/lib/services/revoke-viewing-link';
 import { shareViewingLink, viewingLinkInput } from '@/lib/services/share-viewing-link';
 
 const machine = z.uuid('Reload the page and try again.');
 
 export const buildPacketAction = formAction(
-  { schema: requestPacketInput.extend({ machine }) },
+  { schema: requestPacketInput.extend({ machine }).superRefine(refuseBackwards) },
   async ({ input, person }) => {
     const { machine: machineId, purpose } = input;
-    const { number } = await requestPacket({ person, machineId, input: { purpose } });
+    const { number } = await requestPacket({ person, machineId, input: { purpose }, scope: scopeOf(input) });
     revalidatePath(paths.proof(machineId));
     return { message: `Packet ${number} is being built. You can go on; it appears below.` };
   },
@@ -22,10 +23,10 @@ export const buildPacketAction = formAction(
 
 /** The message of its answer is the address itself, which is kept nowhere and shown once. */
 export const makeLinkAction = formAction(
-  { schema: viewingLinkInput.extend({ machine }) },
+  { schema: viewingLinkInput.extend({ machine }).superRefine(refuseBackwards) },
   async ({ input, person }) => {
     const { machine: machineId, label, lasts } = input;
-    const { url } = await shareViewingLink({ person, machineId, input: { label, lasts } });
+    const { url } = await shareViewingLink({ person, machineId, input: { label, lasts }, scope: scopeOf(input) });
     revalidatePath(paths.proof(machineId));
     return { message: url };
   },

@@ -1,7 +1,7 @@
 import { viewRoute } from '@/app/api/view/view-route';
-import { openNewestPacket } from '@/lib/services/read-viewing';
+import { openOfferedPacket } from '@/lib/services/offered-packet';
 
 export const GET = viewRoute<{ link: string }>(async ({ link }) => {
-  const { body, headers } = await openNewestPacket({ machineId: link.machineId });
+  const { body, headers } = await openOfferedPacket(link);
   return new Response(body, { headers });
 });

@@ -1,5 +1,6 @@
 import { z } from 'zod';
 import { viewRoute } from '@/app/api/view/view-route';
+import { readScope } from '@/lib/domain/stored-scope';
 import { notFound } from '@/lib/errors';
 import { readRecordFile } from '@/lib/services/read-record-file';
 
@@ -11,6 +12,6 @@ const asked = z.object({
 export const GET = viewRoute<{ link: string; sha256: string; kind: string }>(async ({ link, params }) => {
   const parsed = asked.safeParse(params);
   if (!parsed.success) throw notFound('file');
-  const file = await readRecordFile({ machineId: link.machineId, ...parsed.data });
+  const file = await readRecordFile({ machineId: link.machineId, scope: readScope(link.scope), ...parsed.data });
   return new Response(file.body, { headers: file.headers });
 });
