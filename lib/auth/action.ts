@@ -2,7 +2,7 @@ import 'server-only';
 import { notFound as nextNotFound, unstable_rethrow } from 'next/navigation';
 import type { z } from 'zod';
 import type { PersonRow } from '@/db/queries/people';
-import type { FormState } from '@/lib/form-state';
+import type { FormState, PasskeyQuestion } from '@/lib/form-state';
 import { formValues, typedValues } from './form-values';
 import { asRefusal, fieldErrors } from './refusal';
 import { currentPerson, requirePerson } from './session';
@@ -10,8 +10,8 @@ import { currentPerson, requirePerson } from './session';
 export type { FormState };
 
 type Access = 'public' | 'signed-in' | 'steward';
-/** `message` is shown above the form; `keep` leaves what was typed in it. */
-type Done = { message?: string; keep?: boolean } | void;
+/** `message` is shown above the form; `keep` leaves what was typed in it; `question` goes to an authenticator. */
+type Done = { message?: string; keep?: boolean; question?: PasskeyQuestion } | void;
 type ServerAction = (previous: FormState, form: FormData) => Promise<FormState>;
 
 /** For actions anybody may call. */
@@ -43,7 +43,8 @@ export function formAction<S extends z.ZodType>(
       // The overloads promise a person wherever `access` is not public.
       const done = await work({ input: parsed.data, person: person as PersonRow });
       const message = done?.message === undefined ? {} : { message: done.message };
-      return { ok: true, ...message, fields: {}, typed: done?.keep === true ? typed : {} };
+      const question = done?.question === undefined ? {} : { question: done.question };
+      return { ok: true, ...message, ...question, fields: {}, typed: done?.keep === true ? typed : {} };
     } catch (error) {
       // Redirects and "not found" are Next's own errors.
       unstable_rethrow(error);

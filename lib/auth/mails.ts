@@ -52,3 +52,14 @@ export function passwordChangedMail(to: string): Mail {
       whereFrom(),
   };
 }
+
+export function passkeyAddedMail(to: string, name: string): Mail {
+  return {
+    to,
+    subject: 'A key was added to your Witnessmark account',
+    text:
+      `A key named “${name}” was added to your account just now. Statements can be signed with it in your name.\n\n` +
+      `If it was not you, remove it at once and change your password: ${env.url}${paths.account}` +
+      whereFrom(),
+  };
+}

@@ -45,6 +45,9 @@ export const passwordAgainLimits = (personId: string): Limit[] => [
   { key: key('password-again', personId), most: 5, minutes: 15 },
 ];
 
+/** Asking an authenticator for signatures: each question is kept, and each answer costs a verification. */
+export const passkeyLimits = (personId: string): Limit[] => [{ key: key('passkey', personId), most: 40, minutes: 15 }];
+
 /** Links from a mail, tried one after another. */
 export const tokenLimits = (address: string): Limit[] => [{ key: key('mail-token', address), most: 50, minutes: 15 }];
 
