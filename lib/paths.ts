@@ -84,6 +84,8 @@ export const paths = {
     checkpoint: (log: string) => `/api/logs/${log}/checkpoint`,
     timeStamp: '/api/time-stamp',
     timeStampRoot: '/api/time-stamp/root.pem',
+    /** The root behind the certificate that signs packets. */
+    packetRoot: '/api/packet-certificate/root.pem',
     health: '/api/health',
   },
 } as const;

@@ -3,9 +3,9 @@ import {
 } from 'pdf-lib'; // prettier-ignore
 import { joinBytes } from '@/lib/evidence/bytes';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
+import { allDictionaries } from '@/lib/evidence/pdf-objects';
 import type { GivenFile } from '@/lib/evidence/verify-files';
 
-const maxDepth = 50;
 const chunkBytes = 1 << 16;
 /** All attachments of a packet together. */
 const maxTotalBytes = 1_500_000_000;
@@ -19,7 +19,7 @@ const maxTotalBytes = 1_500_000_000;
  * @example attachmentsOf(context, 1_000_000).map((file) => file.name); // ['record.json', 'receipt-front.jpg']
  */
 export function attachmentsOf(context: PDFContext, maxTextBytes: number): GivenFile[] {
-  const dictionaries = context.enumerateIndirectObjects().flatMap(([, object]) => dictionariesIn(object));
+  const dictionaries = allDictionaries(context);
   const embedded = context.enumerateIndirectObjects().flatMap(([, object]) => {
     return object instanceof PDFStream && isOfType(object.dict, 'EmbeddedFile') ? [object] : [];
   });
@@ -42,15 +42,6 @@ export function attachmentsOf(context: PDFContext, maxTextBytes: number): GivenF
     throw unreadable('This PDF carries an attachment that nothing in it names.');
   }
   return files;
-}
-
-/** Every dictionary within an object, itself and those of streams included; references are not followed. */
-function dictionariesIn(object: PDFObject, depth = 0): PDFDict[] {
-  if (depth > maxDepth) throw unreadable('This PDF nests its objects deeper than any packet.');
-  if (object instanceof PDFStream) return dictionariesIn(object.dict, depth + 1);
-  if (object instanceof PDFArray) return object.asArray().flatMap((item) => dictionariesIn(item, depth + 1));
-  if (!(object instanceof PDFDict)) return [];
-  return [object, ...object.values().flatMap((item) => dictionariesIn(item, depth + 1))];
 }
 
 /** Names given by trees of names: pairs of a text and what it names, wherever such a list stands. */

@@ -5,12 +5,14 @@ import type { Comparison, DeviceSignature, Finding } from '@/lib/evidence/findin
 import { Findings, reasonOf } from '@/lib/evidence/findings';
 import type { Bundle } from '@/lib/evidence/format';
 import { checkNote, chooseKey, type KeyRing } from '@/lib/evidence/key-ring';
+import type { PageSignature } from '@/lib/evidence/pdf-signature';
 import { compareWith } from '@/lib/evidence/verify-against';
 import { remarkOnStamps } from '@/lib/evidence/remark-on-stamps';
 import { StampTrust } from '@/lib/evidence/stamp-trust';
 import { describeEntries, describeLogs, remarkOnWithheld } from '@/lib/evidence/verify-entries';
 import { checkFiles, type GivenFile } from '@/lib/evidence/verify-files';
 import { walkLog } from '@/lib/evidence/verify-log';
+import { checkPages } from '@/lib/evidence/verify-pages';
 import { openParts } from '@/lib/evidence/verify-parts';
 import { checkReferences, type OpenedLog } from '@/lib/evidence/verify-references';
 import { checkStatements } from '@/lib/evidence/verify-statements';
@@ -32,8 +34,8 @@ export interface VerifyRequest {
   roots?: readonly Uint8Array[];
   /** When this is checked, as an instant: a time stamp from later is invalid. Absent: not asked. */
   at?: string;
-  /** The record came out of a packet whose pages were not checked. */
-  pagesNotChecked?: boolean;
+  /** What the signature over the pages amounts to, if the record came out of a packet. */
+  pages?: PageSignature;
 }
 
 /**
@@ -78,7 +80,7 @@ function verify(request: VerifyRequest): Finding {
 
 function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findings): Finding {
   const ring = chooseKey(bundle.verifierKeys, request.key, findings);
-  checkBundleSignature(bundle, ring, findings);
+  const isSigned = checkBundleSignature(bundle, ring, findings);
   const trust = new StampTrust(request.roots);
   const check = { trust, at: request.at === undefined ? undefined : Date.parse(request.at) };
   const logs: OpenedLog[] = bundle.logs.map((source) => {
@@ -96,10 +98,7 @@ function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findin
     request.against === undefined ? null : compareWith(request.against, logs, bundle.madeAt, ring, findings);
   remarkOnStamps(logs, trust, findings);
   remarkOnWithheld(logs, findings);
-  if (request.pagesNotChecked === true) {
-    findings.remark('pages-not-checked', 'The pages were not checked: what counts is the record inside the packet.');
-    findings.notChecked.push('The pages of the packet: read the entries here, from the record inside it.');
-  }
+  const pages = checkPages(bundle.packetCertificate, request.pages, isSigned, findings);
   return report(findings, {
     outcome: findings.alterations.length > 0 ? 'altered' : 'unchanged',
     bundle,
@@ -107,7 +106,7 @@ function verifyReadable(bundle: Bundle, request: VerifyRequest, findings: Findin
     logs,
     statements,
     against,
-    pages: request.pagesNotChecked === true ? 'not-checked' : 'none',
+    pages,
   });
 }
 
@@ -129,7 +128,9 @@ function isCanonical(value: unknown, text: string): boolean {
   }
 }
 
-function checkBundleSignature(bundle: Bundle, ring: KeyRing, findings: Findings): void {
+/** Whether the file as a whole is what the chosen key signed; names what is wrong if not. */
+function checkBundleSignature(bundle: Bundle, ring: KeyRing, findings: Findings): boolean {
+  const before = findings.alterations.length;
   const note = checkNote(bundle.signature, ring, 'chosen', {}, 'the file as a whole', findings);
   const statement = bundleStatement(bundle);
   if (note !== null && note.text !== statement) {
@@ -141,6 +142,7 @@ function checkBundleSignature(bundle: Bundle, ring: KeyRing, findings: Findings)
       `signed ${JSON.stringify(note.text)}, found ${JSON.stringify(statement)}`,
     );
   }
+  return ring.chosen !== null && findings.alterations.length === before;
 }
 
 function unreadable(reason: string): Finding {

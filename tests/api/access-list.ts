@@ -98,6 +98,7 @@ export const routes: Record<string, RouteReach> = {
   'GET api/health/route.ts': { who: everybody },
   'GET api/log-keys/route.ts': { who: everybody },
   'GET api/logs/[log]/checkpoint/route.ts': { who: everybody, at: ({ log }) => `/api/logs/${log}/checkpoint` },
+  'GET api/packet-certificate/root.pem/route.ts': { who: everybody },
   'GET api/time-stamp/root.pem/route.ts': { who: everybody },
   'POST api/time-stamp/route.ts': { who: everybody, isCrossSite: true },
   'POST api/machines/[machine]/packets/route.ts': {

@@ -10,7 +10,9 @@ import {
   PDFTrailerDict,
   type PDFContext,
   type PDFDict,
+  type PDFRef,
 } from 'pdf-lib';
+import { filledHole, signatureObject, type FileSignature } from './signature';
 
 /** Bytes that lie elsewhere and are read only while the packet is written. */
 export interface Source {
@@ -40,7 +42,8 @@ const latin1 = (text: string) => Buffer.from(text, 'latin1');
 
 /**
  * Writes every object once, one after another, as one revision with a plain cross-reference table. Memory holds one
- * object at a time; file streams pass through in chunks.
+ * object at a time; file streams pass through in chunks. The object `signature.ref`, whose number must be the highest,
+ * is the last: when its turn comes all that it signs has been hashed but the end of the file, whose length is known.
  *
  * @throws Error when a source yields another number of bytes than it promised
  */
@@ -48,6 +51,7 @@ export async function writeObjects(
   context: PDFContext,
   file: FileHandle,
   progress: (done: number) => Promise<void>,
+  signature: FileSignature & { ref: PDFRef },
 ): Promise<{ bytes: number; sha256: string }> {
   const hash = createHash('sha256');
   let offset = 0;
@@ -85,14 +89,22 @@ export async function writeObjects(
     await put(latin1('\nendobj\n\n'));
     if (i % 50 === 0) await progress(i / objects.length);
   }
-  const start = offset;
-  await put(serialise(references));
-  await put(latin1('\n'));
+  references.addEntry(signature.ref, offset);
   const { Root, Info, ID } = context.trailerInfo;
   const trailer = context.obj({ Size: context.largestObjectNumber + 1, Root, Info, ID });
-  await put(serialise(PDFTrailerDict.of(trailer)));
-  await put(latin1('\n\n'));
-  await put(serialise(PDFTrailer.forLastCrossRefSectionOffset(start)));
-  await put(latin1('\n'));
+  const closing = (start: number) =>
+    Buffer.concat([
+      serialise(references),
+      latin1('\n'),
+      serialise(PDFTrailerDict.of(trailer)),
+      latin1('\n\n'),
+      serialise(PDFTrailer.forLastCrossRefSectionOffset(start)),
+      latin1('\n'),
+    ]);
+  const { before, after } = signatureObject(signature.ref, signature, offset, closing);
+  await put(before);
+  const hole = await filledHole(signature, hash.copy().update(after).digest());
+  await put(hole);
+  await put(after);
   return { bytes: offset, sha256: hash.digest('hex') };
 }

@@ -10,6 +10,7 @@ import type { JpegSize } from './jpeg';
 import { writeMetadata, type DocumentMetadata } from './metadata';
 import { pathOperators, type Placement } from './paths';
 import { cleanText, shapeLine } from './shaping';
+import { writeSignatureField, type FileSignature } from './signature';
 import { writeStructure, type StructureNode, type StructureType } from './structure';
 import { FaceSubset } from './subset';
 
@@ -178,17 +179,23 @@ export class Layer {
     this.bookmarks.push({ title: cleanText(title), level, page: this.pages.length - 1, top: pageHeight - y });
   }
 
-  /** Writes the whole packet as one revision. Nothing may be drawn afterwards. */
+  /** Writes the whole packet as one revision and signs it. Nothing may be drawn afterwards. */
   async finish(
     file: FileHandle,
     metadata: DocumentMetadata,
     attachments: AttachedFile[],
+    signature: FileSignature,
     progress: (done: number) => Promise<void>,
   ): Promise<{ bytes: number; sha256: string }> {
     this.closeMark();
     const { context } = this;
     const pageRefs = this.pages.map(({ ref }) => ref);
-    this.pages.forEach((page, i) => this.writePage(page, i));
+    const [firstPage] = pageRefs;
+    if (firstPage === undefined) throw new Error('A packet has at least one page.');
+    const widget = context.nextRef();
+    this.pages.forEach((page, i) => this.writePage(page, i, i === 0 ? [widget] : []));
+    const form: StructureNode = { type: 'Form', parent: this.document, kids: [{ page: 0, annotation: widget }] };
+    this.document.kids.push(form);
     for (const subset of this.subsets.values()) await subset.embed(context);
     context.assign(this.pagesRef, context.obj({ Type: 'Pages', Kids: pageRefs, Count: pageRefs.length }));
     const outline = writeOutline(context, this.bookmarks, pageRefs);
@@ -207,6 +214,7 @@ export class Layer {
         this.document,
         this.pages.map(({ owners }) => owners),
         pageRefs,
+        [form],
       ),
       ViewerPreferences: { DisplayDocTitle: PDFBool.True },
       PageMode: outline === null ? 'UseNone' : 'UseOutlines',
@@ -214,10 +222,13 @@ export class Layer {
     catalog.set(PDFName.of('Lang'), PDFString.of('en'));
     if (outline !== null) catalog.set(PDFName.of('Outlines'), outline);
     context.trailerInfo.Root = context.register(catalog);
-    return writeObjects(context, file, progress);
+    const field = { ref: widget, page: firstPage, structParent: pageRefs.length, reason: signature.reason };
+    const { form: acroForm, value } = writeSignatureField(context, field);
+    catalog.set(PDFName.of('AcroForm'), acroForm);
+    return writeObjects(context, file, progress, { ...signature, ref: value });
   }
 
-  private writePage(page: Page, i: number): void {
+  private writePage(page: Page, i: number, annotations: PDFRef[]): void {
     const { context } = this;
     const content = page.operators.flatMap((operator) => (typeof operator === 'string' ? [operator] : operator()));
     context.assign(
@@ -230,6 +241,7 @@ export class Layer {
         Contents: context.register(context.flateStream(content.join('\n'))),
         StructParents: i,
         Tabs: 'S',
+        ...(annotations.length === 0 ? {} : { Annots: annotations }),
       }),
     );
   }

@@ -4,12 +4,12 @@ import { PDFHexString, PDFName, PDFNumber, type PDFContext, type PDFDict, type P
 /** The standard structure types (ISO 32000-1, 14.8.4) the packet uses. */
 export type StructureType =
   | 'Document' | 'Sect' | 'H1' | 'H2' | 'H3' | 'P' | 'Table' | 'TR' | 'TH' | 'TD' | 'Figure' | 'Caption'
-  | 'TOC' | 'TOCI' | 'L' | 'LI' | 'LBody'; // prettier-ignore
+  | 'TOC' | 'TOCI' | 'L' | 'LI' | 'LBody' | 'Form'; // prettier-ignore
 
 export interface StructureNode {
   type: StructureType;
   parent: StructureNode | null;
-  kids: (StructureNode | { page: number; mark: number })[];
+  kids: (StructureNode | { page: number; mark: number } | { page: number; annotation: PDFRef })[];
   /** Text alternative of a figure. */
   alt?: string;
   /** Left, bottom, right, top of a figure on its page, in points from the lower left corner. */
@@ -19,8 +19,18 @@ export interface StructureNode {
 /** Which elements own the marked content of each page, in the order of its numbers. */
 export type MarksByPage = StructureNode[][];
 
-/** Writes the structure tree and its parent tree; returns the root's reference. */
-export function writeStructure(context: PDFContext, document: StructureNode, marks: MarksByPage, pages: PDFRef[]) {
+/**
+ * Writes the structure tree and its parent tree; returns the root's reference.
+ *
+ * @param owners whose annotations they are: the first one's number in the parent tree follows that of the last page
+ */
+export function writeStructure(
+  context: PDFContext,
+  document: StructureNode,
+  marks: MarksByPage,
+  pages: PDFRef[],
+  owners: StructureNode[] = [],
+) {
   const rootRef = context.nextRef();
   const refs = new Map<StructureNode, PDFRef>();
   const refOf = (node: StructureNode): PDFRef => {
@@ -37,24 +47,26 @@ export function writeStructure(context: PDFContext, document: StructureNode, mar
     const kids = node.kids.map((kid) => {
       if ('type' in kid) return refOf(kid);
       const page = pages[kid.page];
-      return context.obj({ Type: 'MCR', ...(page === undefined ? {} : { Pg: page }), MCID: kid.mark });
+      const where = page === undefined ? {} : { Pg: page };
+      if ('annotation' in kid) return context.obj({ Type: 'OBJR', ...where, Obj: kid.annotation });
+      return context.obj({ Type: 'MCR', ...where, MCID: kid.mark });
     });
     element.set(PDFName.of('K'), context.obj(kids));
     context.assign(refOf(node), element);
     for (const kid of node.kids) if ('type' in kid) write(kid);
   };
   write(document);
-  const numbers = marks.flatMap((owners, page) => [
-    PDFNumber.of(page),
-    context.register(context.obj(owners.map(refOf))),
-  ]);
+  const numbers = [
+    ...marks.flatMap((marked, page) => [PDFNumber.of(page), context.register(context.obj(marked.map(refOf)))]),
+    ...owners.flatMap((owner, i) => [PDFNumber.of(marks.length + i), refOf(owner)]),
+  ];
   context.assign(
     rootRef,
     context.obj({
       Type: 'StructTreeRoot',
       K: refOf(document),
       ParentTree: context.register(context.obj({ Nums: numbers })),
-      ParentTreeNextKey: marks.length,
+      ParentTreeNextKey: marks.length + owners.length,
     }),
   );
   return rootRef;

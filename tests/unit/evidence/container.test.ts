@@ -4,6 +4,7 @@ import { describe, expect, it } from 'vitest';
 import { joinBytes, utf8 } from '@/lib/evidence/bytes';
 import { extractFromPacket, readContainer } from '@/lib/evidence/container';
 import { verifyBundle } from '@/lib/evidence/verify';
+import { buildZip } from './build-zip';
 import { buildRecord, givenFiles, installation, keyOf, receiptBytes, signedText, unsignedBundle } from './build-record';
 
 const text = signedText(unsignedBundle(buildRecord()));
@@ -50,12 +51,13 @@ describe('a packet', () => {
     const container = await readContainer(await packet(undefined, undefined, useObjectStreams));
     expect(container).toMatchObject({ kind: 'packet', bundleText: text });
     expect(container.files).toEqual([{ name: 'receipt.jpg', bytes: receiptBytes }, givenFiles[1]]);
-    const { bundleText, files } = container;
+    const { bundleText, files, pages } = container;
+    expect(pages).toEqual({ state: 'none' });
     const finding = verifyBundle({
       bundleText,
       ...(files && { files }),
       key: keyOf(installation),
-      pagesNotChecked: true,
+      ...(pages && { pages }),
     });
     expect(finding.alterations).toEqual([]);
     expect(finding.outcome).toBe('unchanged');
@@ -197,13 +199,54 @@ describe('a PDF is unreadable as a packet', () => {
   });
 });
 
+describe('an export', () => {
+  const record = { name: 'record.json', bytes: utf8(text) };
+  const readme = { name: 'README.txt', bytes: utf8('What this is') };
+
+  it('gives its record and its other files, with those for people marked', async () => {
+    const zip = buildZip([record, { ...readme, isDeflated: true }, ...givenFiles]);
+    const { kind, bundleText, files } = await readContainer(zip);
+    expect([kind, bundleText]).toEqual(['export', text]);
+    expect(files).toEqual([{ ...readme, isCompanion: true }, ...givenFiles]);
+    const finding = verifyBundle({ bundleText, ...(files && { files }), key: keyOf(installation) });
+    expect(finding).toMatchObject({ outcome: 'unchanged', alterations: [], pages: 'none' });
+    expect(finding.notChecked.join()).toMatch(/^README\.txt: .*no part of the record/);
+  });
+
+  it.each([
+    ['a file that no entry names', { name: 'more.txt', bytes: utf8('more') }, 'file-unbound'],
+    ['a file for people that lies deeper', { name: 'copies/README.txt', bytes: utf8('more') }, 'file-unbound'],
+    ['a file for people in other letters', { name: 'readme.txt', bytes: utf8('more') }, 'file-unbound'],
+    ['another file under a listed name', { name: 'oil.jpg', bytes: utf8('another') }, 'file-changed'],
+  ])('is altered with %s', async (_, file, code) => {
+    const { bundleText, files = [] } = await readContainer(buildZip([record, file]));
+    expect(verifyBundle({ bundleText, files, key: keyOf(installation) })).toMatchObject({
+      outcome: 'altered',
+      alterations: [{ code }],
+    });
+  });
+
+  it('is unreadable without a record, with two, or with one that lies deeper', async () => {
+    expect(await reason(buildZip([readme]))).toContain('holds no record.json');
+    for (const name of ['a/record.json', 'RECORD.JSON ', 'old-Record.json', 'copies/ｒecord.json']) {
+      expect(await reason(buildZip([record, { ...record, name }]))).toMatch(/2 files whose names end|plain path/);
+    }
+    expect(await reason(buildZip([{ ...record, name: 'export/record.json' }]))).toContain('not the folder around');
+    expect(await reason(buildZip([{ ...record, name: 'Record.json' }]))).toContain('is called “Record.json”');
+  });
+
+  it('is unreadable when its record is no text, or the file only begins as a ZIP', async () => {
+    expect(await reason(buildZip([{ ...record, bytes: Uint8Array.of(0xff, 0xfe) }]))).toContain('not text');
+    expect(await reason(utf8('PK\u0003\u0004'))).toContain('ZIP');
+  });
+});
+
 describe('anything else', () => {
   it('is taken for a bare record when it is text', async () => {
     expect(await readContainer(utf8(text))).toEqual({ kind: 'record', bundleText: text, files: undefined });
   });
 
-  it('is unreadable when it is a ZIP file or no text', async () => {
-    expect(await reason(utf8('PK\u0003\u0004'))).toContain('ZIP');
+  it('is unreadable when it is no text', async () => {
     expect(await reason(new Uint8Array([0xff, 0xfe]))).toContain('not text');
   });
 

@@ -44,8 +44,8 @@ describe('a record that nobody changed', () => {
   });
 
   it('says that pages were not checked, when it came out of a packet', () => {
-    const finding = verifyBundle({ bundleText: text, key, pagesNotChecked: true });
-    expect(finding).toMatchObject({ outcome: 'unchanged' });
+    const finding = verifyBundle({ bundleText: text, key, pages: { state: 'none' } });
+    expect(finding).toMatchObject({ outcome: 'unchanged', pages: 'not-checked' });
     expect(finding.remarks.map((remark) => remark.code)).toContain('pages-not-checked');
   });
 });
