@@ -1,5 +1,5 @@
 import type { AttachmentRole, TermsBody } from '@/lib/evidence/format';
-import type { LogView, PurchaseView } from '@/lib/services/record-view';
+import type { EntryView, LogView, PurchaseView } from '@/lib/services/record-view';
 
 /** What a page knows of the record around one entry. */
 export interface EntryFacts {
@@ -9,6 +9,8 @@ export interface EntryFacts {
   /** The purchases the record draws from. */
   purchases: PurchaseView[];
   termsBySeq: Map<number, TermsBody>;
+  /** The whole record, where this reader has it: what was added to the entry is then shown under it. */
+  entries?: EntryView[];
 }
 
 export type FileKind = 'thumb' | 'plate' | 'copy' | 'original';

@@ -1,15 +1,16 @@
 import Link from 'next/link';
 import type { ReactNode } from 'react';
 import { WitnessMark } from '@/components/mark/witness-mark';
-import { Notice } from '@/components/ui/notice';
 import { PageHead } from '@/components/ui/page-head';
 import { UserText } from '@/components/ui/user-text';
 import { describeDelay, formatInstant } from '@/lib/domain/instants';
 import type { EntryView as Entry } from '@/lib/services/record-view';
+import { Addenda } from './addenda';
 import { Countersignature } from './countersignature';
 import { EntryBody } from './entry-body';
 import type { EntryFacts, EntryLinks } from './entry-facts';
 import { HeldBy } from './held-by';
+import { StruckNotice } from './struck-notice';
 
 export interface EntryViewProps {
   entry: Entry;
@@ -22,7 +23,7 @@ export interface EntryViewProps {
 
 /** One entry with everything it says, shown alike to its owner, to a shop and to the reader of a viewing link. */
 export function EntryView({ entry, facts, links, actions, isJustSealed }: EntryViewProps) {
-  const { seq, title, state, leafHash, sealedAt, struckBy, countersignatures, addenda, refersTo } = entry;
+  const { seq, title, state, leafHash, sealedAt, struckBy, countersignatures, refersTo } = entry;
   const { zone } = facts;
   const delay =
     entry.kind === 'service' && entry.body !== null ? `, ${describeDelay(entry.body.finishedAt, sealedAt)}` : '';
@@ -35,13 +36,7 @@ export function EntryView({ entry, facts, links, actions, isJustSealed }: EntryV
         note={<StateWords entry={entry} links={links} />}
         actions={actions}
       />
-      {struckBy === null ? null : (
-        <div className="mb-4">
-          <Notice tone="gap" title={`Struck by entry ${struckBy.seq} on ${formatInstant(struckBy.sealedAt, zone)}`}>
-            <UserText isMultiline>{struckBy.reason}</UserText>
-          </Notice>
-        </div>
-      )}
+      {struckBy === null ? null : <StruckNotice struck={struckBy} zone={zone} href={links.entry?.(struckBy.seq)} />}
       {refersTo === null ? null : (
         <p className="mb-4">
           About <EntryLink seq={refersTo.seq} links={links} />.
@@ -58,23 +53,14 @@ export function EntryView({ entry, facts, links, actions, isJustSealed }: EntryV
           </div>
         </section>
       )}
-      {addenda.length === 0 ? null : (
-        <p className="mt-6">
-          Added to later by{' '}
-          {addenda.map((one, index) => (
-            <span key={one}>
-              {index === 0 ? '' : ', '}
-              <EntryLink seq={one} links={links} />
-            </span>
-          ))}
-          .
-        </p>
-      )}
+      <Addenda entry={entry} facts={facts} links={links} />
       <HeldBy
         leafHash={leafHash}
         previous={entry.previous}
         tokens={entry.tokens}
         withheld={entry.withheld}
+        erasures={entry.erasures}
+        entry={links.entry}
         log={facts.log}
         zone={zone}
       />

@@ -1,20 +1,25 @@
+import Link from 'next/link';
 import { Definition, type DefinitionItem } from '@/components/ui/definition';
 import { Hash } from '@/components/ui/hash';
+import { partWords } from '@/lib/domain/erasure';
 import { formatInstant } from '@/lib/domain/instants';
 import type { PartName } from '@/lib/evidence/format';
-import type { LogView, TokenView } from '@/lib/services/record-view';
+import type { ErasureView, LogView, TokenView } from '@/lib/services/record-view';
 
 export interface HeldByProps {
   leafHash: string;
   previous?: string | null | undefined;
   tokens: TokenView[];
   withheld: PartName[];
+  erasures?: ErasureView[] | undefined;
+  /** Leads to the entry that records an erasure. */
+  entry?: ((seq: number) => string | undefined) | undefined;
   log: LogView;
   zone: string;
 }
 
 /** The hashes that hold an entry in its log, and who stamped it. */
-export function HeldBy({ leafHash, previous, tokens, withheld, log, zone }: HeldByProps) {
+export function HeldBy({ leafHash, previous, tokens, withheld, erasures = [], entry, log, zone }: HeldByProps) {
   const stamps = tokens.map(({ authority, genTime, isOwnAuthority, sha256 }): DefinitionItem => ({
     term: 'Time stamp',
     detail: (
@@ -56,8 +61,30 @@ export function HeldBy({ leafHash, previous, tokens, withheld, log, zone }: Held
           },
           ...(stamps.length > 0 ? stamps : [{ term: 'Time stamp', detail: 'Still to come', tone: 'warn' as const }]),
           ...(withheld.length === 0 ? [] : [{ term: 'Withheld here', detail: withheld.join(', ') }]),
+          ...erasures.map((one) => erasedItem(one, zone, entry?.(one.recordedSeq))),
         ]}
       />
     </section>
   );
+}
+
+function erasedItem({ name, erasedAt, recordedSeq }: ErasureView, zone: string, href?: string): DefinitionItem {
+  const where = `entry ${recordedSeq}`;
+  return {
+    term: `Erased: ${partWords[name]}`,
+    tone: 'warn',
+    detail: (
+      <>
+        Erased for good on {formatInstant(erasedAt, zone)}, as recorded in{' '}
+        {href === undefined ? (
+          where
+        ) : (
+          <Link className="link" href={href}>
+            {where}
+          </Link>
+        )}
+        . Its digest stays in the leaf, so the record still verifies.
+      </>
+    ),
+  };
 }

@@ -6,8 +6,9 @@ import { formatAmount, formatDistance, sumAmounts } from '@/lib/domain/units';
 import type { Attachment, ServiceBody } from '@/lib/evidence/format';
 import type { EntryView } from '@/lib/services/record-view';
 import type { EntryFacts, EntryLinks } from './entry-facts';
-import { capacityWords, roleWords } from '@/lib/domain/record-words';
-import { authorWords, counted, plateKind, stateWords } from './words';
+import { roleWords } from '@/lib/domain/record-words';
+import { quietDetail } from './line-words';
+import { addedWords, counted, plateKind, stateWords } from './words';
 
 export interface RecordLineProps {
   entry: EntryView;
@@ -52,13 +53,27 @@ function detailOf(entry: EntryView, zone: string): Pick<LedgerLineProps, 'detail
     return {
       detail: (
         <>
-          Struck by entry {seq} on {on}: <UserText>{reason}</UserText>
+          Struck by entry {seq} on {on}
+          {reason === '' ? '.' : ': '}
+          <UserText>{reason}</UserText>
         </>
       ),
     };
   }
-  if (entry.kind === 'service' && entry.body !== null) return serviceDetail(entry.body);
-  return { detail: <UserText>{quietDetail(entry)}</UserText> };
+  const said =
+    entry.kind === 'service' && entry.body !== null
+      ? serviceDetail(entry.body)
+      : { detail: <UserText>{quietDetail(entry)}</UserText> };
+  return entry.addenda.length === 0
+    ? said
+    : {
+        ...said,
+        detail: (
+          <>
+            {said.detail} Added to in {addedWords(entry.addenda)}.
+          </>
+        ),
+      };
 }
 
 function serviceDetail(body: ServiceBody): Pick<LedgerLineProps, 'detail' | 'detailTone'> {
@@ -82,23 +97,6 @@ function serviceDetail(body: ServiceBody): Pick<LedgerLineProps, 'detail' | 'det
       </>
     ),
   };
-}
-
-function quietDetail(entry: EntryView): string {
-  const author = entry.author === null ? '' : authorWords(entry.author);
-  if (entry.kind === 'countersignature' && entry.body !== null) {
-    return `For entry ${entry.refersTo?.seq ?? ''}: ${capacityWords[entry.body.capacity]}. ${author}`;
-  }
-  if (entry.kind === 'terms' && entry.body !== null) {
-    const { schedule, fluidPoints, fasteners } = entry.body;
-    return [
-      counted(schedule.length, 'schedule item', 'schedule items'),
-      counted(fluidPoints.length, 'fluid point', 'fluid points'),
-      counted(fasteners.length, 'fastener', 'fasteners'),
-    ].join(', ');
-  }
-  if (entry.withheld.includes('body')) return 'Its text is withheld.';
-  return author;
 }
 
 /** What was photographed for the entry, then the receipts of what it drew. */

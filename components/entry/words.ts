@@ -77,3 +77,13 @@ export function bytesWords(bytes: number): string {
 }
 
 export const counted = (count: number, one: string, many: string): string => `${count} ${count === 1 ? one : many}`;
+
+/** `entries 3 and 5` */
+export const addedWords = (seqs: number[]): string =>
+  seqs.length === 1 ? `entry ${seqs[0]}` : `entries ${seqs.slice(0, -1).join(', ')} and ${seqs.at(-1)}`;
+
+/** What an addendum says; undefined where its body is withheld. */
+export function addendumText(body: unknown): string | undefined {
+  const text = typeof body === 'object' && body !== null && 'text' in body ? body.text : undefined;
+  return typeof text === 'string' ? text : undefined;
+}

@@ -39,7 +39,11 @@ export default async function ViewedEntryPage({ params }: Props) {
           The whole record of the <UserText>{record.machine.name}</UserText>
         </Link>
       </p>
-      <EntryView entry={entry} facts={readerFacts(viewed)} links={readerLinks({ record, file, entry: hrefOf })} />
+      <EntryView
+        entry={entry}
+        facts={{ ...readerFacts(viewed), entries: record.entries }}
+        links={readerLinks({ record, file, entry: hrefOf })}
+      />
       <p className="tag mt-8 max-w-[70ch]">{whatIsShown}</p>
       <Pager
         label="the record"
