@@ -3,10 +3,12 @@ export interface Standing {
   machine: 'owner' | 'helper' | 'none';
   shelf: 'owner' | 'helper' | 'none';
   shop: 'technician' | 'none';
+  /** A record brought in from elsewhere is its importer's alone. */
+  import: 'holder' | 'none';
   isSteward: boolean;
 }
 
-export const noStanding: Standing = { machine: 'none', shelf: 'none', shop: 'none', isSteward: false };
+export const noStanding: Standing = { machine: 'none', shelf: 'none', shop: 'none', import: 'none', isSteward: false };
 
 /**
  * Every action that is guarded, what it acts on, and who may. None of them lets a steward into a record; but where no
@@ -25,6 +27,8 @@ export const access = {
   'read-record': { on: 'machine', who: ['owner', 'helper'] },
   /** Show the record to others: packets, viewing links, invitations to countersign. */
   share: { on: 'machine', who: ['owner'] },
+  /** Take the whole record away, prices and original files included. */
+  export: { on: 'machine', who: ['owner'] },
   /** See the lots, their receipts and what is left of them. */
   'read-shelf': { on: 'shelf', who: ['owner', 'helper'] },
   /** Begin, fill in or discard a receipt that is not confirmed yet. */
@@ -33,12 +37,15 @@ export const access = {
   'confirm-receipt': { on: 'shelf', who: ['owner'] },
   /** Answer an invitation in the shop's name. */
   countersign: { on: 'shop', who: ['technician'] },
+  /** Read a record brought in from elsewhere, or remove it. Whoever brought it in, and nobody else. */
+  'hold-import': { on: 'import', who: ['holder'] },
   /** Run the installation: accounts, shops, caught mail. */
   steward: { on: 'installation', who: ['steward'] },
 } as const satisfies Record<
   string,
   | { on: 'machine' | 'shelf'; who: readonly ('owner' | 'helper')[] }
   | { on: 'shop'; who: readonly 'technician'[] }
+  | { on: 'import'; who: readonly 'holder'[] }
   | { on: 'installation'; who: readonly 'steward'[] }
 >;
 

@@ -1,4 +1,5 @@
 import 'server-only';
+import { holdsImport } from '@/db/queries/imports';
 import { findRelation, type PersonRow, type RelationRow } from '@/db/queries/people';
 import { WitnessmarkError } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';
@@ -8,6 +9,7 @@ interface Subjects {
   machine?: string | undefined;
   shelf?: string | undefined;
   shop?: string | undefined;
+  import?: string | undefined;
 }
 
 /** What a person is, at this moment, to the things named. */
@@ -15,10 +17,11 @@ export async function standingOf(person: PersonRow, subjects: Subjects): Promise
   const at = now().toISOString();
   const relation = async (subjectKind: RelationRow['subjectKind'], subjectId: string | undefined) =>
     subjectId === undefined ? null : findRelation({ personId: person.id, subjectKind, subjectId, at });
-  const [machine, shelf, shop] = await Promise.all([
+  const [machine, shelf, shop, isHolder] = await Promise.all([
     relation('machine', subjects.machine),
     relation('shelf', subjects.shelf),
     relation('shop', subjects.shop),
+    subjects.import === undefined ? false : holdsImport({ id: subjects.import, personId: person.id }),
   ]);
   const owned = (found: typeof machine) => (found === 'owner' || found === 'helper' ? found : 'none');
   return {
@@ -26,6 +29,7 @@ export async function standingOf(person: PersonRow, subjects: Subjects): Promise
     machine: owned(machine),
     shelf: owned(shelf),
     shop: shop === 'technician' ? shop : 'none',
+    import: isHolder ? 'holder' : 'none',
     isSteward: person.isSteward,
   };
 }
@@ -43,7 +47,7 @@ export async function authorise(options: { person: PersonRow; action: Action } &
     throw new Error(`"${action}" acts on a ${on}, and none was named.`);
   }
   const standing = await standingOf(person, subjects);
-  if (!can(action, standing)) throw hidden(on === 'installation' ? 'page' : on);
+  if (!can(action, standing)) throw hidden(on === 'installation' ? 'page' : on === 'import' ? 'imported record' : on);
   return standing;
 }
 

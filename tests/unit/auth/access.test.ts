@@ -8,6 +8,7 @@ const standings: Record<string, Standing> = {
   'owner of the shelf': { ...noStanding, shelf: 'owner' },
   'helper on the shelf': { ...noStanding, shelf: 'helper' },
   technician: { ...noStanding, shop: 'technician' },
+  'holder of the import': { ...noStanding, import: 'holder' },
   steward: { ...noStanding, isSteward: true },
 };
 
@@ -19,10 +20,12 @@ const expected: Record<Action, string[]> = {
   seal: ['owner of the machine'],
   'read-record': ['owner of the machine', 'helper on the machine'],
   share: ['owner of the machine'],
+  export: ['owner of the machine'],
   'read-shelf': ['owner of the shelf', 'helper on the shelf'],
   'edit-shelf': ['owner of the shelf', 'helper on the shelf'],
   'confirm-receipt': ['owner of the shelf'],
   countersign: ['technician'],
+  'hold-import': ['holder of the import'],
   steward: ['steward'],
 };
 
@@ -41,7 +44,7 @@ describe('who may do what', () => {
   });
 
   test('nothing that seals, shares or sets up is open to a helper', () => {
-    const all: Standing = { machine: 'helper', shelf: 'helper', shop: 'none', isSteward: false };
+    const all: Standing = { machine: 'helper', shelf: 'helper', shop: 'none', import: 'none', isSteward: false };
     expect(actions.filter((action) => can(action, all)).sort()).toEqual([
       'edit-shelf',
       'edit-worksheet',
