@@ -4,7 +4,7 @@ import { readCertificate } from '@/lib/evidence/certificate';
 import { oids } from '@/lib/evidence/oids';
 import {
   bitString, boolean, context, contextPrimitive, integer, namedBits, octetString, oid, sequence, setOf, utcTime, utf8String,
-} from './time-stamp-authority/der'; // prettier-ignore
+} from './der'; // prettier-ignore
 
 // Certificates are judged at the time of the signature, and the demo's injected clock stands years back.
 const notBefore = new Date('2015-01-01T00:00:00Z');

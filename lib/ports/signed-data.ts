@@ -2,7 +2,7 @@ import 'server-only';
 import { createHash, sign } from 'node:crypto';
 import { oids } from '@/lib/evidence/oids';
 import type { CertificateChain } from './issue-certificates';
-import { context, integer, octetString, oid, sequence, setOf } from './time-stamp-authority/der';
+import { context, integer, octetString, oid, sequence, setOf } from './der';
 
 /** A signature over attributes that name what was signed and who signed it (RFC 5652 §5.4). */
 export interface SignedAttributes {

@@ -8,15 +8,11 @@ import { fromHex, toHex, utf8 } from '@/lib/evidence/bytes';
 import { isTokenOf, readToken } from '@/lib/evidence/token';
 import { atTime, now } from '@/lib/ports/clock';
 import { checkReply } from '@/lib/ports/time-stamp-authority/check-reply';
-import { boolean, context, integer, nullValue, octetString, oid, sequence } from '@/lib/ports/time-stamp-authority/der';
+import { boolean, context, integer, nullValue, octetString, oid, sequence } from '@/lib/ports/der';
 import { oids } from '@/lib/evidence/oids';
 import { answerRequest } from '@/lib/ports/time-stamp-authority/own';
-import {
-  extension,
-  makeAuthority,
-  ownCertificates,
-  readAuthority,
-} from '@/lib/ports/time-stamp-authority/own-certificates';
+import { extension, readChain } from '@/lib/ports/issue-certificates';
+import { makeAuthority, ownCertificates } from '@/lib/ports/time-stamp-authority/own-certificates';
 import { buildRequest, newNonce } from '@/lib/ports/time-stamp-authority/request';
 
 // The judge is OpenSSL 3 (`openssl ts`), which shares no code with what is tested.
@@ -136,7 +132,7 @@ describe('a token of the own authority', () => {
     const reply = answerRequest(new Uint8Array(readFileSync(query)));
     const withCertificates = answerRequest(buildRequest({ digest: digestOf(note), nonce: 1n }));
     expect(reply.length).toBeLessThan(withCertificates.length - 700);
-    const stamper = file('stamper.pem', ownCertificates().stamper.toString());
+    const stamper = file('stamper.pem', ownCertificates().leaf.toString());
     const response = file('nc.tsr', reply);
     const parts = ['ts', '-verify', '-queryfile', query, '-in', response, '-CAfile', rootPem()];
     expect(openssl(...parts, '-untrusted', stamper)).toContain('OK');
@@ -163,7 +159,7 @@ describe('a token of the own authority', () => {
   });
 
   it('has certificates whose chain and purpose OpenSSL accepts', () => {
-    const stamper = file('leaf.pem', ownCertificates().stamper.toString());
+    const stamper = file('leaf.pem', ownCertificates().leaf.toString());
     const parts = ['verify', '-x509_strict', '-purpose', 'timestampsign', '-CAfile', rootPem(), stamper];
     expect(openssl(...parts)).toContain('OK');
   });
@@ -305,7 +301,7 @@ describe('a reply that the client must not take', () => {
     ['whose purpose is not critical', purpose(false, oids.timeStamping)],
     ['without a purpose', extension('2.5.29.30.1', false, sequence())],
   ])('is signed by a certificate %s', (_, extendedKeyUsage) => {
-    const authority = readAuthority(makeAuthority(extendedKeyUsage));
+    const authority = readChain(makeAuthority(extendedKeyUsage));
     const other = answerRequest(buildRequest({ digest, nonce }), authority);
     expect(() => checkReply(other, { digest, nonce, at: now() })).toThrow('not for time stamps alone');
   });

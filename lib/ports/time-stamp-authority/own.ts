@@ -1,10 +1,12 @@
 import 'server-only';
-import { createHash, sign } from 'node:crypto';
+import { createHash } from 'node:crypto';
 import type { TimeStampReq } from 'pkijs';
 import { digestOf } from '@/lib/evidence/digests';
 import { oids } from '@/lib/evidence/oids';
 import { ownAuthorityName } from '@/lib/evidence/own-authority';
 import { now } from '@/lib/ports/clock';
+import { type CertificateChain, serialNumber } from '@/lib/ports/issue-certificates';
+import { contentInfo, signAttributes } from '@/lib/ports/signed-data';
 import {
   context,
   generalizedTime,
@@ -14,10 +16,9 @@ import {
   octetString,
   oid,
   sequence,
-  setOf,
   utf8String,
-} from './der';
-import { type OwnCertificates, ownCertificates, serialNumber } from './own-certificates';
+} from '@/lib/ports/der';
+import { ownCertificates } from './own-certificates';
 import { parseRequest } from './request';
 import type { TimeStampAuthority } from './time-stamp-authority';
 
@@ -60,39 +61,11 @@ function rejection(reason: keyof typeof failure, sentence: string): Uint8Array {
   return sequence(sequence(integer(rejected), sequence(utf8String(sentence)), namedBits(failure[reason])));
 }
 
-/** ContentInfo around SignedData (RFC 5652 §5) around TSTInfo. */
-function token(request: TimeStampReq, certificates: OwnCertificates): Uint8Array {
-  const { key, stamper, root, issuer, subject, serial } = certificates;
-  const info = tstInfo(request, subject);
-  const sha256 = sequence(oid(oids.sha256));
-
-  // RFC 5816: the certificate is named by its SHA-256, which is the default and so left out.
-  const certificateId = sequence(
-    octetString(createHash('sha256').update(stamper.raw).digest()),
-    sequence(sequence(context(4, issuer)), serial),
-  );
-  const attributes = [
-    attribute(oids.contentType, oid(oids.tstInfo)),
-    attribute(oids.messageDigest, octetString(createHash('sha256').update(info).digest())),
-    attribute(oids.signingCertificateV2, sequence(sequence(certificateId))),
-  ].sort(Buffer.compare);
-  const signature = sign('sha256', setOf(...attributes), key);
-  const signer = sequence(
-    integer(1),
-    sequence(issuer, serial),
-    sha256,
-    context(0, ...attributes),
-    sequence(oid(oids.ecdsaWithSha256)),
-    octetString(signature),
-  );
-  const signedData = sequence(
-    integer(3),
-    setOf(sha256),
-    sequence(oid(oids.tstInfo), context(0, octetString(info))),
-    ...(request.certReq === true ? [context(0, ...[stamper.raw, root.raw].sort(Buffer.compare))] : []),
-    setOf(signer),
-  );
-  return sequence(oid(oids.signedData), context(0, signedData));
+function token(request: TimeStampReq, chain: CertificateChain): Uint8Array {
+  const content = tstInfo(request, chain.subject);
+  const digest = createHash('sha256').update(content).digest();
+  const signed = signAttributes({ contentType: oids.tstInfo, digest, chain });
+  return contentInfo(signed, { chain, content, withCertificates: request.certReq === true });
 }
 
 function tstInfo(request: TimeStampReq, stamperName: Uint8Array): Uint8Array {
@@ -110,8 +83,4 @@ function tstInfo(request: TimeStampReq, stamperName: Uint8Array): Uint8Array {
     ...(request.nonce === undefined ? [] : [new Uint8Array(request.nonce.toBER())]),
     context(0, context(4, stamperName)),
   );
-}
-
-function attribute(id: string, value: Uint8Array): Uint8Array {
-  return sequence(oid(id), setOf(value));
 }

@@ -2,7 +2,7 @@ import 'server-only';
 import { randomBytes } from 'node:crypto';
 import * as asn1js from 'asn1js';
 import { TimeStampReq } from 'pkijs';
-import { boolean, integer, nullValue, octetString, oid, sequence } from './der';
+import { boolean, integer, nullValue, octetString, oid, sequence } from '@/lib/ports/der';
 import { oids } from '@/lib/evidence/oids';
 
 const nonceBytes = 16;
