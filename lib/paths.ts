@@ -5,6 +5,8 @@ export const paths = {
   verify: '/verify',
   /** The one-file check for a reader's own computer. */
   verifyProgram: '/verify.mjs',
+  /** The page that checks, as one file that opens from disk. */
+  verifyPage: '/verify.html',
   privacy: '/method#what-is-kept',
 
   signUp: '/sign-up',
@@ -29,6 +31,8 @@ export const paths = {
   specSheet: (machine: string) => `/machines/${machine}/spec-sheet`,
   machineSettings: (machine: string) => `/machines/${machine}/settings`,
   proof: (machine: string) => `/machines/${machine}/proof`,
+  /** What a reader would see, before anything is shared; the choice stands in its query. */
+  proofPreview: (machine: string) => `/machines/${machine}/proof/preview`,
   /** One rider's shelf (a household may have one). */
   shelf: (shelf: string) => `/shelves/${shelf}`,
   shelfEntry: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}`,

@@ -2,9 +2,19 @@
 
 import { FormShell, type FormAction } from '@/components/account/form-shell';
 import { TextInput } from '@/components/ui/text-input';
+import type { Openable } from '@/lib/services/what-can-be-opened';
+import { ScopeChoice } from './scope/scope-choice';
+
+export interface BuildPacketProps {
+  action: FormAction;
+  machine: string;
+  openable: Openable;
+  /** The page that shows what a reader would see. */
+  preview: string;
+}
 
 /** Asks for a packet of the record as it stands now. */
-export function BuildPacket({ action, machine }: { action: FormAction; machine: string }) {
+export function BuildPacket({ action, machine, openable, preview }: BuildPacketProps) {
   return (
     <FormShell action={action} submit="Build a packet" busy="Asking for it" label="Build a packet">
       {({ fields, typed }) => (
@@ -20,6 +30,7 @@ export function BuildPacket({ action, machine }: { action: FormAction; machine: 
             defaultValue={typed.purpose}
             error={fields.purpose}
           />
+          <ScopeChoice openable={openable} preview={preview} errors={fields} />
         </>
       )}
     </FormShell>

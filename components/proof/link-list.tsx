@@ -38,6 +38,9 @@ export function LinkList({ links, zone, revoke }: LinkListProps) {
               <p className="tag">
                 {stateWords(link, zone)}. Made {formatInstant(link.createdAt, zone)}. {openedWords(link, zone)}.
               </p>
+              <p className="tag">
+                Opens: <UserText>{link.opens}</UserText>
+              </p>
             </div>
             {link.state === 'open' ? (
               <ConfirmButton

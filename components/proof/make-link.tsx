@@ -8,6 +8,8 @@ import { Segments } from '@/components/ui/segments';
 import { SubmitButton } from '@/components/ui/submit-button';
 import { TextInput } from '@/components/ui/text-input';
 import { emptyForm, type FormState } from '@/lib/form-state';
+import type { Openable } from '@/lib/services/what-can-be-opened';
+import { ScopeChoice } from './scope/scope-choice';
 
 // Only drawn once an address is there.
 const QrCode = dynamic(() => import('./qr-code').then((part) => part.QrCode), { ssr: false });
@@ -21,8 +23,16 @@ const lasts = [
   { value: 'until-revoked', label: 'Until revoked' },
 ];
 
+export interface MakeLinkProps {
+  action: FormAction;
+  machine: string;
+  openable: Openable;
+  /** The page that shows what a reader would see. */
+  preview: string;
+}
+
 /** Makes a viewing link and shows its address, once: only a hash of it is kept. */
-export function MakeLink({ action, machine }: { action: FormAction; machine: string }) {
+export function MakeLink({ action, machine, openable, preview }: MakeLinkProps) {
   const [state, submit] = useActionState(action, emptyForm);
   return (
     <>
@@ -49,8 +59,10 @@ export function MakeLink({ action, machine }: { action: FormAction; machine: str
           options={lasts}
           defaultValue={state.typed.lasts ?? '90-days'}
           error={state.fields.lasts}
+          hint="One that lasts until revoked also hands out the newest packet that opens the same, with that packet’s own link."
           isWide
         />
+        <ScopeChoice openable={openable} preview={preview} errors={state.fields} />
         <div>
           <SubmitButton busyText="Making it">Make a viewing link</SubmitButton>
         </div>
@@ -68,7 +80,7 @@ function NewAddress({ url }: { url: string }) {
           <div className="min-w-0 flex-1 basis-52">
             <MonoCopy text={url} what="address" />
             <p className="tag mt-2">
-              Whoever has this address can read the whole record until it ends or you revoke it. If it is lost, make
+              Whoever has this address can read what it opens until it ends or you revoke it. If it is lost, make
               another.
             </p>
           </div>

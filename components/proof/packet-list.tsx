@@ -27,6 +27,9 @@ export function PacketList({ packets, zone }: PacketListProps) {
               <p className="tag">
                 {packet.purpose === '' ? '' : `${packet.number}, `}asked for {formatInstant(packet.createdAt, zone)}
               </p>
+              <p className="tag">
+                Opens: <UserText>{packet.opens}</UserText>
+              </p>
             </div>
             <PacketProgress initial={packet} />
           </li>

@@ -4,6 +4,8 @@ import { viewingLinksOfMachine, type ViewingLinkRow } from '@/db/queries/viewing
 import { machineById } from '@/db/queries/machines';
 import type { PersonRow } from '@/db/models/people';
 import { authorise } from '@/lib/auth/guard';
+import { scopeWords } from '@/lib/domain/scope-words';
+import { readScope } from '@/lib/domain/stored-scope';
 import { notFound } from '@/lib/errors';
 import { now } from '@/lib/ports/clock';
 import { machineName } from '@/lib/services/list-machines';
@@ -20,10 +22,12 @@ export interface ListedLink {
   timesOpened: number;
   /** It was minted for a packet and stands in it. */
   isOfPacket: boolean;
+  /** What it opens, in words. */
+  opens: string;
 }
 export interface ProofOf {
   machine: { id: string; name: string; timeZone: string };
-  packets: PacketProgress[];
+  packets: (PacketProgress & { opens: string })[];
   packetsTotal: number;
   links: ListedLink[];
   linksTotal: number;
@@ -38,18 +42,21 @@ export async function listProof(options: {
   packetPage: number;
   linkPage: number;
   perPage: number;
+  /** Names a schedule item by its key. */
+  titleOf?: (item: string) => string | undefined;
 }): Promise<ProofOf> {
-  const { person, machineId, packetPage, linkPage, perPage } = options;
+  const { person, machineId, packetPage, linkPage, perPage, titleOf } = options;
   await authorise({ person, action: 'share', machine: machineId });
   const machine = await machineById(machineId);
   if (machine === null) throw notFound('machine');
   const [packets, links] = await Promise.all([packetsOfMachine(machineId), viewingLinksOfMachine(machineId)]);
   const pageOf = <Row>(rows: Row[], page: number) => rows.slice((page - 1) * perPage, page * perPage);
   const at = now().toISOString();
-  const listed = links.map((link) => listedLink(link, at));
+  const opensOf = ({ scope }: { scope: string | null }) => scopeWords(readScope(scope), titleOf);
+  const listed = links.map((link) => ({ ...listedLink(link, at), opens: opensOf(link) }));
   return {
     machine: { id: machine.id, name: machineName(machine), timeZone: machine.timeZone },
-    packets: pageOf(packets, packetPage).map(packetProgress),
+    packets: pageOf(packets, packetPage).map((packet) => ({ ...packetProgress(packet), opens: opensOf(packet) })),
     packetsTotal: packets.length,
     links: pageOf(listed, linkPage),
     linksTotal: listed.length,
@@ -57,7 +64,7 @@ export async function listProof(options: {
   };
 }
 
-function listedLink(link: ViewingLinkRow, at: string): ListedLink {
+function listedLink(link: ViewingLinkRow, at: string): Omit<ListedLink, 'opens'> {
   const { id, label, createdAt, expiresAt, revokedAt, lastOpenedAt, timesOpened, packetId } = link;
   const hasRunOut = expiresAt !== null && expiresAt <= at;
   const state = revokedAt !== null ? 'revoked' : hasRunOut ? 'run-out' : 'open';

@@ -73,6 +73,10 @@ export const pages: Record<string, Reach> = {
     at: ({ worksheet }) => `/worksheets/${worksheet}/review`,
   },
   '(rider)/machines/[machine]/proof/page.tsx': { who: ownerOnly, at: ({ machine }) => `/machines/${machine}/proof` },
+  '(rider)/machines/[machine]/proof/preview/page.tsx': {
+    who: ownerOnly,
+    at: ({ machine }) => `/machines/${machine}/proof/preview?opens=for-sale`,
+  },
   '(rider)/machines/[machine]/record/[seq]/countersign/page.tsx': {
     who: ownerOnly,
     at: ({ machine }) => `/machines/${machine}/record/0/countersign`,
@@ -163,6 +167,7 @@ export const routes: Record<string, RouteReach> = {
     at: ({ invitation, plate }) => `/countersign/answer/${invitation}/files/${plate}/thumb`,
   },
   'GET (public)/verify.mjs/route.ts': { who: everybody },
+  'GET (public)/verify.html/route.ts': { who: everybody },
   'GET api/files/[sha256]/[kind]/route.ts': {
     who: ridersOfTheMachine,
     at: ({ machine, plate }) => `/api/files/${plate}/copy?for=${machine}`,

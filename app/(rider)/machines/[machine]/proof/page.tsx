@@ -12,6 +12,7 @@ import { orNotFound } from '@/lib/auth/guard';
 import { requirePerson } from '@/lib/auth/session';
 import { paths } from '@/lib/paths';
 import { listProof } from '@/lib/services/list-proof';
+import { whatCanBeOpened } from '@/lib/services/what-can-be-opened';
 import { buildPacketAction, makeLinkAction, revokeLinkAction } from './actions';
 
 export const metadata: Metadata = { title: 'Proof' };
@@ -31,7 +32,10 @@ export default async function ProofPage({ params, searchParams }: Props) {
   const [{ machine: machineId }, query] = await Promise.all([params, searchParams]);
   const person = await requirePerson();
   const [packetPage, linkPage] = [pageNumber(query.packets), pageNumber(query.links)];
-  const proof = await orNotFound(listProof({ person, machineId, packetPage, linkPage, perPage }));
+  const openable = await orNotFound(whatCanBeOpened({ person, machineId }));
+  const titleOf = (wanted: string) => openable.items.find(({ item }) => item === wanted)?.title;
+  const proof = await orNotFound(listProof({ person, machineId, packetPage, linkPage, perPage, titleOf }));
+  const forms = { machine: machineId, openable, preview: paths.proofPreview(machineId) };
   const { machine, packets, packetsTotal, links, linksTotal, linksOpen } = proof;
   const zone = machine.timeZone;
   return (
@@ -40,15 +44,15 @@ export default async function ProofPage({ params, searchParams }: Props) {
       <section aria-labelledby="packets" className="mt-2">
         <h2 id="packets">Packets</h2>
         <p className="mt-1 mb-4 max-w-[70ch]">
-          A dated PDF of the whole record as it stands now, with its gaps, receipts and photos, and the record itself
-          inside for anybody to{' '}
+          A dated PDF of the record as it stands now, with its gaps, receipts and photos, and the record itself inside
+          for anybody to{' '}
           <Link href={paths.verify} className="link">
             check
           </Link>
-          . Prices are left out.
+          . What you keep closed is in neither; every line stays, and what is withheld is counted.
         </p>
         <div className="mb-5 max-w-[36rem]">
-          <BuildPacket action={buildPacketAction} machine={machineId} />
+          <BuildPacket action={buildPacketAction} {...forms} />
         </div>
         <PacketList packets={packets} zone={zone} />
         <ProofPager
@@ -63,11 +67,11 @@ export default async function ProofPage({ params, searchParams }: Props) {
       <section aria-labelledby="links" className="mt-10">
         <h2 id="links">Viewing links</h2>
         <p className="mt-1 mb-4 max-w-[70ch]">
-          An address that opens the whole record, read-only, without an account. You see how often it was opened, and
-          can revoke it at any moment. Each packet carries a link of its own.
+          An address that opens what you choose, read-only, without an account. You see how often it was opened, and can
+          revoke it at any moment. Each packet carries a link of its own.
         </p>
         <div className="mb-5 max-w-[36rem]">
-          <MakeLink action={makeLinkAction} machine={machineId} />
+          <MakeLink action={makeLinkAction} {...forms} />
         </div>
         <LinkList links={links} zone={zone} revoke={revokeLinkAction} />
         <ProofPager
