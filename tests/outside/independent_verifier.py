@@ -1,9 +1,10 @@
 """A second verifier, written from the format's description alone, in another language.
 
 It shares no code with the project: JSON, SHA-256 and base64 come from Python's standard library, Ed25519 and ECDSA
-signatures and RFC 3161 tokens are judged by the openssl command, packets are opened by poppler's pdfdetach.
+signatures and RFC 3161 tokens are judged by the openssl command, packets are opened by poppler's pdfdetach, exports by zipfile. A packet's pages count by the
+one signature in the PDF (ISO 32000-2, 12.8), which openssl judges too.
 
-    python3 independent_verifier.py record.json|packet.pdf [--tsa-root root.pem]
+    python3 independent_verifier.py record.json|packet.pdf|export.zip [--tsa-root root.pem]
 
 Exit status: 0 unchanged, 1 altered, 2 unreadable. Problems go to standard output, one a line.
 """
@@ -15,6 +16,7 @@ import re
 import subprocess
 import sys
 import tempfile
+import zipfile
 
 problems = []
 
@@ -393,7 +395,49 @@ def verify(text, tsa_root):
     for file in bundle["files"]:
         if file["derivedFrom"] is None and named_files.get(file["sha256"]) != (file["bytes"], file["mediaType"]):
             problem(f"file {file['name']}", "no opened part names it so")
-    return entries, [file for file in bundle["files"] if file["included"]]
+    return entries, [file for file in bundle["files"] if file["included"]], bundle["packetCertificate"]
+
+
+def der_length(data):
+    """Tag and length included, of the first element."""
+    if data[1] < 0x80:
+        return 2 + data[1]
+    count = data[1] & 0x7F
+    return 2 + count + int.from_bytes(data[2:2 + count], "big")
+
+
+def check_pages(data, certificate, folder):
+    """The signature of the certificate that record.json names must hold over every byte but the value of Contents."""
+    ranges = re.findall(rb"/ByteRange\s*\[\s*(\d+)\s+(\d+)\s+(\d+)\s+(\d+)\s*\]", data)
+    if len(ranges) != 1 or data.count(b"/ByteRange") != 1:
+        return problem("pages", f"{len(ranges)} signatures, not one")
+    zero, start, end, length = map(int, ranges[0])
+    hole = data[start:end]
+    if zero != 0 or end + length != len(data) or not re.search(rb"/Contents\s*$", data[:start]):
+        return problem("pages", "the signature does not cover the whole file but its own value")
+    if not re.fullmatch(rb"<(?:[0-9A-Fa-f]{2})+>", hole):
+        return problem("pages", "what is not signed is not one hexadecimal string")
+    signature = bytes.fromhex(hole[1:-1].decode())
+    size = der_length(signature)
+    if any(signature[size:]):
+        return problem("pages", "something stands behind the signature where nothing is signed")
+
+    def put(name, content=None):
+        path = os.path.join(folder, name)
+        if content is not None:
+            with open(path, "wb") as file:
+                file.write(content)
+        return path
+
+    outcome = subprocess.run(
+        ["openssl", "cms", "-verify", "-binary", "-cades", "-inform", "DER", "-in", put("pages.cms", signature[:size]),
+         "-content", put("pages.signed", data[:start] + data[end:]), "-noverify", "-signer", put("pages.pem"), "-out", os.devnull],
+        capture_output=True, text=True)
+    if outcome.returncode != 0:
+        return problem("pages", f"openssl refuses the signature: {outcome.stderr.strip()}")
+    der = subprocess.run(["openssl", "x509", "-in", put("pages.pem"), "-outform", "DER"], capture_output=True, check=True).stdout
+    if hashlib.sha256(der).hexdigest() != certificate:
+        problem("pages", "signed with another certificate than record.json names")
 
 
 def read_packet(path, folder):
@@ -405,18 +449,40 @@ def read_packet(path, folder):
         return file.read()
 
 
+def read_export(path, folder):
+    with zipfile.ZipFile(path) as archive:
+        names = archive.namelist()
+        if len(set(names)) != len(names) or [n for n in names if n.lower().endswith("record.json")] != ["record.json"]:
+            raise ValueError("not exactly one record.json")
+        if archive.testzip() is not None:
+            raise ValueError("a check sum is wrong")
+        archive.extractall(folder)
+        return archive.read("record.json").decode("utf-8")
+
+
 def main(arguments):
     path = arguments[0]
     tsa_root = arguments[arguments.index("--tsa-root") + 1] if "--tsa-root" in arguments else None
     with tempfile.TemporaryDirectory() as folder:
         try:
-            is_packet = open(path, "rb").read(5) == b"%PDF-"
-            text = read_packet(path, folder) if is_packet else open(path, encoding="utf-8", newline="").read()
-            entries, included = verify(text, tsa_root)
-        except (ValueError, KeyError, TypeError, IndexError, subprocess.CalledProcessError, AttributeError) as error:
+            begins = open(path, "rb").read(5)
+            is_packet, is_export = begins == b"%PDF-", begins[:2] == b"PK"
+            if is_packet or is_export:
+                text = (read_packet if is_packet else read_export)(path, folder)
+            else:
+                text = open(path, encoding="utf-8", newline="").read()
+            entries, included, certificate = verify(text, tsa_root)
+        except (ValueError, KeyError, TypeError, IndexError, subprocess.CalledProcessError, AttributeError,
+                zipfile.BadZipFile) as error:
             print(f"unreadable: {type(error).__name__} {error}")
             return 2
-        for file in included if is_packet else []:
+        if is_packet and certificate is not None:
+            with open(path, "rb") as packet, tempfile.TemporaryDirectory() as apart:
+                try:
+                    check_pages(packet.read(), certificate, apart)
+                except (ValueError, IndexError, subprocess.CalledProcessError) as error:
+                    problem("pages", f"{type(error).__name__} {error}")
+        for file in included if is_packet or is_export else []:
             attached = os.path.join(folder, file["name"])
             data = open(attached, "rb").read() if os.path.exists(attached) else b""
             if hashlib.sha256(data).hexdigest() != file["sha256"] or len(data) != file["bytes"]:
