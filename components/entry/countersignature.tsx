@@ -3,8 +3,10 @@ import { Box, Boxes } from '@/components/ui/box';
 import { UserText } from '@/components/ui/user-text';
 import { formatInstant, formatLocalDate, localDateOf } from '@/lib/domain/instants';
 import type { AuthorPart, CountersignatureBody } from '@/lib/evidence/format';
+import type { StatementFinding } from '@/lib/evidence/verify-statements';
 import type { EntryLinks } from './entry-facts';
 import { capacityWords } from '@/lib/domain/record-words';
+import { OwnSignatureBox } from './own-signature';
 import { confirmedWords } from './words';
 
 export interface CountersignatureProps {
@@ -12,13 +14,14 @@ export interface CountersignatureProps {
   sealedAt: string;
   author: AuthorPart | null;
   body: CountersignatureBody;
+  ownSignature?: StatementFinding | undefined;
   zone: string;
   /** Leads to the entry of the countersignature, where it is shown beside the entry it is about. */
   entry?: EntryLinks['entry'];
 }
 
 /** What a shop vouches for, in which capacity, and how far the shop itself is known. */
-export function Countersignature({ seq, sealedAt, author, body, zone, entry }: CountersignatureProps) {
+export function Countersignature({ seq, sealedAt, author, body, ownSignature, zone, entry }: CountersignatureProps) {
   const { shop, capacity, statement, invitedBy } = body;
   const href = entry?.(seq);
   return (
@@ -51,6 +54,7 @@ export function Countersignature({ seq, sealedAt, author, body, zone, entry }: C
       <Box label="Its words" span="all">
         <UserText isMultiline>{statement}</UserText>
       </Box>
+      <OwnSignatureBox found={ownSignature} entry={entry} />
       <Box
         label="Account of the shop"
         note={

@@ -10,6 +10,7 @@ import { Countersignature } from './countersignature';
 import { EntryBody } from './entry-body';
 import type { EntryFacts, EntryLinks } from './entry-facts';
 import { HeldBy } from './held-by';
+import { SignedByPart } from './own-signature';
 import { StruckNotice } from './struck-notice';
 
 export interface EntryViewProps {
@@ -53,6 +54,7 @@ export function EntryView({ entry, facts, links, actions, isJustSealed }: EntryV
           </div>
         </section>
       )}
+      {entry.signedBy === undefined ? null : <SignedByPart signedBy={entry.signedBy} zone={zone} links={links} />}
       <Addenda entry={entry} facts={facts} links={links} />
       <HeldBy
         leafHash={leafHash}

@@ -1,3 +1,4 @@
+import { ownSignatureWords } from '@/components/passkey/words';
 import { capacityWords } from '@/lib/domain/record-words';
 import type { EntryView } from '@/lib/services/record-view';
 import { addendumText, authorWords, counted } from './words';
@@ -16,11 +17,17 @@ function shortened(text: string): string {
   return `${characters.slice(0, longestExcerpt).join('').trimEnd()} …`;
 }
 
+function signatureWords({ ownSignature }: EntryView): string {
+  if (ownSignature?.result === 'fails') return 'The signature does not hold.';
+  return `${ownSignatureWords}.`;
+}
+
 /** What a line says of an entry that is no service. */
 export function quietDetail(entry: EntryView): string {
   const author = entry.author === null ? '' : authorWords(entry.author);
   if (entry.kind === 'countersignature' && entry.body !== null) {
-    return `For entry ${entry.refersTo?.seq ?? ''}: ${capacityWords[entry.body.capacity]}. ${author}`;
+    const own = entry.ownSignature?.result === 'holds' ? ' Signed with its own key.' : '';
+    return `For entry ${entry.refersTo?.seq ?? ''}: ${capacityWords[entry.body.capacity]}.${own} ${author}`;
   }
   if (entry.kind === 'terms' && entry.body !== null) {
     const { schedule, fluidPoints, fasteners } = entry.body;
@@ -31,6 +38,8 @@ export function quietDetail(entry: EntryView): string {
     ].join(', ');
   }
   if (entry.withheld.includes('body')) return 'Its text is withheld.';
+  if (entry.kind === 'signature') return signatureWords(entry);
+  if (entry.kind === 'key') return 'Statements signed with it later are checked by this entry.';
   if (entry.kind === 'addendum') return `${shortened(addendumText(entry.body) ?? '')} ${author}`;
   if (entry.kind === 'strike') return `${shortened(reasonOf(entry.body))} ${author}`;
   return author;

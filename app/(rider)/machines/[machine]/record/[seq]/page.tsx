@@ -1,17 +1,22 @@
 import type { Metadata } from 'next';
 import { notFound } from 'next/navigation';
+import { EntryActions } from '@/components/entry/entry-actions';
 import { EntryView } from '@/components/entry/entry-view';
+import { MoreAbout } from '@/components/entry/more-about';
 import { entryLinks } from '@/components/entry/rider-links';
-import { LinkButton } from '@/components/ui/button';
+import { SignPart } from '@/components/passkey/sign-part';
 import { Pager } from '@/components/ui/pager';
 import { orNotFound } from '@/lib/auth/guard';
 import { requirePerson } from '@/lib/auth/session';
 import { paths } from '@/lib/paths';
+import { usablePasskeys } from '@/lib/services/list-passkeys';
+import { maySign } from '@/lib/services/prepare-signature';
 import { readMachineRecord } from '@/lib/services/read-machine-record';
+import { prepareSignatureAction, signEntryAction } from './sign-actions';
 
 interface EntryPageProps {
   params: Promise<{ machine: string; seq: string }>;
-  searchParams: Promise<{ sealed?: string | string[] }>;
+  searchParams: Promise<{ sealed?: string | string[]; sign?: string | string[] }>;
 }
 
 export async function generateMetadata({ params }: EntryPageProps): Promise<Metadata> {
@@ -25,8 +30,10 @@ export default async function EntryPage({ params, searchParams }: EntryPageProps
   const entry = record.entries.find((one) => String(one.seq) === seq);
   if (entry === undefined) notFound();
   const { log, termsBySeq, entries } = record;
-  const facts = { zone, log, termsBySeq, purchases: record.shelves.flatMap(({ purchases }) => purchases) };
-  const canInvite = relation === 'owner' && entry.kind === 'service' && entry.struckBy === null;
+  const isSigned = entry.signedBy?.some(({ author }) => author?.person === person.id) === true;
+  const canSign = relation === 'owner' && maySign(entry.kind) && entry.struckBy === null && !isSigned;
+  const hasKey = canSign && (await usablePasskeys({ personId: person.id })).length > 0;
+  const facts = { zone, log, termsBySeq, entries, purchases: record.shelves.flatMap(({ purchases }) => purchases) };
   return (
     <>
       <EntryView
@@ -34,12 +41,19 @@ export default async function EntryPage({ params, searchParams }: EntryPageProps
         facts={facts}
         links={entryLinks(id, shelfByLog)}
         isJustSealed={query.sealed !== undefined}
-        actions={
-          canInvite ? (
-            <LinkButton href={paths.inviteShop(id, entry.seq)}>Ask a shop to countersign</LinkButton>
-          ) : undefined
-        }
+        actions={<EntryActions machine={id} entry={entry} relation={relation} />}
       />
+      {canSign && (hasKey || entry.kind === 'service') ? (
+        <SignPart
+          begin={prepareSignatureAction}
+          finish={signEntryAction}
+          machine={id}
+          seq={entry.seq}
+          isAsked={query.sign === 'now'}
+          hasKey={hasKey}
+        />
+      ) : null}
+      {relation === 'owner' ? <MoreAbout eraseHref={paths.erase(id, entry.seq)} name={`entry ${seq}`} /> : null}
       <Pager
         label="Entry"
         words={`Entry ${seq} of 0 to ${entries.length - 1}`}
