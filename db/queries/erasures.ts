@@ -22,6 +22,11 @@ export function erasuresRecordedBy(
   return erasures.all({ logId, recordedSeq }, inside(transaction));
 }
 
+/** What was erased of an entry. */
+export function erasuresOfEntry(logId: string, seq: number): Promise<ErasureRow[]> {
+  return erasures.all({ logId, seq });
+}
+
 /** Records that a part is erased, and erases it: the one deletion a log knows. */
 export async function eraseEntryPart(erasure: ErasureRow, transaction: Transaction): Promise<void> {
   const { logId, seq, name } = erasure;
