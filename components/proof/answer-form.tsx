@@ -2,6 +2,8 @@
 
 import { useActionState, useState } from 'react';
 import { FormShell, type FormAction } from '@/components/account/form-shell';
+import { PasskeyStep } from '@/components/passkey/passkey-step';
+import { ownSignatureLimit } from '@/components/passkey/words';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
 import { FieldError } from '@/components/ui/field';
@@ -18,16 +20,23 @@ const capacities = [
   { value: 'checked-papers', label: 'Checked the papers only' },
 ];
 
+/** Whether the technician can sign with a key of their own, and what takes the signature. */
+export interface OwnKey {
+  hasKey: boolean;
+  sign: FormAction;
+}
+
 export interface AnswerFormProps {
   action: FormAction;
   invitation: string;
   shop: { id: string; name: string };
   seq: number;
+  ownKey: OwnKey;
 }
 
 /** Countersign in one of four capacities, or decline. */
 export function AnswerForm(props: AnswerFormProps) {
-  const { action, invitation, shop, seq } = props;
+  const { action, invitation, shop, seq, ownKey } = props;
   const [state, submit] = useActionState(action, emptyForm);
   const { fields, typed } = state;
   return (
@@ -58,14 +67,41 @@ export function AnswerForm(props: AnswerFormProps) {
           defaultValue={typed.statement}
           error={fields.statement}
         />
-        <div>
-          <SubmitButton look="seal" size="big" busyText="Countersigning">
-            Countersign entry {seq}
-          </SubmitButton>
-        </div>
+        <PasskeyStep
+          question={state.question}
+          finish={ownKey.sign}
+          fields={{ invitation }}
+          ifRefused="Nothing was countersigned. Press the button again, or countersign without your key."
+        />
+        <Submit seq={seq} hasKey={ownKey.hasKey} />
       </form>
       <Decline {...props} />
     </>
+  );
+}
+
+function Submit({ seq, hasKey }: { seq: number; hasKey: boolean }) {
+  const main = { look: 'seal', size: 'big', busyText: 'Countersigning' } as const;
+  if (!hasKey) {
+    return (
+      <div className="grid justify-items-start gap-2">
+        <SubmitButton {...main}>Countersign entry {seq}</SubmitButton>
+        <p className="tag">Without a key of your own: readers see that no signature was made outside this server.</p>
+      </div>
+    );
+  }
+  return (
+    <div className="grid justify-items-start gap-2">
+      <div className="flex flex-wrap items-center gap-3">
+        <SubmitButton {...main} name="sign" value="yes">
+          Countersign entry {seq} and sign with my key
+        </SubmitButton>
+        <SubmitButton look="quiet" size="big" busyText="Countersigning">
+          Countersign without my key
+        </SubmitButton>
+      </div>
+      <p className="tag">Your key signs exactly this capacity and statement for this entry. {ownSignatureLimit}</p>
+    </div>
   );
 }
 

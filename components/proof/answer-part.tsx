@@ -6,8 +6,9 @@ import { UserText } from '@/components/ui/user-text';
 import { formatInstant } from '@/lib/domain/instants';
 import { paths } from '@/lib/paths';
 import type { InvitedEntry } from '@/lib/services/read-invited-entry';
-import { AnswerForm } from './answer-form';
+import { AnswerForm, type OwnKey } from './answer-form';
 import { NameShop } from './name-shop';
+import { OfferKey, type OfferKeyProps } from './offer-key';
 
 export interface AnswerPartProps {
   invited: InvitedEntry;
@@ -16,6 +17,7 @@ export interface AnswerPartProps {
   signInHref: string;
   nameShop: FormAction;
   answer: FormAction;
+  ownKey: OwnKey & OfferKeyProps;
 }
 
 /** What the reader of an invitation can do now: sign in, name their shop, answer, or read the answer. */
@@ -31,7 +33,7 @@ export function AnswerPart(props: AnswerPartProps) {
   );
 }
 
-function Step({ invited, isSignedIn, signInHref, nameShop, answer }: AnswerPartProps) {
+function Step({ invited, isSignedIn, signInHref, nameShop, answer, ownKey }: AnswerPartProps) {
   const { invitation, shop, isOwn, entry } = invited;
   if (invitation.answer !== null) return <Result invited={invited} />;
   if (!isSignedIn) return <SignInFirst email={invitation.email} signInHref={signInHref} />;
@@ -65,7 +67,8 @@ function Step({ invited, isSignedIn, signInHref, nameShop, answer }: AnswerPartP
               ? ', confirmed by the steward of this installation.'
               : '. It is not confirmed by the steward yet, and readers will see “not confirmed: this could be the owner”.'}
           </p>
-          <AnswerForm action={answer} invitation={invitation.id} shop={shop} seq={entry.seq} />
+          <AnswerForm action={answer} invitation={invitation.id} shop={shop} seq={entry.seq} ownKey={ownKey} />
+          {ownKey.hasKey ? null : <OfferKey {...ownKey} />}
         </>
       )}
     </div>

@@ -12,10 +12,12 @@ export interface SealFormProps {
   reviewed: string;
   isReady: boolean;
   seq: number;
+  /** The person has a key of their own to sign with. */
+  hasKey: boolean;
 }
 
 /** The one act that makes a worksheet an entry. */
-export function SealForm({ action, worksheet, reviewed, isReady, seq }: SealFormProps) {
+export function SealForm({ action, worksheet, reviewed, isReady, seq, hasKey }: SealFormProps) {
   const [state, submit] = useActionState(action, emptyForm);
   return (
     <form action={submit} className="mt-8 grid justify-items-start gap-3">
@@ -30,12 +32,25 @@ export function SealForm({ action, worksheet, reviewed, isReady, seq }: SealForm
           </ul>
         </Notice>
       ) : null}
-      <SubmitButton look="seal" size="big" busyText="Sealing" disabled={!isReady}>
-        Seal as entry {seq}
-      </SubmitButton>
+      <div className="flex flex-wrap items-center gap-3">
+        <SubmitButton
+          look="seal"
+          size="big"
+          busyText="Sealing"
+          disabled={!isReady}
+          {...(hasKey ? { name: 'sign', value: 'yes' } : {})}
+        >
+          {hasKey ? 'Seal and sign with my key' : `Seal as entry ${seq}`}
+        </SubmitButton>
+        {hasKey ? (
+          <SubmitButton look="quiet" size="big" busyText="Sealing" disabled={!isReady}>
+            Seal as entry {seq}, unsigned
+          </SubmitButton>
+        ) : null}
+      </div>
       <p className="tag max-w-[60ch]">
         {isReady
-          ? 'The server notes its time, hashes the entry, links it to the one before and signs. A time stamp follows by itself.'
+          ? `The server notes its time, hashes the entry, links it to the one before and signs. A time stamp follows by itself.${hasKey ? ' Then your key is asked; if you cancel, the entry stays sealed.' : ''}`
           : 'It can be sealed once the lines above are put right. Gaps need not be mended: they are recorded as they are.'}
       </p>
     </form>

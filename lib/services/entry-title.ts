@@ -1,5 +1,5 @@
 import 'server-only';
-import type { CountersignatureBody, ServiceBody } from '@/lib/evidence/format';
+import type { AuthorPart, CountersignatureBody, ServiceBody } from '@/lib/evidence/format';
 import type { OpenedEntry } from '@/lib/services/open-stored-log';
 
 /** The words by which a ledger line names an entry of a machine's log: "Service, withheld" where its body is closed. */
@@ -10,6 +10,7 @@ export function entryTitle(entry: OpenedEntry): string {
 
 function titleOf({ kind, leaf, values }: OpenedEntry): string {
   const body = values.get('body');
+  const name = (values.get('author') as AuthorPart | undefined)?.name;
   const of = leaf.refersTo === null ? '' : ` of entry ${leaf.refersTo.seq}`;
   const to = leaf.refersTo === null ? '' : ` to entry ${leaf.refersTo.seq}`;
   switch (kind) {
@@ -30,9 +31,9 @@ function titleOf({ kind, leaf, values }: OpenedEntry): string {
       return shop === undefined ? `Countersignature${of}` : `Countersigned by ${shop}`;
     }
     case 'key':
-      return 'Key of a signer';
+      return name === undefined ? 'Key of a signer' : `Key of ${name}`;
     case 'signature':
-      return `Signature${of}`;
+      return name === undefined ? `Signature${of}` : `Entry ${leaf.refersTo?.seq ?? ''} signed by ${name}`;
     case 'handover':
       return 'Handover';
     default:

@@ -110,6 +110,10 @@ export const routes: Record<string, RouteReach> = {
     at: ({ machine }) => `/api/machines/${machine}/packets`,
     json: () => ({ purpose: 'For the service desk' }),
   },
+  'GET api/machines/[machine]/export/route.ts': {
+    who: ownerOnly,
+    at: ({ machine }) => `/api/machines/${machine}/export`,
+  },
   'GET api/packets/[packet]/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}` },
   'GET api/packets/[packet]/file/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}/file` },
   'GET api/garage/route.ts': { who: signedIn },
@@ -174,6 +178,15 @@ export const routes: Record<string, RouteReach> = {
   },
 };
 
+/** Of the form that a browser sends, and signed by nobody. */
+const noSignature = JSON.stringify({
+  id: 'AAAA',
+  rawId: 'AAAA',
+  type: 'public-key',
+  response: { clientDataJSON: 'AAAA', authenticatorData: 'AAAA', signature: 'AAAA' },
+  clientExtensionResults: {},
+});
+
 /** By file under app/ and exported name. */
 export const actions: Record<string, ActionReach> = {
   '(public)/sign-up/actions.ts signUpAction': { who: everybody, on: () => '/sign-up' },
@@ -235,6 +248,29 @@ export const actions: Record<string, ActionReach> = {
   },
   '(rider)/account/actions.ts changeAccountAction': { who: signedIn, on: () => '/account' },
   '(rider)/account/actions.ts changePasswordAction': { who: signedIn, on: () => '/account' },
+  '(rider)/account/passkey-actions.ts beginPasskeyAction': { who: signedIn, on: () => '/account' },
+  '(rider)/account/passkey-actions.ts addPasskeyAction': { who: signedIn, on: () => '/account' },
+  '(rider)/account/passkey-actions.ts removePasskeyAction': {
+    who: ownerOnly,
+    on: () => '/account',
+    form: ({ passkey }) => ({ passkey }),
+  },
+  '(rider)/machines/[machine]/record/[seq]/sign-actions.ts prepareSignatureAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/record/0`,
+    form: ({ machine }) => ({ machine, seq: '0' }),
+  },
+  // The answer is none, which only whoever was asked is told.
+  '(rider)/machines/[machine]/record/[seq]/sign-actions.ts signEntryAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/record/0`,
+    form: ({ challenge }) => ({ challenge, response: noSignature }),
+  },
+  'countersign/answer/[invitation]/actions.ts signCountersignatureAction': {
+    who: technicianOnly,
+    on: ({ invitation }) => `/countersign/answer/${invitation}`,
+    form: ({ invitation, shopChallenge }) => ({ invitation, challenge: shopChallenge, response: noSignature }),
+  },
   '(rider)/account/actions.ts endOneAction': { who: signedIn, on: () => '/account' },
   '(rider)/account/actions.ts endOthersAction': { who: signedIn, on: () => '/account' },
   '(steward)/steward/shops/actions.ts confirmShopAction': {

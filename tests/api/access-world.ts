@@ -4,7 +4,7 @@ import path from 'node:path';
 import { drafts, files, uploads, type DraftRow } from '@/db/models/drafts';
 import { shops } from '@/db/models/machines';
 import { relations, type PersonRow, type RelationRow } from '@/db/models/people';
-import { invitations, packets } from '@/db/models/proof';
+import { invitations, packets, passkeys } from '@/db/models/proof';
 import { findEntry } from '@/db/queries/entries';
 import { shelvesOf } from '@/db/queries/shelves';
 import { newSecretAddress } from '@/lib/auth/secret-address';
@@ -17,6 +17,8 @@ import { packetFile } from '@/lib/services/build-packet';
 import { createMachine } from '@/lib/services/create-machine';
 import { createViewingLink } from '@/lib/services/create-viewing-link';
 import { machineInput } from '@/lib/services/machine-input';
+import { keepChallenge } from '@/lib/services/passkey-challenge';
+import { countersignatureBody } from '@/tests/setup/sealed-record';
 import { makePerson } from '@/tests/setup/test-database';
 import type { Kind } from './access-list';
 
@@ -43,6 +45,10 @@ export interface AccessWorld {
   /** An invitation to the opening of the machine's record; everybody's browser came by its address. */
   invitation: string;
   invitationToken: string;
+  /** The owner's own key, which the test may remove; what the owner and the technician were asked to sign. */
+  passkey: string;
+  challenge: string;
+  shopChallenge: string;
   people: Record<Exclude<Kind, 'anonymous'>, PersonRow>;
 }
 
@@ -93,7 +99,21 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
   await sealPlate({ log, owner: people.owner, sha256: plate });
   await readyPacket(machine, people.owner.id);
 
+  const asked = { log, refersTo: { seq: 0, leafHash: (await findEntry(log, 0))!.leafHash } };
   return {
+    passkey: await ownKey(people.owner),
+    challenge: await keepChallenge({
+      personId: people.owner.id,
+      challenge: 'AAAA',
+      purpose: { for: 'signature', machine, ...asked },
+      minutes: 60,
+    }),
+    shopChallenge: await keepChallenge({
+      personId: people.technician.id,
+      challenge: 'AAAA',
+      purpose: { for: 'countersignature', invitation: invitation.id, shop, ...asked, body: countersignatureBody },
+      minutes: 60,
+    }),
     machine,
     shelf,
     shop,
@@ -111,6 +131,26 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
     invitationToken: invitation.token,
     people,
   };
+}
+
+/** Made for another host, so that no page offers to sign with it. */
+async function ownKey(person: PersonRow): Promise<string> {
+  const id = randomUUID();
+  await passkeys.insert({
+    id,
+    personId: person.id,
+    credentialId: 'AAAA',
+    publicKey: 'AAAA',
+    coseKey: 'AAAA',
+    signCount: 0,
+    rpId: 'records.old.example',
+    name: 'Phone',
+    transports: '[]',
+    createdAt: now().toISOString(),
+    lastUsedAt: null,
+    revokedAt: null,
+  });
+  return id;
 }
 
 async function relate(

@@ -4,14 +4,18 @@ import { AccountForm } from '@/components/account/account-form';
 import { ChangePasswordForm } from '@/components/account/password-forms';
 import { SessionList } from '@/components/account/session-list';
 import { SignOutForm } from '@/components/account/sign-out-form';
+import { PasskeyPart } from '@/components/passkey/passkey-part';
 import { Sheet } from '@/components/ui/box';
 import { PageHead } from '@/components/ui/page-head';
 import { requireSession } from '@/lib/auth/session';
 import { formatInstant } from '@/lib/domain/instants';
 import { readSessions } from '@/lib/services/end-session';
+import { listPasskeys } from '@/lib/services/list-passkeys';
+import { passkeySite } from '@/lib/services/passkey-site';
 import { signOutAction } from '@/app/(public)/sign-in/actions';
 import { changeAccountAction, changePasswordAction, endOneAction, endOthersAction } from './actions';
 import { timeZones, unitOptions } from './choices';
+import { addPasskeyAction, beginPasskeyAction, removePasskeyAction } from './passkey-actions';
 
 export const dynamic = 'force-dynamic';
 export const metadata: Metadata = { title: 'Account' };
@@ -19,7 +23,7 @@ export const metadata: Metadata = { title: 'Account' };
 export default async function AccountPage() {
   const { person, session } = await requireSession();
   const { name, email, distanceUnit, volumeUnit, torqueUnit, timeZone } = person;
-  const sessions = await readSessions({ person, current: session.id });
+  const [sessions, keys] = await Promise.all([readSessions({ person, current: session.id }), listPasskeys({ person })]);
   const words = (instant: string) => formatInstant(instant, timeZone);
   return (
     <>
@@ -35,6 +39,20 @@ export default async function AccountPage() {
         </Part>
         <Part title="Password">
           <ChangePasswordForm action={changePasswordAction} email={email} />
+        </Part>
+        <Part title="Your own key" id="own-key">
+          <PasskeyPart
+            keys={keys.map(({ createdAt, lastUsedAt, ...rest }) => ({
+              ...rest,
+              added: words(createdAt),
+              used: lastUsedAt === null ? null : words(lastUsedAt),
+            }))}
+            refusal={passkeySite().refusal}
+            begin={beginPasskeyAction}
+            finish={addPasskeyAction}
+            remove={removePasskeyAction}
+            email={email}
+          />
         </Part>
         <Part title="Where you are signed in">
           <SessionList
@@ -52,9 +70,9 @@ export default async function AccountPage() {
   );
 }
 
-function Part({ title, children }: { title: string; children: ReactNode }) {
+function Part({ title, id, children }: { title: string; id?: string; children: ReactNode }) {
   return (
-    <section>
+    <section id={id}>
       <h2 className="mb-3">{title}</h2>
       <Sheet className="p-4 sm:p-6">{children}</Sheet>
     </section>

@@ -13,8 +13,11 @@ import { currentPerson } from '@/lib/auth/session';
 import { env } from '@/lib/env';
 import { WitnessmarkError } from '@/lib/errors';
 import { paths } from '@/lib/paths';
+import { usablePasskeys } from '@/lib/services/list-passkeys';
+import { passkeySite } from '@/lib/services/passkey-site';
 import { readInvitedEntry } from '@/lib/services/read-invited-entry';
-import { answerAction, nameShopAction } from './actions';
+import { addPasskeyAction, beginPasskeyAction } from '@/app/(rider)/account/passkey-actions';
+import { answerAction, nameShopAction, signCountersignatureAction } from './actions';
 
 export const dynamic = 'force-dynamic';
 export const metadata: Metadata = {
@@ -33,6 +36,7 @@ export default async function AnswerPage({ params }: { params: Promise<{ invitat
   });
   if (invited === null) redirect(paths.invitationEnded(id));
   const { record, entry, timesInjected } = invited;
+  const keys = person === null ? [] : await usablePasskeys({ personId: person.id });
   const file = (sha256: string, kind: 'thumb' | 'plate' | 'copy') => paths.invitationFile(id, sha256, kind);
   return (
     <ReaderShell
@@ -47,6 +51,14 @@ export default async function AnswerPage({ params }: { params: Promise<{ invitat
         signInHref={signInPath(paths.invitationAnswer(id))}
         nameShop={nameShopAction}
         answer={answerAction}
+        ownKey={{
+          hasKey: keys.length > 0,
+          refusal: passkeySite().refusal,
+          email: person?.email ?? '',
+          begin: beginPasskeyAction,
+          finish: addPasskeyAction,
+          sign: signCountersignatureAction,
+        }}
       />
     </ReaderShell>
   );

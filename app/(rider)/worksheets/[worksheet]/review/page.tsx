@@ -9,6 +9,7 @@ import { UserText } from '@/components/ui/user-text';
 import { orNotFound } from '@/lib/auth/guard';
 import { requirePerson } from '@/lib/auth/session';
 import { paths } from '@/lib/paths';
+import { usablePasskeys } from '@/lib/services/list-passkeys';
 import { reviewWorksheet } from '@/lib/services/review-worksheet';
 import { seal } from './actions';
 
@@ -27,6 +28,7 @@ export default async function ReviewPage({ params }: { params: Promise<{ workshe
   const review = await orNotFound(reviewWorksheet({ person, draftId: worksheet }));
   const { machine, composed, problems, nextSeq } = review;
   if (review.sealedAs !== null || composed === null) redirect(paths.entry(machine.id, review.sealedAs ?? 0));
+  const hasKey = (await usablePasskeys({ personId: person.id })).length > 0;
   const gaps = composed.body?.checks.filter(({ result }) => result === 'gap').length ?? 0;
   const canSeal = composed.body !== undefined && problems.length === 0;
   return (
@@ -58,7 +60,14 @@ export default async function ReviewPage({ params }: { params: Promise<{ workshe
         </>
       )}
       {review.mayISeal ? (
-        <SealForm action={seal} worksheet={worksheet} reviewed={composed.fingerprint} isReady={canSeal} seq={nextSeq} />
+        <SealForm
+          action={seal}
+          worksheet={worksheet}
+          reviewed={composed.fingerprint}
+          isReady={canSeal}
+          seq={nextSeq}
+          hasKey={hasKey}
+        />
       ) : (
         <p className="tag mt-6">Only an owner of the machine can seal. Ask them to open this page.</p>
       )}
