@@ -430,7 +430,7 @@ def check_pages(data, certificate, folder):
         return path
 
     outcome = subprocess.run(
-        ["openssl", "cms", "-verify", "-binary", "-cades", "-inform", "DER", "-in", put("pages.cms", signature[:size]),
+        ["openssl", "cms", "-verify", "-binary", "-inform", "DER", "-in", put("pages.cms", signature[:size]),
          "-content", put("pages.signed", data[:start] + data[end:]), "-noverify", "-signer", put("pages.pem"), "-out", os.devnull],
         capture_output=True, text=True)
     if outcome.returncode != 0:

@@ -16,6 +16,7 @@ import type {
 import { nameFiles, type PacketContent, type PacketFile } from '@/lib/packet/content';
 import { readJpegSize } from '@/lib/packet/layer/jpeg';
 import type { EntryView, LogView, PurchaseView, RecordView, TokenView } from '@/lib/services/record-view';
+import { newCertificate, signerWith } from '../setup/signed-packet';
 
 const zone = 'America/Denver';
 const shelfLog = '2d1f6c1e-58c4-4c1f-9a55-0e9a7a0f4b11';
@@ -262,5 +263,6 @@ export async function packetFixture(): Promise<PacketContent> {
     record, recordJson: JSON.stringify({ format: 'witnessmark/bundle/1', number: 'WM-7Q4K-0031' }), number: 'WM-7Q4K-0031',
     purpose: 'a warranty claim on the gearbox', madeAt: '2026-04-12T16:14:00.000Z', zone, owner: 'Imke Vandersloot', scope: usualScope,
     link: 'http://localhost:3000/v/Zk3mQ8rT1yUvWx5bC7dE9g', site: 'http://localhost:3000', files,
+    signer: signerWith(newCertificate('demo.example')),
   }; // prettier-ignore
 }

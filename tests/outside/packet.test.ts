@@ -6,6 +6,7 @@ import { promisify } from 'node:util';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import type { PacketContent } from '@/lib/packet/content';
 import { drawPacket, type DrawnPacket } from '@/lib/packet/draw-packet';
+import { signedDigest } from '../setup/signed-packet';
 import { packetFixture, sha256, wordsInEveryScript } from './packet-fixture';
 
 // Judges: qpdf (structure), poppler (fonts, text, attachments, pictures), mupdf (a second renderer), zbar (QR).
@@ -209,9 +210,10 @@ describe('a packet', () => {
     expect(stdout).toMatch(/\/ID \[/);
   });
 
-  it('comes out the same, byte for byte, from the same record', async () => {
-    const again = await draw(path.join(folder, 'again.pdf'), content);
-    expect(again.sha256).toBe(drawn.sha256);
+  it('comes out the same from the same record, byte for byte but for the signature', async () => {
+    const again = path.join(folder, 'again.pdf');
+    await draw(again, content);
+    expect(signedDigest(await readFile(again))).toEqual(signedDigest(await readFile(file)));
   });
 });
 
