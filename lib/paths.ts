@@ -16,6 +16,11 @@ export const paths = {
   forgotPassword: '/forgot-password',
   resetPassword: (token: string) => `/reset-password/${token}`,
   account: '/account',
+  /** Records from elsewhere: kept to be read, never continued. */
+  imports: '/imports',
+  import: (id: string) => `/imports/${id}`,
+  /** What was found in a file that waits for a decision. */
+  stagedImport: (id: string) => `/imports/incoming/${id}`,
 
   /** Sends a rider to the bench of their first machine, or to set one up. */
   start: '/start',
@@ -29,6 +34,7 @@ export const paths = {
   inviteShop: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/countersign`,
   schedule: (machine: string) => `/machines/${machine}/schedule`,
   specSheet: (machine: string) => `/machines/${machine}/spec-sheet`,
+  export: (machine: string) => `/machines/${machine}/export`,
   machineSettings: (machine: string) => `/machines/${machine}/settings`,
   proof: (machine: string) => `/machines/${machine}/proof`,
   /** What a reader would see, before anything is shared; the choice stands in its query. */
@@ -84,12 +90,19 @@ export const paths = {
     packet: (packet: string) => `/api/packets/${packet}`,
     packetFile: (packet: string) => `/api/packets/${packet}/file`,
     record: (machine: string) => `/api/machines/${machine}/record.json`,
+    /** The whole record as a ZIP, with the original files or with the shared copies alone. */
+    export: (machine: string, files: 'originals' | 'copies') => `/api/machines/${machine}/export?files=${files}`,
+    imports: '/api/imports',
+    importFile: (id: string) => `/api/imports/${id}/file`,
+    importPicture: (id: string, sha256: string, kind: 'thumb' | 'plate') =>
+      `/api/imports/${id}/files/${sha256}/${kind}`,
     logKeys: '/api/log-keys',
     checkpoint: (log: string) => `/api/logs/${log}/checkpoint`,
     timeStamp: '/api/time-stamp',
     timeStampRoot: '/api/time-stamp/root.pem',
     /** The root behind the certificate that signs packets. */
     packetRoot: '/api/packet-certificate/root.pem',
+    recordCheck: '/api/steward/record-check',
     health: '/api/health',
   },
 } as const;

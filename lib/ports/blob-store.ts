@@ -149,7 +149,8 @@ async function exists(file: string): Promise<boolean> {
   );
 }
 
-function asStorageError(error: unknown): unknown {
+/** A full disk as a refusal in words; any other error as it is. */
+export function asStorageError(error: unknown): unknown {
   const code = (error as NodeJS.ErrnoException).code;
   if (code !== 'ENOSPC' && code !== 'EDQUOT') return error;
   return new WitnessmarkError('storage-full', 'This server has no room left. Nothing was kept; tell the steward.', {

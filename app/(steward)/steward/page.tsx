@@ -1,5 +1,6 @@
 import type { Metadata } from 'next';
 import { pageNumber, pagerOf } from '@/components/account/paging';
+import { StorePart } from '@/components/steward/store-part';
 import { Box, Boxes } from '@/components/ui/box';
 import { LinkButton } from '@/components/ui/button';
 import { PageHead } from '@/components/ui/page-head';
@@ -12,6 +13,8 @@ import { formatInstant } from '@/lib/domain/instants';
 import { env } from '@/lib/env';
 import { paths } from '@/lib/paths';
 import { readAccounts, readShops } from '@/lib/services/read-installation';
+import { readStore, type StoreView } from '@/lib/services/read-store';
+import { checkRecordsAction } from './actions';
 
 export const dynamic = 'force-dynamic';
 export const metadata: Metadata = { title: 'Installation' };
@@ -19,18 +22,26 @@ export const metadata: Metadata = { title: 'Installation' };
 const perPage = 25;
 type Props = { searchParams: Promise<Record<string, string | string[] | undefined>> };
 
+function newsOf({ keyTrouble, rollbacks, check }: StoreView): string {
+  if (keyTrouble !== null) return 'Nothing can be sealed on this installation';
+  if (rollbacks.length > 0) return 'The database is older than what was given out';
+  if ((check.last?.problemCount ?? 0) > 0) return 'The last check found records that are not as sealed';
+  return 'Installation';
+}
+
 export default async function StewardPage({ searchParams }: Props) {
   const person = await requirePerson();
   await authorise({ person, action: 'steward' });
   const page = pageNumber((await searchParams).page);
-  const [{ people, total }, shops] = await Promise.all([
+  const [{ people, total }, shops, store] = await Promise.all([
     readAccounts({ page, perPage }),
     readShops({ page: 1, perPage: 1 }),
+    readStore({ person }),
   ]);
   return (
     <>
       <PageHead
-        title="Installation"
+        title={newsOf(store)}
         note={`${env.origin}, reached at ${env.url}`}
         actions={
           <>
@@ -48,6 +59,7 @@ export default async function StewardPage({ searchParams }: Props) {
           {env.smtp === undefined ? 'Kept as files, not sent' : 'Sent by SMTP'}
         </Box>
       </Boxes>
+      <StorePart store={store} zone={person.timeZone} checkRecords={checkRecordsAction} />
       <Table
         caption="Accounts"
         columns={[
