@@ -16,13 +16,13 @@ export function drawPageSignature(sheet: Sheet, { signer, site }: PacketContent)
       'answered while the file was written, the signature carries its stamp.',
   );
   sheet.gap(3);
+  drawBoxes(sheet, 1, [
+    { label: 'Fingerprint of the packet certificate (SHA-256)', value: inFours(signer.certificate), kind: 'hash' },
+  ]);
+  sheet.gap(4);
   sheet.paragraph(
     'A PDF reader finds the same signature, and will call its maker an unknown identity unless you have it trust this ' +
       `installation’s packet root, ${site}${paths.api.packetRoot}. Anybody can make a certificate of any name, so ` +
       'compare the fingerprint. What counts is record.json.',
   );
-  sheet.gap(4);
-  drawBoxes(sheet, 1, [
-    { label: 'Fingerprint of the packet certificate (SHA-256)', value: inFours(signer.certificate), kind: 'hash' },
-  ]);
 }
