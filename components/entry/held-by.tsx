@@ -14,12 +14,24 @@ export interface HeldByProps {
   erasures?: ErasureView[] | undefined;
   /** Leads to the entry that records an erasure. */
   entry?: ((seq: number) => string | undefined) | undefined;
+  /** A record has entries, a shelf's log has lines. */
+  what?: 'entry' | 'line';
   log: LogView;
   zone: string;
 }
 
 /** The hashes that hold an entry in its log, and who stamped it. */
-export function HeldBy({ leafHash, previous, tokens, withheld, erasures = [], entry, log, zone }: HeldByProps) {
+export function HeldBy({
+  leafHash,
+  previous,
+  tokens,
+  withheld,
+  erasures = [],
+  entry,
+  what = 'entry',
+  log,
+  zone,
+}: HeldByProps) {
   const stamps = tokens.map(({ authority, genTime, isOwnAuthority, sha256 }): DefinitionItem => ({
     term: 'Time stamp',
     detail: (
@@ -61,15 +73,20 @@ export function HeldBy({ leafHash, previous, tokens, withheld, erasures = [], en
           },
           ...(stamps.length > 0 ? stamps : [{ term: 'Time stamp', detail: 'Still to come', tone: 'warn' as const }]),
           ...(withheld.length === 0 ? [] : [{ term: 'Withheld here', detail: withheld.join(', ') }]),
-          ...erasures.map((one) => erasedItem(one, zone, entry?.(one.recordedSeq))),
+          ...erasures.map((one) =>
+            erasedItem(one, zone, { name: `${what} ${one.recordedSeq}`, href: entry?.(one.recordedSeq) }),
+          ),
         ]}
       />
     </section>
   );
 }
 
-function erasedItem({ name, erasedAt, recordedSeq }: ErasureView, zone: string, href?: string): DefinitionItem {
-  const where = `entry ${recordedSeq}`;
+function erasedItem(
+  { name, erasedAt }: ErasureView,
+  zone: string,
+  { name: where, href }: { name: string; href: string | undefined },
+): DefinitionItem {
   return {
     term: `Erased: ${partWords[name]}`,
     tone: 'warn',

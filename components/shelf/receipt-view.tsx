@@ -9,7 +9,7 @@ import { formatLocalMoment } from '@/lib/domain/instants';
 import { formatMoney, isCurrency } from '@/lib/domain/money';
 import { lotAmount } from '@/lib/domain/shelf';
 import { formatAmount } from '@/lib/domain/units';
-import type { PurchaseLine } from '@/lib/evidence/format';
+import type { PartName, PurchaseLine } from '@/lib/evidence/format';
 import { paths } from '@/lib/paths';
 import type { ShelfLot } from '@/lib/services/read-shelf-lots';
 import type { LotUse } from '@/lib/services/read-shelf-page';
@@ -36,20 +36,24 @@ export function ReceiptView({ purchase, shelf, lots, uses, zone }: ReceiptViewPr
           label="Supplier"
           note={supplier?.address === undefined ? undefined : <UserText>{supplier.address}</UserText>}
         >
-          <UserText>{supplier?.name ?? 'Not stated'}</UserText>
+          <UserText>{supplier?.name ?? absentWords(purchase, 'supplier')}</UserText>
         </Box>
         <Box label="Bought" note="As the receipt says">
           {formatLocalMoment(body.boughtOn)}
         </Box>
         <Box label="Total" isMeasure>
-          {totalOf(purchase) ?? 'Not stated'}
+          {totalOf(purchase) ?? absentWords(purchase, 'prices')}
         </Box>
       </Boxes>
       <div className="-mt-px">
         <ThreeTimes sealedAt={sealedAt} tokens={tokens} zone={zone} />
       </div>
       {attachments.length === 0 ? (
-        <p className="tag mt-4">No picture or paper is attached.</p>
+        <p className="tag mt-4">
+          {absentWords(purchase, 'attachments') === 'Erased'
+            ? 'Its pictures and papers were erased.'
+            : 'No picture or paper is attached.'}
+        </p>
       ) : (
         <div className="mt-6">
           <Plates
@@ -131,9 +135,13 @@ function boughtWords(line: PurchaseLine): string {
   return containers === 1 ? formatAmount(containerSize) : `${containers} × ${formatAmount(containerSize)}`;
 }
 
-function priceOf({ prices }: PurchaseView, line: number): string {
+function priceOf({ prices, erasures }: PurchaseView, line: number): string {
   const price = prices?.lines.find((one) => one.line === line)?.price;
   return price !== undefined && prices && isCurrency(prices.currency)
     ? formatMoney(price, prices.currency)
-    : 'Not stated';
+    : absentWords({ erasures }, 'prices');
+}
+
+function absentWords({ erasures }: Pick<PurchaseView, 'erasures'>, part: PartName): string {
+  return erasures?.some(({ name }) => name === part) === true ? 'Erased' : 'Not stated';
 }

@@ -22,9 +22,21 @@ const kindWords: Partial<Record<ShelfEntryView['kind'], string>> = {
 };
 
 export function shelfEntryTitle({ kind, purchase, refersTo }: ShelfEntryView): string {
-  if (purchase !== undefined) return purchase.supplier?.name ?? 'Receipt, supplier withheld';
-  const of = refersTo ? ` of receipt ${refersTo.seq}` : '';
+  if (purchase !== undefined) return purchase.supplier?.name ?? withoutSupplier(purchase);
+  const of = refersTo ? ` of line ${refersTo.seq}` : '';
   return `${kindWords[kind] ?? kind}${of}`;
+}
+
+function withoutSupplier({ erasures, withheld }: PurchaseView): string {
+  if (erasures?.some(({ name }) => name === 'supplier')) return 'Receipt, supplier erased';
+  return withheld?.includes('supplier') ? 'Receipt, supplier withheld' : 'Receipt, supplier not stated';
+}
+
+/** What a line that is no purchase says: why something was disposed of, corrected or struck. */
+export function saidOf({ body }: ShelfEntryView): string {
+  const said = (body ?? {}) as { reason?: unknown; why?: unknown };
+  const text = said.reason ?? said.why;
+  return typeof text === 'string' ? text : '';
 }
 
 export function totalOf({ prices }: PurchaseView): string | undefined {
@@ -33,14 +45,15 @@ export function totalOf({ prices }: PurchaseView): string | undefined {
     : undefined;
 }
 
-export function shelfEntryState({ purchase, tokens }: ShelfEntryView): 'struck' | 'waiting' | 'sealed' {
-  if (purchase?.struckBy) return 'struck';
+export function shelfEntryState({ struckBy, tokens }: ShelfEntryView): 'struck' | 'waiting' | 'sealed' {
+  if (struckBy) return 'struck';
   return tokens.length === 0 ? 'waiting' : 'sealed';
 }
 
 /** One line of a shelf's log: a receipt with its pictures, or something quieter. */
 export function ShelfLine({ entry, shelf, zone }: ShelfLineProps) {
-  const { seq, purchase, leafHash, sealedAt } = entry;
+  const { seq, purchase, leafHash, sealedAt, struckBy } = entry;
+  const said = purchase === undefined ? saidOf(entry) : productsOf(purchase);
   const on = purchase?.body.boughtOn.date ?? localDateOf(sealedAt, zone);
   const state = shelfEntryState(entry);
   return (
@@ -51,7 +64,15 @@ export function ShelfLine({ entry, shelf, zone }: ShelfLineProps) {
       dateTime={on}
       odometer={purchase && totalOf(purchase)}
       title={<UserText>{shelfEntryTitle(entry)}</UserText>}
-      detail={purchase && <UserText>{productsOf(purchase)}</UserText>}
+      detail={
+        struckBy ? (
+          <>
+            Struck by line {struckBy.seq}: <UserText>{struckBy.reason}</UserText>
+          </>
+        ) : (
+          <UserText>{said}</UserText>
+        )
+      }
       thumbs={purchase?.attachments.flatMap((one) => thumbOf(one, (sha, kind) => paths.api.file(sha, kind, shelf)))}
       mark={{ state, leafHash }}
       words={state === 'waiting' ? 'stamp to come' : state}

@@ -14,6 +14,7 @@ import type { LogView, ShelfEntryView } from './record-view';
 export interface ShelfPage {
   id: string;
   name: string;
+  relation: 'owner' | 'helper';
   log: LogView;
   /** Oldest first, used-up ones too. */
   lots: ShelfLot[];
@@ -31,9 +32,10 @@ export interface LotUse extends Amount {
 
 /** A shelf with its lots and its log, for one of its people. */
 export async function readShelfPage(options: { person: PersonRow; shelf: string }): Promise<ShelfPage> {
-  await authorise({ person: options.person, action: 'read-shelf', shelf: options.shelf });
+  const standing = await authorise({ person: options.person, action: 'read-shelf', shelf: options.shelf });
+  const relation = standing.shelf === 'owner' ? 'owner' : 'helper';
   const { log, name, entries } = await readShelf({ shelfId: options.shelf });
-  return { id: options.shelf, name, log, lots: await lotsOfLog(log.id), entries };
+  return { id: options.shelf, name, relation, log, lots: await lotsOfLog(log.id), entries };
 }
 
 /** One line of a shelf's log with where its lots were used. Throws `not-found` when the shelf has no such line. */

@@ -1,16 +1,19 @@
 import type { Metadata } from 'next';
 import { HeldBy } from '@/components/entry/held-by';
+import { MoreAbout } from '@/components/entry/more-about';
+import { OtherEntry } from '@/components/entry/other-entry';
+import { StruckNotice } from '@/components/entry/struck-notice';
 import { ThreeTimes } from '@/components/entry/three-times';
 import { WitnessMark } from '@/components/mark/witness-mark';
 import { ReceiptView } from '@/components/shelf/receipt-view';
 import { shelfEntryState, shelfEntryTitle } from '@/components/shelf/shelf-line';
 import { LinkButton } from '@/components/ui/button';
-import { Notice } from '@/components/ui/notice';
 import { PageHead } from '@/components/ui/page-head';
 import { UserText } from '@/components/ui/user-text';
 import { orNotFound } from '@/lib/auth/guard';
 import { requirePerson } from '@/lib/auth/session';
 import { formatInstant } from '@/lib/domain/instants';
+import { mayBeStruck } from '@/lib/domain/standing';
 import { paths } from '@/lib/paths';
 import { readShelfEntry } from '@/lib/services/read-shelf-page';
 
@@ -25,13 +28,14 @@ export async function generateMetadata({ params }: ShelfEntryPageProps): Promise
 export default async function ShelfEntryPage({ params }: ShelfEntryPageProps) {
   const { shelf: id, seq } = await params;
   const person = await requirePerson();
-  const { entry, log, lots, uses, name } = await orNotFound(
+  const { entry, log, lots, uses, name, relation } = await orNotFound(
     readShelfEntry({ person, shelf: id, seq: /^\d+$/.test(seq) ? Number(seq) : -1 }),
   );
-  const { purchase, leafHash, sealedAt, tokens } = entry;
+  const { purchase, leafHash, sealedAt, tokens, struckBy } = entry;
   const zone = person.timeZone;
   const state = shelfEntryState(entry);
-  const struckBy = purchase?.struckBy;
+  const lineHref = (line: number) => paths.shelfEntry(id, line);
+  const canStrike = relation === 'owner' && !struckBy && mayBeStruck(entry.kind);
   return (
     <article>
       <PageHead
@@ -39,17 +43,21 @@ export default async function ShelfEntryPage({ params }: ShelfEntryPageProps) {
         label={`${purchase === undefined ? 'Line' : 'Receipt'} ${entry.seq}, sealed ${formatInstant(sealedAt, zone)}`}
         title={<UserText>{shelfEntryTitle(entry)}</UserText>}
         note={<UserText>{`On ${name}.`}</UserText>}
-        actions={<LinkButton href={paths.shelf(id)}>Shelf</LinkButton>}
+        actions={
+          <>
+            <LinkButton href={paths.shelf(id)}>Shelf</LinkButton>
+            {canStrike ? <LinkButton href={paths.shelfStrike(id, entry.seq)}>Strike</LinkButton> : null}
+          </>
+        }
       />
-      {struckBy ? (
-        <div className="mb-4">
-          <Notice tone="gap" title={`Struck by line ${struckBy.seq} on ${formatInstant(struckBy.sealedAt, zone)}`}>
-            <UserText isMultiline>{struckBy.reason}</UserText>
-          </Notice>
-        </div>
-      ) : null}
+      {struckBy ? <StruckNotice struck={struckBy} zone={zone} href={lineHref(struckBy.seq)} what="line" /> : null}
       {purchase === undefined ? (
-        <ThreeTimes sealedAt={sealedAt} tokens={tokens} zone={zone} />
+        <>
+          <ThreeTimes sealedAt={sealedAt} tokens={tokens} zone={zone} />
+          <div className="mt-4">
+            <OtherEntry body={entry.body} />
+          </div>
+        </>
       ) : (
         <ReceiptView
           purchase={purchase}
@@ -59,7 +67,19 @@ export default async function ShelfEntryPage({ params }: ShelfEntryPageProps) {
           zone={zone}
         />
       )}
-      <HeldBy leafHash={leafHash} tokens={tokens} withheld={purchase?.withheld ?? []} log={log} zone={zone} />
+      <HeldBy
+        leafHash={leafHash}
+        tokens={tokens}
+        withheld={entry.withheld ?? []}
+        erasures={entry.erasures}
+        entry={lineHref}
+        what="line"
+        log={log}
+        zone={zone}
+      />
+      {relation === 'owner' ? (
+        <MoreAbout eraseHref={paths.shelfErase(id, entry.seq)} name={`line ${entry.seq}`} />
+      ) : null}
     </article>
   );
 }
