@@ -7,7 +7,9 @@ import { appointSteward } from '@/lib/services/appoint-steward';
 import { resumePackets } from '@/lib/services/build-packet';
 import { keyTrouble, publishedKeys } from '@/lib/services/log-keys';
 import { noticeRollbacks } from '@/lib/services/notice-rollback';
+import { packetSigningTrouble } from '@/lib/services/packet-signing';
 import { prepareSigningKey } from '@/lib/services/prepare-signing-key';
+import { finishAllErasing } from '@/lib/services/finish-erasing';
 import { kickStamping } from '@/lib/services/stamp-checkpoints';
 
 const stampingEveryMilliseconds = 60_000;
@@ -28,7 +30,7 @@ const beforeFirstRequest: (() => Promise<unknown>)[] = [
 ];
 
 /** What an earlier run left unfinished, taken up again in the background; none of it may hold up or stop the start. */
-const resumed: (() => void | Promise<void>)[] = [kickStamping, resumePackets];
+const resumed: (() => void | Promise<void>)[] = [kickStamping, resumePackets, finishAllErasing];
 
 /** Runs once per server. Safe to call again: later calls wait for the first. */
 export function startServerWork(): Promise<void> {
@@ -70,6 +72,8 @@ async function reportKeys(): Promise<void> {
   } catch (error) {
     console.error('No time stamps of this installation’s own:', error instanceof Error ? error.message : error);
   }
+  const unsigned = packetSigningTrouble();
+  if (unsigned !== null) console.error(`No packet can be built: ${unsigned}`);
 }
 
 async function reportRollbacks(): Promise<void> {
