@@ -31,13 +31,14 @@ export async function riderWithMachine(): Promise<{ person: PersonRow; machine: 
 /** A draft with these fields, as a device would send them. */
 export async function draftWith(options: {
   person: PersonRow;
-  kind: 'worksheet' | 'receipt';
+  kind: 'worksheet' | 'receipt' | 'addendum';
   subject: string;
+  refersToSeq?: number;
   fields: Record<string, string>;
 }): Promise<string> {
-  const { person, kind, subject, fields } = options;
+  const { person, kind, subject, fields, refersToSeq } = options;
   const id = randomUUID();
-  await startDraft({ person, input: { id, kind, subject } });
+  await startDraft({ person, input: { id, kind, subject, refersToSeq } });
   await typeInto({ person, draft: id, fields });
   return id;
 }
