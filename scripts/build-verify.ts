@@ -2,9 +2,11 @@ import { writeFile } from 'node:fs/promises';
 import path from 'node:path';
 import { fileURLToPath } from 'node:url';
 import { build } from 'esbuild';
+import { buildVerifyPage } from '@/scripts/verify-page';
 
 const root = path.resolve(path.dirname(fileURLToPath(import.meta.url)), '..');
 export const verifyFile = path.join(root, 'scripts', 'verify.mjs');
+export const verifyPageFile = path.join(root, 'scripts', 'verify.html');
 
 /** The one-file verifier: `lib/evidence` and its command, the same bytes on every machine. */
 export async function buildVerify(): Promise<string> {
@@ -30,6 +32,10 @@ export async function buildVerify(): Promise<string> {
   return output.text;
 }
 
+/** The page that checks, as one file; the same bytes on every machine. */
+export const buildPage = (): Promise<string> => buildVerifyPage(root);
+
 if (process.argv[1] !== undefined && path.resolve(process.argv[1]) === fileURLToPath(import.meta.url)) {
   await writeFile(verifyFile, await buildVerify(), { mode: 0o755 });
+  await writeFile(verifyPageFile, await buildPage());
 }

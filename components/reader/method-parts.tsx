@@ -66,23 +66,29 @@ const commands = [
   { what: 'A packet or a record', command: 'node verify.mjs FILE' },
   { what: 'With a key you trust, or its fingerprint', command: 'node verify.mjs FILE --key KEY' },
   { what: 'Against an older file', command: 'node verify.mjs FILE --against OLDER' },
+  { what: 'With roots of time stamps that you trust', command: 'node verify.mjs FILE --tsa-roots PEM' },
   { what: 'With the pictures beside it', command: 'node verify.mjs record.json --files FOLDER' },
   { what: 'For another program', command: 'node verify.mjs FILE --json' },
 ];
 
-/** The one-file check: where to get it, how to know it, how to run it. */
-export function VerifierPart({ sha256 }: { sha256: string }) {
+/** Both forms of the check in one file: where to get them, how to know them, how to run them. */
+export function VerifierPart({ program, page }: { program: string; page: string }) {
   return (
     <>
-      <p>
+      <p className="flex flex-wrap gap-x-8">
+        <a href={paths.verifyPage} download="verify.html" className="link inline-flex min-h-11 items-center">
+          Download verify.html
+        </a>
         <a href={paths.verifyProgram} download="verify.mjs" className="link inline-flex min-h-11 items-center">
           Download verify.mjs
         </a>
       </p>
       <Definition
-        label="The one-file check"
+        label="The check as one file"
         items={[
-          { term: 'SHA-256 of verify.mjs', detail: <Hash value={sha256} what="SHA-256 of verify.mjs" /> },
+          { term: 'SHA-256 of verify.html', detail: <Hash value={page} what="SHA-256 of verify.html" /> },
+          { term: 'To run it', detail: 'Open the saved file in a browser. It works without a connection.' },
+          { term: 'SHA-256 of verify.mjs', detail: <Hash value={program} what="SHA-256 of verify.mjs" /> },
           ...commands.map(({ what, command }) => ({
             term: what,
             detail: <code className="font-mono text-sm break-all">{command}</code>,

@@ -3,9 +3,14 @@ import { createHash } from 'node:crypto';
 import { readFile } from 'node:fs/promises';
 import path from 'node:path';
 
-/** The one-file check that readers run on their own computer, and the SHA-256 by which they know it. */
-export async function readVerifier(): Promise<{ bytes: Buffer<ArrayBuffer>; sha256: string }> {
-  const file = path.join(/* turbopackIgnore: true */ process.cwd(), 'scripts', 'verify.mjs');
+/** What a reader checks with on their own computer: a program for a terminal, or a page that opens from disk. */
+export type VerifierFile = 'verify.mjs' | 'verify.html';
+
+/** The check as one file, and the SHA-256 by which readers know it: of the very bytes that are handed out. */
+export async function readVerifier(
+  name: VerifierFile = 'verify.mjs',
+): Promise<{ bytes: Buffer<ArrayBuffer>; sha256: string }> {
+  const file = path.join(/* turbopackIgnore: true */ process.cwd(), 'scripts', name);
   const bytes = await readFile(file);
   return { bytes, sha256: createHash('sha256').update(bytes).digest('hex') };
 }

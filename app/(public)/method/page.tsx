@@ -13,7 +13,7 @@ export const dynamic = 'force-dynamic';
 export const metadata: Metadata = { title: 'How the record is kept and checked' };
 
 export default async function MethodPage() {
-  const { sha256 } = await readVerifier();
+  const [program, page] = await Promise.all([readVerifier('verify.mjs'), readVerifier('verify.html')]);
   return (
     <PublicShell demo={env.isDemo ? 'demo' : 'none'} width="wide">
       <PageHead
@@ -71,10 +71,11 @@ export default async function MethodPage() {
           <Link href={paths.verify} className="link">
             The page for checking
           </Link>{' '}
-          runs in your browser and sends nothing, but it is served from here. The program below is one file, needs
-          nothing but Node, and can come from anybody you trust: compare its SHA-256.
+          runs in your browser and sends nothing, but it is served from here, by the installation that may be the one
+          being checked. The same check is below as one file, twice: a page that opens from your own disk and reaches no
+          network, and a program that needs nothing but Node. Each can come from anybody you trust: compare its SHA-256.
         </p>
-        <VerifierPart sha256={sha256} />
+        <VerifierPart program={program.sha256} page={page.sha256} />
       </MethodSection>
       <MethodSection id="keys" title="The keys of this installation">
         <p>
@@ -82,6 +83,14 @@ export default async function MethodPage() {
           it stands in every packet and in every mail about a record.
         </p>
         <KeyTable keys={publishedKeys()} />
+        <p>
+          The pages of a packet are signed too, with a certificate that its record.json names. A PDF reader calls the
+          maker of that signature unknown, unless it is told to trust{' '}
+          <a href={paths.api.packetRoot} className="link">
+            this installation’s packet root
+          </a>
+          .
+        </p>
       </MethodSection>
       <MethodSection id="format" title="The format">
         <p>

@@ -41,6 +41,7 @@ const looseOf = (value: unknown): Loose =>
   typeof value === 'object' && value !== null && !Array.isArray(value) ? (value as Loose) : {};
 const listOf = (value: unknown): Loose[] => (Array.isArray(value) ? value.map(looseOf) : []);
 const textOf = (value: unknown): string => (typeof value === 'string' ? value : '');
+const labelled = (label: string, text: string): string => (label === '' || text === '' ? text : `${label}: ${text}`);
 const joined = (...parts: string[]): string => parts.filter((part) => part !== '').join(', ');
 
 function amountOf({ amount, unit }: Loose): string {
@@ -149,9 +150,9 @@ function serviceWords(body: Loose): string[] {
   const done = listOf(body.tasks).flatMap((task) => [
     ...listOf(task.fills).map((fill) => {
       const amounts = listOf(fill.amounts).map(amountOf).join(' + ');
-      return `${textOf(fill.pointTitle)}: ${joined(amounts, textOf(fill.product), textOf(fill.grade))}`;
+      return labelled(textOf(fill.pointTitle), joined(amounts, textOf(fill.product), textOf(fill.grade)));
     }),
-    ...listOf(task.torques).map((torque) => `${textOf(torque.fastenerTitle)}: ${amountOf(torque)}`),
+    ...listOf(task.torques).map((torque) => labelled(textOf(torque.fastenerTitle), amountOf(torque))),
     ...listOf(task.parts).map((one) => joined(textOf(one.name), textOf(one.partNumber))),
   ]);
   const odometer = odometerOf(body.odometer);

@@ -1,48 +1,53 @@
 import { Definition } from '@/components/ui/definition';
+import { Notice } from '@/components/ui/notice';
 import type { Finding } from '@/lib/evidence/finding';
-import type { PublishedKeys } from './use-published-keys';
+import type { KeyVerdict } from './key-verdict';
 
-export interface KeyPartProps {
-  usedKey: Finding['key'];
-  published: PublishedKeys;
+/** Said first of all: the key is not the one it should be. */
+export function KeyAlarm({ alarm }: { alarm: NonNullable<KeyVerdict['alarm']> }) {
+  return (
+    <div className="border-4 border-gap" data-alarm>
+      <Notice tone="gap" title={<span className="text-xl leading-tight">{alarm.title}</span>}>
+        {alarm.sentences.map((sentence) => (
+          <p key={sentence} className="mt-1">
+            {sentence}
+          </p>
+        ))}
+      </Notice>
+    </div>
+  );
 }
 
-/** Which key it was checked with, and how far that key can be known from here. */
-export function KeyPart({ usedKey, published }: KeyPartProps) {
-  if (usedKey === null) return null;
-  const isPublished = published?.some(({ verifierKey }) => verifierKey === usedKey.verifierKey);
-  const comparison =
-    isPublished === undefined
-      ? 'The keys of the installation that serves this page could not be fetched, so they were not compared.'
-      : isPublished
-        ? 'The installation that serves this page publishes this same key. But this page comes from the installation being checked, so that alone proves nothing: compare the fingerprint with one from a mail about this record, an older packet, or the people who made it.'
-        : 'The installation that serves this page does not publish this key: the record comes from another installation, or somebody else made this file.';
+/** Whose key it is: three questions, answered apart. */
+export function KeyPart({ verdict, used }: { verdict: KeyVerdict; used: Finding['key'] }) {
+  const { rows, fileKey } = verdict;
   return (
-    <section className="mt-6">
-      <h3 className="mb-2">The key</h3>
+    <section aria-labelledby="whose-key" className="mt-6">
+      <h3 id="whose-key" className="mb-2">
+        Whose key?
+      </h3>
       <Definition
-        label="The key"
+        label="Whose key"
         items={[
-          {
-            term: 'Checked with',
-            detail: usedKey.source === 'reader' ? 'the key you gave' : 'the key that the file itself carries',
-            tone: usedKey.source === 'reader' ? 'plain' : 'warn',
-          },
-          {
-            term: 'Fingerprint',
-            detail: <span className="font-mono text-sm">{usedKey.fingerprint}</span>,
-          },
-          {
-            term: 'Verifier key',
-            detail: (
-              <bdi dir="ltr" className="font-mono text-sm break-all">
-                {usedKey.verifierKey}
-              </bdi>
-            ),
-          },
-          { term: 'This installation', detail: comparison, tone: isPublished === false ? 'gap' : 'plain' },
+          ...rows.map(({ term, words, tone }) => ({ term, detail: words, tone })),
+          ...(fileKey === null ? [] : keyItems(used?.source === 'reader' ? 'in the file' : 'it was checked with', fileKey)),
+          ...(used?.source === 'reader' && used.verifierKey !== fileKey?.verifierKey ? keyItems('you typed', used) : []),
         ]}
       />
     </section>
   );
+} // prettier-ignore
+
+function keyItems(which: string, key: { verifierKey: string; fingerprint: string }) {
+  return [
+    { term: `Fingerprint of the key ${which}`, detail: <span className="font-mono text-sm">{key.fingerprint}</span> },
+    {
+      term: `The key ${which}`,
+      detail: (
+        <bdi dir="ltr" className="font-mono text-sm break-all">
+          {key.verifierKey}
+        </bdi>
+      ),
+    },
+  ];
 }

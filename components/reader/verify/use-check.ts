@@ -2,60 +2,106 @@
 
 import { useCallback, useEffect, useRef, useState } from 'react';
 import type { CheckAnswer } from './check-file';
-import { loadChecker, type Checker } from './load-checker';
+import type { Checker, LoadChecker } from './checker';
+import { maxCheckMilliseconds, maxFileBytes, maxFileWords } from './limits';
 
 export interface GivenFiles {
   file: File;
   key: string;
   against: File | null;
+  roots: File | null;
+  place?: { log: string; seq: number };
 }
 
 export type CheckState =
   | { at: 'loading' }
   | { at: 'ready' }
   | { at: 'checking'; name: string; stage: string }
-  | { at: 'done'; name: string; answer: CheckAnswer }
+  | { at: 'done'; name: string; answer: CheckAnswer; checkedAt: Date }
   | { at: 'failed'; name: string; sentence: string };
 
-/** Loads the check when the page opens and runs it on whatever file is given; of two files only the last counts. */
-export function useCheck(): { state: CheckState; check: (given: GivenFiles) => void } {
+const tooLarge = (file: File) =>
+  `“${file.name}” is larger than ${maxFileWords}, more than this page takes. Check it with verify.mjs on your own computer.`;
+const tooLong = `This file took longer than ${maxCheckMilliseconds / 60_000} minutes, so the check was stopped and nothing is said about it. No real record takes that long; verify.mjs on your own computer has no such limit.`;
+
+/**
+ * Loads the check when the page opens and runs it on whatever file is given; of two files only the last counts. A
+ * second checker is kept ready, so that one can be stopped and the next file checked without a connection.
+ */
+export function useCheck(load: LoadChecker) {
   const [state, setState] = useState<CheckState>({ at: 'loading' });
-  const checker = useRef<Promise<Checker>>(undefined);
+  const checkers = useRef<Promise<Checker>[]>([]);
   const turn = useRef(0);
+  const isRunning = useRef(false);
 
   useEffect(() => {
-    const loaded = loadChecker();
-    checker.current = loaded;
-    loaded.then(
+    const loaded = [load(), load()];
+    checkers.current = loaded;
+    Promise.all(loaded).then(
       () => setState((now) => (now.at === 'loading' ? { at: 'ready' } : now)),
       () => setState({ at: 'failed', name: '', sentence: 'The check could not be loaded. Reload the page.' }),
     );
-    return () => void loaded.then((one) => one.stop()).catch(() => {});
-  }, []);
-
-  const check = useCallback(({ file, key, against }: GivenFiles) => {
-    const mine = ++turn.current;
-    const show = (next: CheckState) => {
-      if (turn.current === mine) setState(next);
+    return () => {
+      for (const one of checkers.current) void one.then((checker) => checker.stop()).catch(() => {});
     };
-    const run = async () => {
-      show({ at: 'checking', name: file.name, stage: 'Reading the file' });
-      const [bytes, older, one] = await Promise.all([
-        file.arrayBuffer(),
-        against?.arrayBuffer() ?? null,
-        checker.current ?? loadChecker(),
-      ]);
-      const answer = await one.check({ file: bytes, key, against: older }, (stage) =>
-        show({ at: 'checking', name: file.name, stage }),
-      );
-      show({ at: 'done', name: file.name, answer });
-    };
-    run().catch(() => {
-      const sentence =
-        'This file could not be read to its end. It may have been moved, or be too large for this browser.';
-      show({ at: 'failed', name: file.name, sentence });
-    });
-  }, []);
+  }, [load]);
 
-  return { state, check };
+  /** Stops what runs now. What is left in its place is loaded again when there is a connection. */
+  const stop = useCallback(() => {
+    isRunning.current = false;
+    const running = checkers.current.shift();
+    checkers.current.push(load());
+    checkers.current.at(-1)?.catch(() => {});
+    void running?.then((checker) => checker.stop()).catch(() => {});
+  }, [load]);
+
+  const cancel = useCallback(() => {
+    turn.current += 1;
+    stop();
+    setState({ at: 'ready' });
+  }, [stop]);
+
+  const check = useCallback(
+    (given: GivenFiles) => {
+      const mine = ++turn.current;
+      const { name } = given.file;
+      const show = (next: CheckState) => {
+        if (turn.current === mine) setState(next);
+      };
+      const large = [given.file, given.against, given.roots].find((one) => one !== null && one.size > maxFileBytes);
+      if (large) return show({ at: 'failed', name, sentence: tooLarge(large) });
+      if (isRunning.current) stop();
+      isRunning.current = true;
+      const limit = setTimeout(() => {
+        if (turn.current !== mine) return;
+        show({ at: 'failed', name, sentence: tooLong });
+        turn.current += 1;
+        stop();
+      }, maxCheckMilliseconds);
+      run(given, checkers.current[0] ?? load(), (stage) => show({ at: 'checking', name, stage }))
+        .then((answer) => show({ at: 'done', name, answer, checkedAt: new Date() }))
+        .catch(() => show({ at: 'failed', name, sentence: unreadable }))
+        .finally(() => {
+          clearTimeout(limit);
+          if (turn.current === mine) isRunning.current = false;
+        });
+    },
+    [load, stop],
+  );
+
+  return { state, check, cancel };
+}
+
+const unreadable =
+  'This file could not be read to its end. It may have been moved or changed meanwhile, or be too large for this browser. Choose it again.';
+
+async function run(given: GivenFiles, checker: Promise<Checker>, tell: (stage: string) => void): Promise<CheckAnswer> {
+  tell('Reading the file');
+  const { key, place } = given;
+  const [file, against, roots] = await Promise.all([
+    given.file.arrayBuffer(),
+    given.against?.arrayBuffer() ?? null,
+    given.roots?.arrayBuffer() ?? null,
+  ]);
+  return (await checker).check({ file, key, against, roots, ...(place === undefined ? {} : { place }) }, tell);
 }

@@ -3,18 +3,21 @@
 import { useEffect, useState } from 'react';
 import { paths } from '@/lib/paths';
 
-/** Null while they are fetched, or when they cannot be. */
-export type PublishedKeys = { verifierKey: string; fingerprint: string }[] | null;
+/**
+ * The keys of the installation that serves the page. `not-fetched`: it did not answer yet, or cannot. `not-asked`: the
+ * page was opened from disk and asks nobody.
+ */
+export type PublishedKeys = { verifierKey: string; fingerprint: string }[] | 'not-fetched' | 'not-asked';
 
-/** The keys of the installation that serves this page, fetched when it opens, for a check without a connection later. */
+/** Fetched when the page opens, for a check without a connection later. */
 export function usePublishedKeys(): PublishedKeys {
-  const [keys, setKeys] = useState<PublishedKeys>(null);
+  const [keys, setKeys] = useState<PublishedKeys>('not-fetched');
   useEffect(() => {
     const asked = new AbortController();
     fetch(paths.api.logKeys, { signal: asked.signal })
       .then(async (response) => {
-        const answer = (await response.json()) as { keys?: NonNullable<PublishedKeys> };
-        setKeys(answer.keys ?? null);
+        const answer = (await response.json()) as { keys?: { verifierKey: string; fingerprint: string }[] };
+        setKeys(answer.keys ?? 'not-fetched');
       })
       .catch(() => {
         // Said on the page: the keys could not be compared.

@@ -1,0 +1,49 @@
+import { struckLines } from '@/lib/domain/standing';
+import { isJsonObject, parseJson } from '@/lib/evidence/canonical';
+import type { EntryFinding } from '@/lib/evidence/finding';
+import { parseLeaf } from '@/lib/evidence/leaf';
+
+/** `<log>/<seq>` of a line → the earlier line of the same log that it is about. */
+export type AboutLines = Record<string, number>;
+
+/** What each line of a record is about. Lines that cannot be read are about nothing. Never throws. */
+export function aboutLines(bundleText: string): AboutLines {
+  const about: AboutLines = {};
+  try {
+    const bundle = parseJson(bundleText);
+    for (const log of isJsonObject(bundle) && Array.isArray(bundle.logs) ? bundle.logs : []) {
+      for (const entry of log.entries) {
+        const { seq, refersTo } = parseLeaf(entry.leaf);
+        if (refersTo !== null && refersTo.seq < seq) about[`${log.id}/${seq}`] = refersTo.seq;
+      }
+    }
+  } catch {
+    // What stands before the line that cannot be read counts; the check names that line.
+  }
+  return about;
+}
+
+/** What later lines did to a line. */
+export interface LaterLines {
+  struckBy: number | null;
+  countersignedBy: number[];
+}
+
+/** By seq, for the lines of one log: which lines strike or countersign it. A line with a problem does neither. */
+export function laterLines(entries: EntryFinding[], about: AboutLines): Map<number, LaterLines> {
+  const sound = entries.filter(({ problems }) => problems.length === 0);
+  const refersToSeq = ({ log, seq }: EntryFinding) => about[`${log}/${seq}`] ?? null;
+  const struck = struckLines(sound.map((entry) => ({ seq: entry.seq, kind: entry.kind ?? '', refersToSeq: refersToSeq(entry) })));
+  const later = new Map<number, LaterLines>();
+  const at = (seq: number) => {
+    const known = later.get(seq) ?? { struckBy: struck.get(seq) ?? null, countersignedBy: [] };
+    later.set(seq, known);
+    return known;
+  };
+  for (const seq of struck.keys()) at(seq);
+  for (const entry of sound) {
+    const seq = refersToSeq(entry);
+    if (entry.kind === 'countersignature' && seq !== null && !struck.has(entry.seq)) at(seq).countersignedBy.push(entry.seq);
+  }
+  return later;
+} // prettier-ignore
