@@ -6,10 +6,12 @@ import { beforeAll, describe, expect, it, vi } from 'vitest';
 import { GET as getHealth } from '@/app/api/health/route';
 import { GET as getKeys } from '@/app/api/log-keys/route';
 import { GET as getCheckpoint } from '@/app/api/logs/[log]/checkpoint/route';
+import { GET as getPacketRoot } from '@/app/api/packet-certificate/root.pem/route';
 import { GET as getRoot } from '@/app/api/time-stamp/root.pem/route';
 import { POST as postTimeStamp } from '@/app/api/time-stamp/route';
 import { env } from '@/lib/env';
 import { parseCheckpoint, parseNote, verifyNote } from '@/lib/evidence/checkpoint';
+import { packetCertificate, packetCertificateFile } from '@/lib/ports/packet-certificate';
 import { startServerWork } from '@/lib/services/start-server-work';
 import { sealRecord } from '../setup/sealed-record';
 import { useTestDatabase } from '../setup/test-database';
@@ -71,6 +73,34 @@ describe('the test authority over HTTP', () => {
     expect((await post(new Uint8Array(10), { 'content-type': 'application/json' })).status).toBe(415);
     expect((await post(new Uint8Array(4096), query)).status).toBe(200);
     expect((await post(new Uint8Array(4097), query)).status).toBe(413);
+  });
+});
+
+describe('the packet root', () => {
+  it('is a root for OpenSSL that issued the certificate packets are signed with, and gives no key away', async () => {
+    const response = await getPacketRoot(get('/api/packet-certificate/root.pem'), noParams);
+    expect(response.headers.get('content-type')).toBe('application/x-pem-file');
+    const pem = await response.text();
+    expect(pem).not.toContain('PRIVATE');
+    const at = (name: string) => path.join(env.dataFolder, name);
+    writeFileSync(at('packet-root.pem'), pem);
+    writeFileSync(at('packet-leaf.pem'), packetCertificate().leaf.toString());
+    const parts = ['verify', '-x509_strict', '-CAfile', at('packet-root.pem'), at('packet-leaf.pem')];
+    expect(execFileSync('openssl', parts, { encoding: 'utf8', stdio: 'pipe' })).toContain('OK');
+  });
+
+  it('is refused with a sentence while its file cannot be used, and comes back with it', async () => {
+    const file = packetCertificateFile();
+    chmodSync(file, 0o644);
+    const said = vi.spyOn(console, 'error').mockImplementation(() => {});
+    const response = await getPacketRoot(get('/api/packet-certificate/root.pem'), noParams);
+    expect(response.status).toBe(503);
+    const { title } = (await response.json()) as { title: string };
+    expect(title).toContain('packet certificate cannot be used');
+    expect(title).not.toContain(file);
+    expect(said).toHaveBeenCalledWith(expect.stringContaining(file));
+    chmodSync(file, 0o600);
+    expect((await getPacketRoot(get('/api/packet-certificate/root.pem'), noParams)).status).toBe(200);
   });
 });
 

@@ -1,9 +1,10 @@
 import { createHash } from 'node:crypto';
-import { existsSync, mkdirSync, readFileSync } from 'node:fs';
+import { chmodSync, existsSync, mkdirSync, readFileSync } from 'node:fs';
 import { describe, expect, it, vi } from 'vitest';
 import { write } from '@/db/index';
 import { findPacket, updatePacket } from '@/db/queries/packets';
 import { findViewingLink, viewingLinksOfMachine } from '@/db/queries/viewing-links';
+import { packetCertificateFile } from '@/lib/ports/packet-certificate';
 import { packetFile, resumePackets } from '@/lib/services/build-packet';
 import { openPacketFile, readPacket } from '@/lib/services/read-packet';
 import { queuePacket, requestPacket, requestPacketInput } from '@/lib/services/request-packet';
@@ -75,6 +76,23 @@ describe('a packet asked for', () => {
       error: 'The packet could not be built. Ask for it again; if it fails again, tell the steward.',
     });
     expect((await findPacket(good.id))?.state).toBe('ready');
+  });
+
+  it('fails with a sentence while the packet certificate cannot be used, and can be asked for again afterwards', async () => {
+    const { person, machine } = await riderWithMachine();
+    const { id } = await queuePacket({ machineId: machine, by: person.id, purpose: '' });
+    chmodSync(packetCertificateFile(), 0o640);
+    const said = vi.spyOn(console, 'error').mockImplementation(() => undefined);
+    await resumePackets();
+    const failed = await findPacket(id);
+    expect(failed).toMatchObject({ state: 'failed', linkId: null });
+    expect(failed?.error).toContain('packet certificate cannot be used. Tell the steward');
+    // The steward reads why, and what to do.
+    expect(said).toHaveBeenCalledWith(expect.any(String), expect.stringContaining('chmod 600'));
+    chmodSync(packetCertificateFile(), 0o600);
+    const again = await queuePacket({ machineId: machine, by: person.id, purpose: '' });
+    await resumePackets();
+    expect((await findPacket(again.id))?.state).toBe('ready');
   });
 
   it('refuses a purpose that is too long or holds a direction character', () => {
