@@ -5,6 +5,7 @@ import { whatIsShown } from '@/lib/evidence/format';
 import { paths } from '@/lib/paths';
 import type { Viewing } from '@/lib/services/read-viewing';
 import { MonoCopy } from './mono-copy';
+import { CompareRecord } from './verify/compare-record';
 
 const downloadLook =
   'inline-flex min-h-11 items-center justify-center rounded-cut border border-petrol px-4 py-2 text-center font-semibold leading-tight text-petrol hover:bg-petrol hover:text-petrol-ink';
@@ -77,6 +78,7 @@ export function CheckItYourself({ viewing }: { viewing: Viewing }) {
           ]}
         />
       </div>
+      <CompareRecord bundle={paths.api.viewingBundle(link)} />
       <p className="mt-6 max-w-[70ch] border-l-4 border-l-petrol pl-4">{whatIsShown}</p>
     </section>
   );

@@ -114,6 +114,10 @@ export const routes: Record<string, RouteReach> = {
     who: ownerOnly,
     at: ({ machine }) => `/api/machines/${machine}/export`,
   },
+  'GET api/machines/[machine]/record.json/route.ts': {
+    who: ownerOnly,
+    at: ({ machine }) => `/api/machines/${machine}/record.json`,
+  },
   'GET api/packets/[packet]/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}` },
   'GET api/packets/[packet]/file/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}/file` },
   'GET api/garage/route.ts': { who: signedIn },

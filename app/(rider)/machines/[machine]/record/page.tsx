@@ -5,6 +5,7 @@ import { counted } from '@/components/entry/words';
 import { Ledger } from '@/components/ledger/ledger';
 import { LinkButton } from '@/components/ui/button';
 import { PageHead } from '@/components/ui/page-head';
+import { CompareRecord } from '@/components/reader/verify/compare-record';
 import { Pager } from '@/components/ui/pager';
 import { UserText } from '@/components/ui/user-text';
 import { orNotFound } from '@/lib/auth/guard';
@@ -49,6 +50,7 @@ export default async function RecordPage({ params, searchParams }: RecordPagePro
           <RecordLine key={entry.seq} entry={entry} facts={facts} links={entryLinks(id, read.shelfByLog)} />
         ))}
       </Ledger>
+      {relation === 'owner' ? <CompareRecord bundle={paths.api.record(id)} /> : null}
       <Pager label="Record" words={words} previousHref={newer} nextHref={older} />
     </>
   );

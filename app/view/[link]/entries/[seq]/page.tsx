@@ -4,6 +4,7 @@ import { notFound } from 'next/navigation';
 import { cameByLink } from '@/app/view/came-by-link';
 import { EntryView } from '@/components/entry/entry-view';
 import { readerFacts, readerLinks } from '@/components/reader/reader-links';
+import { CompareRecord } from '@/components/reader/verify/compare-record';
 import { ReaderShell } from '@/components/shell/reader-shell';
 import { Pager } from '@/components/ui/pager';
 import { UserText } from '@/components/ui/user-text';
@@ -44,6 +45,7 @@ export default async function ViewedEntryPage({ params }: Props) {
         facts={{ ...readerFacts(viewed), entries: record.entries }}
         links={readerLinks({ record, file, entry: hrefOf })}
       />
+      <CompareRecord bundle={paths.api.viewingBundle(link)} entry={{ log: record.log.id, seq: entry.seq }} />
       <p className="tag mt-8 max-w-[70ch]">{whatIsShown}</p>
       <Pager
         label="the record"

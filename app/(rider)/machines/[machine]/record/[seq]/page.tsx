@@ -5,6 +5,7 @@ import { EntryView } from '@/components/entry/entry-view';
 import { MoreAbout } from '@/components/entry/more-about';
 import { entryLinks } from '@/components/entry/rider-links';
 import { SignPart } from '@/components/passkey/sign-part';
+import { CompareRecord } from '@/components/reader/verify/compare-record';
 import { Pager } from '@/components/ui/pager';
 import { orNotFound } from '@/lib/auth/guard';
 import { requirePerson } from '@/lib/auth/session';
@@ -54,6 +55,9 @@ export default async function EntryPage({ params, searchParams }: EntryPageProps
         />
       ) : null}
       {relation === 'owner' ? <MoreAbout eraseHref={paths.erase(id, entry.seq)} name={`entry ${seq}`} /> : null}
+      {relation === 'owner' ? (
+        <CompareRecord bundle={paths.api.record(id)} entry={{ log: log.id, seq: entry.seq }} />
+      ) : null}
       <Pager
         label="Entry"
         words={`Entry ${seq} of 0 to ${entries.length - 1}`}
