@@ -75,7 +75,7 @@ function openingCells(body: OpeningBody): Cell[] {
 
 /** The newest terms are printed whole on their own pages; of older ones, what each held is counted here. */
 function drawTerms(sheet: Sheet, body: TermsBody, seq: number, { record }: PacketContent): void {
-  const isNewest = ![...record.termsBySeq.keys()].some((other) => other > seq);
+  const isNewest = record.terms !== null && record.termsBySeq.get(seq) === record.terms;
   const counts = [
     counted(body.schedule.length, 'schedule item', 'schedule items'),
     counted(body.fluidPoints.length, 'fluid point', 'fluid points'),
@@ -84,8 +84,8 @@ function drawTerms(sheet: Sheet, body: TermsBody, seq: number, { record }: Packe
     counted(body.warranty.length, 'warranty term', 'warranty terms'),
   ].join(', ');
   const note = isNewest
-    ? 'The newest terms: printed whole on the terms page.'
-    : 'Replaced by later terms; whole in the attached record.json.';
+    ? 'The terms that hold: printed whole on the terms page.'
+    : 'Replaced by other terms; whole in the attached record.json.';
   drawBoxes(sheet, 1, [{ label: 'Terms sealed', value: counts, note }]);
 }
 

@@ -14,6 +14,7 @@ import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
 import { confirmedWords, kindWords, lowered, odometerWords, performerWords, sentence } from '../words';
 import { drawBody } from './entry-body';
+import { absentWord, drawAddenda, drawStruck } from './later-words';
 import { drawLeaf, provenCell } from './leaf';
 import { platesOf } from './plates-of';
 import { drawTask } from './task';
@@ -71,13 +72,6 @@ function drawHead(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void
   sheet.y = y + Math.max(markSize + 4, 13 + lines.length * type.leading + 6);
 }
 
-function drawStruck(sheet: Sheet, struck: NonNullable<EntryView['struckBy']>, { zone }: PacketContent): void {
-  const when = formatInstant(struck.sealedAt, zone);
-  const value = `Struck by entry ${struck.seq} on ${when}: ${struck.reason}`;
-  drawBoxes(sheet, 1, [{ label: 'Withdrawn, and still readable', value, isGap: true }]);
-  sheet.gap(6);
-}
-
 function timeCells(entry: EntryView, { zone, record }: PacketContent): Cell[] {
   const sealed: Cell = {
     label: 'Sealed by this installation',
@@ -86,7 +80,7 @@ function timeCells(entry: EntryView, { zone, record }: PacketContent): Cell[] {
   };
   const author: Cell = {
     label: 'Sealed by',
-    value: entry.author?.sealedBy ?? entry.author?.name ?? 'withheld',
+    value: entry.author?.sealedBy ?? entry.author?.name ?? absentWord(entry.erasures, 'author'),
     note: entry.author === null ? undefined : entry.author.role,
   };
   if (!isService(entry) || entry.body === null) return [sealed, provenCell(entry.tokens, zone), { ...author, span: 2 }];
@@ -143,14 +137,7 @@ function drawFollowing(sheet: Sheet, entry: EntryView, content: PacketContent): 
     sheet.paragraph(entry.notes);
   }
   if (entry.countersignatures.length > 0) drawCountersignatures(sheet, entry, content);
-  if (entry.addenda.length > 0) {
-    sheet.heading('Addenda', { tag: 'H3', below: 30 });
-    drawTable(
-      sheet,
-      [{ title: '', share: 5 }, { title: '', share: 1 }],
-      entry.addenda.map((seq) => [`Entry ${seq} adds to this one.`, { late: () => `page ${sheet.pageOf(entryAnchor(seq))}` }]),
-    ); // prettier-ignore
-  }
+  drawAddenda(sheet, entry, content);
 }
 
 function drawChecks(sheet: Sheet, { checks }: ServiceBody): void {

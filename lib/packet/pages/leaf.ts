@@ -2,9 +2,10 @@ import 'server-only';
 import { groupHash } from '@/lib/domain/hash-words';
 import { formatInstant } from '@/lib/domain/instants';
 import type { PartName } from '@/lib/evidence/format';
-import type { TokenView } from '@/lib/services/record-view';
+import type { ErasureView, TokenView } from '@/lib/services/record-view';
 import type { PacketContent } from '../content';
 import type { Cell } from '../sheet/boxes';
+import { erasedWords } from './later-words';
 import { types, type Sheet } from '../sheet/sheet';
 
 /**
@@ -35,7 +36,13 @@ function stampWords({ genTime, authority, isOwnAuthority }: TokenView, zone: str
 /** The leaf hash in groups, its link to the leaf before, what is withheld, and the time stamps in words. */
 export function drawLeaf(
   sheet: Sheet,
-  leaf: { leafHash: string; previous?: string | null; withheld?: PartName[]; tokens: TokenView[] },
+  leaf: {
+    leafHash: string;
+    previous?: string | null;
+    withheld?: PartName[];
+    erasures?: ErasureView[];
+    tokens: TokenView[];
+  },
   { zone }: PacketContent,
 ): void {
   sheet.heading('Leaf hash', { tag: 'H3', below: 44, above: 12 });
@@ -45,6 +52,9 @@ export function drawLeaf(
   }
   const stamps = leaf.tokens.map((token) => stampWords(token, zone));
   sheet.paragraph(stamps.length === 0 ? 'No time stamp yet: proven time none.' : stamps.join(' '), types.small);
+  if (leaf.erasures !== undefined && leaf.erasures.length > 0) {
+    sheet.paragraph(erasedWords(leaf.erasures, zone), types.small);
+  }
   if (leaf.withheld !== undefined && leaf.withheld.length > 0) {
     sheet.paragraph(`Withheld here, and counted: ${leaf.withheld.join(', ')}.`, types.small);
   }

@@ -34,7 +34,8 @@ function drawLine(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void
   const all = breakLines(entry.title, 'medium', 9.5, width);
   const lines = all.length > mostLines ? [...all.slice(0, mostLines - 1), `${all[mostLines - 1]} …`] : all;
   const about = entry.refersTo === null ? '' : `about entry ${entry.refersTo.seq}; `;
-  const details = `${about}sealed ${formatLocalDate(localDateOf(entry.sealedAt, zone))}`;
+  const added = entry.addenda.length === 0 ? '' : `; added to in ${entry.addenda.join(', ')}`;
+  const details = `${about}sealed ${formatLocalDate(localDateOf(entry.sealedAt, zone))}${added}`;
   const height = Math.max(58, lines.length * types.value.leading + types.small.leading + 14);
   sheet.room(height);
   const { layer, y } = sheet;

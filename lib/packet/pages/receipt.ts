@@ -8,6 +8,7 @@ import { drawBoxes } from '../sheet/boxes';
 import { drawPlates } from '../sheet/plates';
 import { types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
+import { absentWord, drawStruck } from './later-words';
 import { drawLeaf, provenCell } from './leaf';
 import { platesOf } from './plates-of';
 
@@ -16,7 +17,7 @@ export function drawReceipt(sheet: Sheet, purchase: PurchaseView, content: Packe
   const { body, supplier, seq, usedBy } = purchase;
   const { zone } = content;
   const name = receiptName(purchase);
-  const from = supplier === null ? 'supplier withheld' : supplier.name;
+  const from = supplier === null ? `supplier ${absentWord(purchase.erasures, 'supplier')}` : supplier.name;
   sheet.during(`Receipt ${name}, continued`, () => {
     if (sheet.left < 330) sheet.newPage();
     else sheet.gap(26);
@@ -29,6 +30,7 @@ export function drawReceipt(sheet: Sheet, purchase: PurchaseView, content: Packe
       { tag: 'H2' },
     );
     sheet.gap(5);
+    if (purchase.struckBy) drawStruck(sheet, purchase.struckBy, content, 'line');
     drawBoxes(sheet, 4, [
       { label: 'Bought, as the receipt says', value: formatLocalMoment(body.boughtOn), note: body.boughtOn.zone },
       { label: 'Sealed by this installation', value: formatInstant(purchase.sealedAt, zone), note: zone },
@@ -36,15 +38,16 @@ export function drawReceipt(sheet: Sheet, purchase: PurchaseView, content: Packe
       { label: 'Used by entries', value: usedBy.length === 0 ? 'none' : usedBy.join(', ') },
       {
         label: 'Supplier',
-        value: [supplier?.name, supplier?.address].filter(Boolean).join(', ') || 'withheld',
+        value:
+          [supplier?.name, supplier?.address].filter(Boolean).join(', ') || absentWord(purchase.erasures, 'supplier'),
         span: 2,
       },
       {
         label: 'Prices',
-        value: purchase.prices === null ? 'withheld' : 'in the attached record.json',
+        value: purchase.prices === null ? absentWord(purchase.erasures, 'prices') : 'in the attached record.json',
         note: purchase.attachments.length > 0 ? 'A picture of the receipt may show them.' : undefined,
       },
-      { label: 'Sealed by', value: purchase.author?.name ?? 'withheld' },
+      { label: 'Sealed by', value: purchase.author?.name ?? absentWord(purchase.erasures, 'author') },
     ]);
     sheet.gap(4);
     drawLines(sheet, body.lines);
