@@ -68,6 +68,9 @@ export const paths = {
   viewingEnded: (link: string) => `/view/${link}/ended`,
   viewingEntry: (link: string, seq: number) => `/view/${link}/entries/${seq}`,
 
+  /** Where an address says whether it keeps checkpoints of a record. */
+  keeper: (token: string) => `/keep/${token}`,
+
   steward: '/steward',
   stewardMail: '/steward/mail',
   stewardMailMessage: (name: string) => `/steward/mail/${name}`,
@@ -98,6 +101,7 @@ export const paths = {
       `/api/imports/${id}/files/${sha256}/${kind}`,
     logKeys: '/api/log-keys',
     checkpoint: (log: string) => `/api/logs/${log}/checkpoint`,
+    keeperStop: (token: string) => `/api/keep/${token}/stop`,
     timeStamp: '/api/time-stamp',
     timeStampRoot: '/api/time-stamp/root.pem',
     /** The root behind the certificate that signs packets. */

@@ -47,7 +47,7 @@ export function garagePolicy(options: { scriptHashes: string[]; isDevelopment: b
 const quoted = (hash: string) => (hash.startsWith("'") ? hash : `'${hash}'`);
 
 /** Addresses with a secret in them: not even the own site is told where the visitor came from. */
-const secretPath = /^\/(?:confirm-email|reset-password|countersign|v|view)\//;
+const secretPath = /^\/(?:confirm-email|reset-password|countersign|v|view|keep)\//;
 
 export function pageHeaders({ pathname, isSecure }: { pathname: string; isSecure: boolean }): Record<string, string> {
   return {

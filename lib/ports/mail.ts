@@ -10,6 +10,8 @@ export interface Mail {
   to: string;
   subject: string;
   text: string;
+  /** An address that ends mails of this kind for its reader by one POST, for the mail program's own button (RFC 8058). */
+  unsubscribe?: string;
 }
 
 const address = z.email().max(254);
@@ -40,12 +42,15 @@ export async function sendMail(mail: Mail): Promise<void> {
 }
 
 /** The message as the transport is given it. Throws on whatever could add a header or a second recipient. */
-export function composeMail({ to, subject, text }: Mail): SendMailOptions {
+export function composeMail({ to, subject, text, unsubscribe }: Mail): SendMailOptions {
   if (!address.safeParse(to).success || /[\s,;:<>"()[\]\\]/.test(to)) {
     throw new WitnessmarkError('invalid-input', 'A mail goes to exactly one address, such as name@host.example.');
   }
   if (/[\u0000-\u001f\u007f\u0085\u2028\u2029]/.test(subject) || subject.length === 0 || subject.length > 200) {
     throw new WitnessmarkError('invalid-input', 'The subject of a mail is one line of at most 200 characters.');
+  }
+  if (unsubscribe !== undefined && !/^https?:\/\/[\x21-\x3b\x3d\x3f-\x7e]+$/.test(unsubscribe)) {
+    throw new WitnessmarkError('invalid-input', 'An address in a header of a mail holds no space and no line end.');
   }
   return {
     // Names of people never go into headers: an address alone cannot be read as two.
@@ -54,6 +59,11 @@ export function composeMail({ to, subject, text }: Mail): SendMailOptions {
     subject,
     text,
     date: now(),
-    headers: { 'Auto-Submitted': 'auto-generated' },
+    headers: {
+      'Auto-Submitted': 'auto-generated',
+      ...(unsubscribe === undefined
+        ? {}
+        : { 'List-Unsubscribe': `<${unsubscribe}>`, 'List-Unsubscribe-Post': 'List-Unsubscribe=One-Click' }),
+    },
   };
 }

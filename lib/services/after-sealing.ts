@@ -1,8 +1,10 @@
 import 'server-only';
+import { keepsAnybody } from '@/db/queries/checkpoint-keepers';
 import { lastCheckpoint } from '@/db/queries/logs';
 import { parseCheckpoint, parseNote } from '@/lib/evidence/checkpoint';
 import { isClockInjected } from '@/lib/ports/clock';
 import { rememberIssued } from '@/lib/ports/issued-checkpoints';
+import { kickCheckpointMails } from '@/lib/services/send-checkpoint-mails';
 import { kickStamping, stampCheckpoint } from '@/lib/services/stamp-checkpoints';
 
 /** What follows a committed seal. Nothing here may fail it: the entry exists. */
@@ -15,6 +17,11 @@ export async function afterSealing(note: string): Promise<void> {
     if (newest !== null && newest.size > size) await rememberIssued(newest.note);
   } catch (error) {
     console.error('The newest checkpoint could not be kept outside the database; the next seal tries again.', error);
+  }
+  try {
+    if (await keepsAnybody(log)) kickCheckpointMails();
+  } catch (error) {
+    console.error('Whether anybody keeps this checkpoint could not be read; it is asked again within a minute.', error);
   }
   if (!isClockInjected()) return kickStamping();
   try {

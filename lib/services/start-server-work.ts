@@ -10,9 +10,10 @@ import { noticeRollbacks } from '@/lib/services/notice-rollback';
 import { packetSigningTrouble } from '@/lib/services/packet-signing';
 import { prepareSigningKey } from '@/lib/services/prepare-signing-key';
 import { finishAllErasing } from '@/lib/services/finish-erasing';
+import { kickCheckpointMails } from '@/lib/services/send-checkpoint-mails';
 import { kickStamping } from '@/lib/services/stamp-checkpoints';
 
-const stampingEveryMilliseconds = 60_000;
+const tryAgainEveryMilliseconds = 60_000;
 
 /** Next may load a module twice in one process; the work is started once all the same. */
 const shared = globalThis as typeof globalThis & {
@@ -46,8 +47,9 @@ export function rollbacksNoticed(): readonly string[] {
 async function start(): Promise<void> {
   for (const step of beforeFirstRequest) await step();
   for (const work of resumed) void resume(work);
-  // A waiting time stamp must not keep a server alive that is shutting down.
-  setInterval(kickStamping, stampingEveryMilliseconds).unref();
+  // A waiting time stamp or mail must not keep a server alive that is shutting down.
+  setInterval(kickStamping, tryAgainEveryMilliseconds).unref();
+  setInterval(kickCheckpointMails, tryAgainEveryMilliseconds).unref();
 }
 
 async function resume(work: () => void | Promise<void>): Promise<void> {

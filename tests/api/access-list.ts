@@ -42,8 +42,16 @@ export const pages: Record<string, Reach> = {
   '(public)/forgot-password/page.tsx': { who: everybody },
   '(public)/confirm-email/[token]/page.tsx': { who: everybody, at: () => '/confirm-email/no-such-token' },
   '(public)/reset-password/[token]/page.tsx': { who: everybody, at: () => '/reset-password/no-such-token' },
+  'keep/[token]/page.tsx': { who: everybody, at: ({ keeperToken }) => `/keep/${keeperToken}` },
   '(rider)/start/page.tsx': { who: signedIn },
   '(rider)/account/page.tsx': { who: signedIn },
+  '(rider)/imports/page.tsx': { who: signedIn },
+  '(rider)/imports/[import]/page.tsx': { who: ownerOnly, at: (world) => `/imports/${world.import}` },
+  '(rider)/imports/incoming/[import]/page.tsx': {
+    who: ownerOnly,
+    at: ({ stagedImport }) => `/imports/incoming/${stagedImport}`,
+  },
+  '(rider)/machines/[machine]/export/page.tsx': { who: ownerOnly, at: ({ machine }) => `/machines/${machine}/export` },
   '(rider)/machines/new/page.tsx': { who: signedIn },
   '(rider)/machines/[machine]/page.tsx': { who: ridersOfTheMachine, at: ({ machine }) => `/machines/${machine}` },
   '(rider)/machines/[machine]/record/page.tsx': {
@@ -103,6 +111,14 @@ export const routes: Record<string, RouteReach> = {
   'GET api/log-keys/route.ts': { who: everybody },
   'GET api/logs/[log]/checkpoint/route.ts': { who: everybody, at: ({ log }) => `/api/logs/${log}/checkpoint` },
   'GET api/packet-certificate/root.pem/route.ts': { who: everybody },
+  'GET api/keep/[token]/stop/route.ts': { who: everybody, at: ({ keeperToken }) => `/api/keep/${keeperToken}/stop` },
+  // Mail programs post here from wherever they are (RFC 8058).
+  'POST api/keep/[token]/stop/route.ts': {
+    who: everybody,
+    isCrossSite: true,
+    at: ({ keeperToken }) => `/api/keep/${keeperToken}/stop`,
+  },
+  'GET api/steward/record-check/route.ts': { who: stewardOnly },
   'GET api/time-stamp/root.pem/route.ts': { who: everybody },
   'POST api/time-stamp/route.ts': { who: everybody, isCrossSite: true },
   'POST api/machines/[machine]/packets/route.ts': {
@@ -117,6 +133,14 @@ export const routes: Record<string, RouteReach> = {
   'GET api/machines/[machine]/record.json/route.ts': {
     who: ownerOnly,
     at: ({ machine }) => `/api/machines/${machine}/record.json`,
+  },
+  // Nothing was sent, which is no ZIP: whoever is told so was let in.
+  'POST api/imports/route.ts': { who: signedIn },
+  'GET api/imports/[import]/file/route.ts': { who: ownerOnly, at: (world) => `/api/imports/${world.import}/file` },
+  // The stored bytes are no picture, which its holder learns as "not found" too; imports.test.ts has real ones.
+  'GET api/imports/[import]/files/[sha256]/[kind]/route.ts': {
+    who: [],
+    at: (world) => `/api/imports/${world.import}/files/${world.plate}/thumb`,
   },
   'GET api/packets/[packet]/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}` },
   'GET api/packets/[packet]/file/route.ts': { who: ownerOnly, at: ({ packet }) => `/api/packets/${packet}/file` },
@@ -250,6 +274,27 @@ export const actions: Record<string, ActionReach> = {
     on: ({ invitation }) => `/countersign/answer/${invitation}`,
     form: ({ invitation }) => ({ invitation, name: 'A shop', address: '1 Quay Street, Halyard' }),
   },
+  '(rider)/imports/actions.ts recheckImportAction': {
+    who: ownerOnly,
+    on: ({ stagedImport }) => `/imports/incoming/${stagedImport}`,
+    form: ({ stagedImport }) => ({ import: stagedImport, key: 'no key' }),
+  },
+  // The very file is kept already, which its holder is told.
+  '(rider)/imports/actions.ts keepImportAction': {
+    who: ownerOnly,
+    on: ({ stagedImport }) => `/imports/incoming/${stagedImport}`,
+    form: ({ stagedImport }) => ({ import: stagedImport }),
+  },
+  '(rider)/imports/actions.ts discardImportAction': {
+    who: ownerOnly,
+    on: ({ stagedImport }) => `/imports/incoming/${stagedImport}`,
+    form: ({ stagedImport }) => ({ import: stagedImport }),
+  },
+  '(rider)/imports/actions.ts removeImportAction': {
+    who: ownerOnly,
+    on: (world) => `/imports/${world.import}`,
+    form: (world) => ({ import: world.import }),
+  },
   '(rider)/account/actions.ts changeAccountAction': { who: signedIn, on: () => '/account' },
   '(rider)/account/actions.ts changePasswordAction': { who: signedIn, on: () => '/account' },
   '(rider)/account/passkey-actions.ts beginPasskeyAction': { who: signedIn, on: () => '/account' },
@@ -277,6 +322,27 @@ export const actions: Record<string, ActionReach> = {
   },
   '(rider)/account/actions.ts endOneAction': { who: signedIn, on: () => '/account' },
   '(rider)/account/actions.ts endOthersAction': { who: signedIn, on: () => '/account' },
+  '(rider)/machines/[machine]/proof/keeper-actions.ts askKeeperAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/proof`,
+    form: ({ machine }) => ({ machine, email: 'keeper@post.example' }),
+  },
+  '(rider)/machines/[machine]/proof/keeper-actions.ts removeKeeperAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/proof`,
+    form: ({ keeper }) => ({ keeper }),
+  },
+  'keep/[token]/actions.ts agreeToKeepAction': {
+    who: everybody,
+    on: ({ keeperToken }) => `/keep/${keeperToken}`,
+    form: ({ keeperToken }) => ({ token: keeperToken }),
+  },
+  'keep/[token]/actions.ts stopKeepingAction': {
+    who: everybody,
+    on: ({ keeperToken }) => `/keep/${keeperToken}`,
+    form: ({ keeperToken }) => ({ token: keeperToken }),
+  },
+  '(steward)/steward/actions.ts checkRecordsAction': { who: stewardOnly, on: () => '/steward' },
   '(steward)/steward/shops/actions.ts confirmShopAction': {
     who: stewardOnly,
     on: () => '/steward/shops',

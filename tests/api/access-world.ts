@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { mkdirSync, writeFileSync } from 'node:fs';
 import path from 'node:path';
+import { Readable } from 'node:stream';
 import { drafts, files, uploads, type DraftRow } from '@/db/models/drafts';
 import { shops } from '@/db/models/machines';
 import { relations, type PersonRow, type RelationRow } from '@/db/models/people';
@@ -14,11 +15,17 @@ import { mailNames } from '@/lib/ports/mail-folder';
 import { sendMail } from '@/lib/ports/mail';
 import { appendEntry } from '@/lib/services/append-entry';
 import { packetFile } from '@/lib/services/build-packet';
+import { keepersOfMachine } from '@/db/queries/checkpoint-keepers';
+import { askCheckpointKeeper } from '@/lib/services/ask-checkpoint-keeper';
+import { keeperToken } from '@/lib/services/keeper-address';
 import { createMachine } from '@/lib/services/create-machine';
 import { createViewingLink } from '@/lib/services/create-viewing-link';
+import { exportRecord } from '@/lib/services/export-record';
+import { keepImport } from '@/lib/services/keep-import';
 import { machineInput } from '@/lib/services/machine-input';
 import { keepChallenge } from '@/lib/services/passkey-challenge';
 import { countersignatureBody } from '@/tests/setup/sealed-record';
+import { receiveImport } from '@/lib/services/receive-import';
 import { makePerson } from '@/tests/setup/test-database';
 import type { Kind } from './access-list';
 
@@ -36,6 +43,9 @@ export interface AccessWorld {
   log: string;
   /** A packet that could not be built, so that nothing waits for it. */
   packet: string;
+  /** A record from elsewhere that the owner keeps, and one that waits for a decision. */
+  import: string;
+  stagedImport: string;
   /** File name of a mail. */
   mail: string;
   /** Two viewing links of the machine; everybody's browser came by the first. `spare` is the one the test may revoke. */
@@ -49,6 +59,9 @@ export interface AccessWorld {
   passkey: string;
   challenge: string;
   shopChallenge: string;
+  /** An address that was asked to keep checkpoints of the machine's record. */
+  keeper: string;
+  keeperToken: string;
   people: Record<Exclude<Kind, 'anonymous'>, PersonRow>;
 }
 
@@ -98,6 +111,7 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
   const invitation = await invite({ machine, log, owner: people.owner, email: people.technician.email });
   await sealPlate({ log, owner: people.owner, sha256: plate });
   await readyPacket(machine, people.owner.id);
+  const brought = await bringIn({ machine, owner: people.owner });
 
   const asked = { log, refersTo: { seq: 0, leafHash: (await findEntry(log, 0))!.leafHash } };
   return {
@@ -123,14 +137,22 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
     log,
     packet: await failedPacket(machine, people.owner.id),
     plate,
+    ...brought,
     mail: (await mailNames())[0]!,
     link: link.id,
     spareLink: spare.id,
     linkToken: link.token,
     invitation: invitation.id,
     invitationToken: invitation.token,
+    ...(await askKeeper(machine, people.owner)),
     people,
   };
+}
+
+async function askKeeper(machineId: string, owner: PersonRow): Promise<{ keeper: string; keeperToken: string }> {
+  await askCheckpointKeeper({ person: owner, machineId, input: { email: 'asked@post.example' } });
+  const [keeper] = await keepersOfMachine(machineId);
+  return { keeper: keeper!.id, keeperToken: keeperToken(keeper!.id).token };
 }
 
 /** Made for another host, so that no page offers to sign with it. */
@@ -151,6 +173,16 @@ async function ownKey(person: PersonRow): Promise<string> {
     revokedAt: null,
   });
   return id;
+}
+
+/** The owner's own export, sent twice: kept the first time, waiting the second. */
+async function bringIn({ machine, owner }: { machine: string; owner: PersonRow }) {
+  const { body } = await exportRecord({ person: owner, machineId: machine, files: 'originals' });
+  const pieces: Uint8Array[] = [];
+  for await (const piece of body) pieces.push(piece);
+  const send = () => receiveImport({ person: owner, fileName: 'export.zip', body: Readable.from(pieces) });
+  const kept = await keepImport({ person: owner, id: (await send()).id });
+  return { import: kept.id, stagedImport: (await send()).id };
 }
 
 async function relate(

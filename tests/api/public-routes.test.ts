@@ -43,6 +43,22 @@ describe('the published keys and checkpoints', () => {
     expect(parseCheckpoint(parseNote(note).text)).toMatchObject({ log: machine.log, size: 3, origin: env.origin });
   });
 
+  it('tell the note of every earlier size, for ever the same, so that a kept note can be compared', async () => {
+    const { machine } = await sealRecord();
+    const params = { params: Promise.resolve({ log: machine.log }) };
+    const ask = (query: string) => getCheckpoint(get(`/api/logs/${machine.log}/checkpoint${query}`), params);
+    const newest = await ask('');
+    expect(newest.headers.get('cache-control')).toBe('public, no-cache');
+    const older = await ask('?size=2');
+    expect(older.headers.get('cache-control')).toBe('public, max-age=31536000, immutable');
+    expect(parseCheckpoint(parseNote(await older.text()).text)).toMatchObject({ log: machine.log, size: 2 });
+    expect(await (await ask('?size=3')).text()).toBe(await newest.text());
+    expect((await ask('?size=4')).status).toBe(404);
+    for (const wrong of ['0', '-1', '1.5', '01', '1e3', '', 'x', '9999999999']) {
+      expect((await ask(`?size=${wrong}`)).status, wrong).toBe(422);
+    }
+  });
+
   it.each(['6f1c2a34-0000-4000-8000-000000000001', 'x', '../keys/log.pem'])(
     'answer “not found” for the log %s',
     async (log) => {

@@ -66,7 +66,7 @@ async function sealAndKill(kill: number, from: number): Promise<Acknowledged[]> 
 }
 
 describe(`a server killed ${kills} times while it seals`, () => {
-  it('loses nothing it acknowledged, breaks nothing, and seals nothing twice', { timeout: 600_000 }, async () => {
+  it('loses nothing it acknowledged, breaks nothing, and seals nothing twice', { timeout: 60_000 + kills * 20_000 }, async () => {
     const acknowledged = new Map<string, Acknowledged>();
     let next = 0;
     for (let kill = 0; kill < kills; kill += 1) {

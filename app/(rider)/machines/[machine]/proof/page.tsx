@@ -14,6 +14,7 @@ import { paths } from '@/lib/paths';
 import { listProof } from '@/lib/services/list-proof';
 import { whatCanBeOpened } from '@/lib/services/what-can-be-opened';
 import { buildPacketAction, makeLinkAction, revokeLinkAction } from './actions';
+import { Keepers } from './keepers';
 
 export const metadata: Metadata = { title: 'Proof' };
 
@@ -83,6 +84,7 @@ export default async function ProofPage({ params, searchParams }: Props) {
           total={linksTotal}
         />
       </section>
+      <Keepers machine={machineId} zone={zone} />
     </>
   );
 }
