@@ -5,16 +5,16 @@ import { readContainer } from '@/lib/evidence/container';
 import type { Finding, Outcome } from '@/lib/evidence/finding';
 import { givenKey } from '@/lib/evidence/given-key';
 import { verifyBundle } from '@/lib/evidence/verify';
-import type { GivenFile } from '@/lib/evidence/verify-files';
+import { companionNames, type GivenFile } from '@/lib/evidence/verify-files';
 import { printable, reportText } from '@/scripts/verify-report';
 
-const usage = `Checks a Witnessmark packet or record.json. Needs nothing but Node.
+const usage = `Checks a Witnessmark packet, export (ZIP) or record.json. Needs nothing but Node.
 
   node scripts/verify.mjs FILE [--key KEY] [--files DIR] [--against OLDER] [--tsa-roots PEM] [--json]
 
   --key KEY        the verifier key you have from elsewhere (name+hex+base64), or its fingerprint
   --files DIR      folder with the pictures and papers that belong to the record
-  --against OLDER  an older packet, record.json or signed checkpoint of the same record
+  --against OLDER  an older packet, export, record.json or signed checkpoint
   --tsa-roots PEM  accepted, but this version does not check who made a time stamp
   --json           print the whole finding as JSON
 
@@ -75,7 +75,7 @@ async function check(file: string, { key, files: folder, against }: Options): Pr
     ...(files && { files }),
     ...(given.verifierKey !== undefined && { key: given.verifierKey }),
     ...(against !== undefined && { against: await readOlder(against) }),
-    pagesNotChecked: container.kind === 'packet',
+    ...(container.pages && { pages: container.pages }),
   });
 }
 
@@ -100,7 +100,13 @@ async function filesIn(folder: string, except: string): Promise<GivenFile[]> {
   for (const item of await readdir(folder, { withFileTypes: true, recursive: true })) {
     const full = path.join(item.parentPath ?? item.path, item.name);
     if (!item.isFile() || (await realpath(full)) === except) continue;
-    files.push({ name: path.relative(folder, full).split(path.sep).join('/'), bytes: await readFile(full) });
+    const name = path.relative(folder, full).split(path.sep).join('/');
+    // The folder may be an unpacked export.
+    files.push({
+      name,
+      bytes: await readFile(full),
+      ...(companionNames.includes(name) && { isCompanion: true as const }),
+    });
   }
   return files;
 }

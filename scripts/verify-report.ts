@@ -29,6 +29,8 @@ export function reportText(file: string, finding: Finding): string {
     const where = finding.logs.length > 1 ? ' in all logs' : '';
     lines.push(`${entriesOpened} of ${entries} entries opened${where} (${partsOpened} parts opened, ${partsWithheld} withheld)`);
   }
+  const pages = pageWords[finding.pages];
+  if (pages !== undefined) lines.push(`Pages: ${pages}`);
   if (finding.against !== null) lines.push(`Compared with the older file: ${finding.against.sentence}`);
   section(lines, 'Altered', finding.alterations.map((item) => `${item.sentence}\n      ${placed(item.code, item)}: ${item.technical}`));
   section(lines, 'To know', finding.remarks.map((item) => `${item.sentence} [${item.code}]`));
@@ -37,6 +39,12 @@ export function reportText(file: string, finding: Finding): string {
   if (bundle !== null) lines.push('', whatIsShown);
   return `${printable(lines.join('\n'))}\n`;
 } // prettier-ignore
+
+/** What a remark or a missing packet says already is not said twice. */
+const pageWords: Partial<Record<Finding['pages'], string>> = {
+  checked: 'as they were signed, over the whole file, with the certificate that the record names',
+  changed: 'changed since they were signed; read only the entries here',
+};
 
 function section(lines: string[], title: string, items: string[]): void {
   if (items.length > 0) lines.push('', title, ...items.map((item) => `  - ${item}`));
@@ -63,5 +71,6 @@ function entryLine(entry: EntryFinding): string {
   const stamp = earliestStamp === null ? '' : ` (a time stamp says ${earliestStamp.genTime})`;
   const closed = entry.withheldParts.length === 0 ? '' : `, withheld: ${entry.withheldParts.join(' ')}`;
   const wrong = entry.problems.length === 0 ? '' : ` !! ${entry.problems.join(' ')}`;
-  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${titleOf(entry)}${said}, sealed ${entry.sealedAt ?? 'unknown'}, not proven${stamp}${closed}${wrong}`;
+  const own = entry.deviceSignature === null ? '' : `, signed with the signer’s own key, outside the server, on ${entry.deviceSignature.site} (key named in entry ${entry.deviceSignature.keySeq})`;
+  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${titleOf(entry)}${said}, sealed ${entry.sealedAt ?? 'unknown'}, not proven${stamp}${own}${closed}${wrong}`;
 } // prettier-ignore
