@@ -6,7 +6,7 @@ import { database } from '@/db/index';
 import { env } from '@/lib/env';
 
 /** Folders beside the database that belong to it. Caught mail is not part of a record. */
-const folders = ['blobs', 'packets', 'keys', 'checkpoints'] as const;
+const folders = ['blobs', 'packets', 'imports', 'keys', 'checkpoints'] as const;
 const databaseName = 'witnessmark.sqlite';
 
 /**

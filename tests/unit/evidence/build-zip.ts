@@ -40,8 +40,9 @@ export const long = (value: number) => joinBytes(short(value & 0xffff), short(va
 /** A ZIP written here byte for byte (APPNOTE 6.3.10), so that every member of it can be made wrong. */
 export function buildZip(
   files: ZipFile[],
-  { comment = new Uint8Array(), between = new Uint8Array(), count = files.length } = {},
+  given: { comment?: Uint8Array; between?: Uint8Array; count?: number } = {},
 ): Uint8Array {
+  const { comment = new Uint8Array(), between = new Uint8Array(), count = files.length } = given;
   let body: Uint8Array = new Uint8Array();
   const directory: Uint8Array[] = [];
   for (const file of files) {
