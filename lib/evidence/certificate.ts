@@ -1,7 +1,7 @@
 import {
-  bitsOf, bytesOf, contextTag, type Element, integerOf, isTrue, itemsOf, octetsOf, oidOf, readElement, sequenceOf, setOf, stringOf,
+  bitsOf, bytesOf, contextTag, type Element, integerOf, isTrue, explicit, octetsOf, oidOf, readElement, sequenceOf, setOf, stringOf,
   timeOf,
-} from '@/lib/evidence/asn1'; // prettier-ignore
+} from '@/lib/evidence/der'; // prettier-ignore
 import { sameBytes } from '@/lib/evidence/bytes';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
 import { sha256Hex } from '@/lib/evidence/hash';
@@ -42,7 +42,8 @@ export const keyUsageBits = { digitalSignature: 0, nonRepudiation: 1, keyCertSig
  * @example readCertificate(der).name; // 'Another authority'
  */
 export function readCertificate(der: Uint8Array): Certificate {
-  const [body, algorithm, signature] = sequenceOf(readElement(der));
+  const [body, algorithm, signature, ...more] = sequenceOf(readElement(der));
+  if (more.length > 0) throw malformed('A certificate holds more than a certificate does.');
   const fields = sequenceOf(body);
   const hasVersion = contextTag(fields[0]) === 0;
   const [serial, innerAlgorithm, issuer, validity, subject, key, ...rest] = hasVersion ? fields.slice(1) : fields;
@@ -52,7 +53,7 @@ export function readCertificate(der: Uint8Array): Certificate {
     der,
     sha256: sha256Hex(der),
     signed: bytesOf(body),
-    signature: bitsOf(signature).bytes,
+    signature: bitsOf(signature),
     algorithm: readAlgorithm(algorithm),
     issuer: bytesOf(issuer),
     subject: bytesOf(subject),
@@ -88,7 +89,7 @@ export function issuing(certificate: Certificate): { pathLength: number } | null
 export function hasKeyUsage(certificate: Certificate, ...bits: number[]): boolean {
   const usage = certificate.extensions.get(oids.keyUsage);
   if (usage === undefined) return true;
-  const { bytes } = bitsOf(readElement(usage.value));
+  const bytes = bitsOf(readElement(usage.value));
   return bits.some((bit) => ((bytes[bit >> 3] ?? 0) & (0x80 >> (bit & 7))) !== 0);
 }
 
@@ -105,8 +106,7 @@ export function purposesOf(certificate: Certificate): string[] | null {
 function readExtensions(tagged: Element | undefined): Certificate['extensions'] {
   const found: Certificate['extensions'] = new Map();
   if (tagged === undefined) return found;
-  const [list] = itemsOf(tagged);
-  for (const item of sequenceOf(list)) {
+  for (const item of sequenceOf(explicit(tagged, 3))) {
     const [id, ...rest] = sequenceOf(item);
     const name = oidOf(id);
     if (found.has(name)) throw malformed('A certificate has the same extension twice.');

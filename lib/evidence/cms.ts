@@ -1,8 +1,9 @@
-import {
-  bytesOf, contextTag, type Element, itemsOf, octetsOf, oidOf, readElement, sequenceOf, setOf, timeOf, integerOf,
-} from '@/lib/evidence/asn1'; // prettier-ignore
-import { sameBytes } from '@/lib/evidence/bytes';
+import { joinBytes, sameBytes } from '@/lib/evidence/bytes';
 import { type Certificate, readCertificate } from '@/lib/evidence/certificate';
+import {
+  bytesOf, contextTag, type Element, explicit, integerOf, isOctets, itemsOf, octetsOf, oidOf, readElement, sequenceOf,
+  setOf, timeOf,
+} from '@/lib/evidence/der'; // prettier-ignore
 import { type Digest, digestOf, sha1Of } from '@/lib/evidence/digests';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
 import { oids } from '@/lib/evidence/oids';
@@ -53,10 +54,12 @@ export function checkSignedData({ der, contentType, detached }: SignedDataReques
   if (der.length > maxBytes) throw new EvidenceError('too-large', 'This is larger than any signature with its certificates.');
   const [outerType, outer] = sequenceOf(readElement(der));
   if (oidOf(outerType) !== oids.signedData) throw refused('This is not signed data.');
-  const [, , encapsulated, ...rest] = sequenceOf(itemsOf(outer)[0]);
+  const [version, digests, encapsulated, ...rest] = sequenceOf(explicit(outer, 0));
+  integerOf(version);
+  const listed = setOf(digests).map((item) => readAlgorithm(item).id);
   const [innerType, inner] = sequenceOf(encapsulated);
   if (oidOf(innerType) !== contentType) throw refused('Something else was signed than what stands here.');
-  const content = inner === undefined ? null : octetsOf(itemsOf(inner)[0]);
+  const content = inner === undefined ? null : octetsOf(explicit(inner, 0));
   if ((content === null) !== (detached !== undefined)) {
     throw refused(content === null ? 'What was signed is missing.' : 'What was signed must lie outside the signature.');
   }
@@ -64,17 +67,23 @@ export function checkSignedData({ der, contentType, detached }: SignedDataReques
   const [signerInfo] = signers;
   if (signerInfo === undefined || signers.length !== 1) throw refused('Signed data must have exactly one signer.');
   const certificates = readCertificates(rest.find((item) => contextTag(item) === 0));
-  return { content, certificates, ...checkSigner(signerInfo, certificates, contentType, detached ?? [content ?? new Uint8Array()]) };
+  const pieces = detached ?? [content ?? new Uint8Array()];
+  return { content, certificates, ...checkSigner({ signerInfo, certificates, contentType, listed, pieces }) };
 } // prettier-ignore
 
-function checkSigner(
-  signerInfo: Element,
-  certificates: Certificate[],
-  contentType: string,
-  pieces: readonly Uint8Array[],
-): Omit<CheckedSignedData, 'content' | 'certificates'> {
-  const [, signerId, digestId, attributes, algorithm, value, unsigned] = sequenceOf(signerInfo);
+function checkSigner(given: {
+  signerInfo: Element;
+  certificates: Certificate[];
+  contentType: string;
+  /** The digests that the signed data says it uses. */
+  listed: string[];
+  pieces: readonly Uint8Array[];
+}): Omit<CheckedSignedData, 'content' | 'certificates'> {
+  const { certificates, contentType, listed, pieces } = given;
+  const [version, signerId, digestId, attributes, algorithm, value, unsigned] = sequenceOf(given.signerInfo);
+  integerOf(version);
   const digest = digestOf(readAlgorithm(digestId).id);
+  if (!listed.includes(readAlgorithm(digestId).id)) throw refused('The signature uses a digest that is not listed.');
   if (digest === undefined) throw refused('The signature uses a digest that is not taken: SHA-256, SHA-384 and SHA-512 are.');
   if (contextTag(attributes) !== 0) throw refused('The signature has no signed attributes.');
   const signed = readAttributes(attributes);
@@ -88,8 +97,7 @@ function checkSigner(
   if (signer === undefined) throw refused('The certificate that the signature names is not with it.');
   if (!isSignerId(signerId, signer)) throw refused('The signature names two different certificates.');
   // Signed is the SET OF, not the [0] in its place (RFC 5652 §5.4).
-  const message = bytesOf(attributes).slice();
-  message[0] = tagOfSet;
+  const message = joinBytes(Uint8Array.of(tagOfSet), bytesOf(attributes).subarray(1));
   const signature = octetsOf(value);
   if (!holds({ key: signer.key, algorithm: readAlgorithm(algorithm), message, signature, beside: digest })) {
     throw refused(signer.key === null ? 'The signature was made with a kind of key that cannot be checked here.' : 'The signature does not hold.');
@@ -151,17 +159,16 @@ function isNamedIn(attribute: Uint8Array, id: string, { der }: Certificate): boo
   const [first, second] = sequenceOf(sequenceOf(sequenceOf(readElement(attribute))[0])[0]);
   if (id === oids.signingCertificate) return sameBytes(octetsOf(first), sha1Of(der));
   // SHA-256 is the default and then left out.
-  const isLeftOut = first?.idBlock.tagNumber === tagOfOctetString;
+  const isLeftOut = isOctets(first);
   const digest = digestOf(isLeftOut ? oids.sha256 : readAlgorithm(first).id);
   return digest !== undefined && sameBytes(octetsOf(isLeftOut ? first : second), digest.hash(der));
 }
-const tagOfOctetString = 4;
 
 /** IssuerAndSerialNumber, or [0] SubjectKeyIdentifier. */
 function isSignerId(signerId: Element | undefined, certificate: Certificate): boolean {
   if (contextTag(signerId) === 0) {
     const keyId = certificate.extensions.get(oids.subjectKeyIdentifier);
-    return keyId !== undefined && sameBytes(octetsOf(readElement(keyId.value)), octetsOf(signerId));
+    return keyId !== undefined && sameBytes(octetsOf(readElement(keyId.value)), octetsOf(signerId, 0));
   }
   const [issuer, serial] = sequenceOf(signerId);
   return sameBytes(bytesOf(issuer), certificate.issuer) && integerOf(serial) === certificate.serial;

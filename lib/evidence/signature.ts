@@ -1,6 +1,6 @@
 import { p256, p384, p521 } from '@noble/curves/nist.js';
 import { mgf1, PKCS1_SHA256, PKCS1_SHA384, PKCS1_SHA512, PSS } from 'micro-rsa-dsa-dh/rsa.js';
-import { bitsOf, bytesOf, contextTag, type Element, integerOf, itemsOf, oidOf, readElement, sequenceOf } from '@/lib/evidence/asn1'; // prettier-ignore
+import { bitsOf, bytesOf, contextTag, type Element, integerOf, explicit, oidOf, readElement, sequenceOf } from '@/lib/evidence/der'; // prettier-ignore
 import { type Digest, digestOf } from '@/lib/evidence/digests';
 import { oids } from '@/lib/evidence/oids';
 
@@ -11,9 +11,7 @@ const rsaBits = { least: 2048, most: 8192 } as const;
 const greatestExponent = 2n ** 32n;
 
 /** A key that signatures are checked with. */
-export type PublicKey =
-  | { kind: 'ec'; curve: typeof p256; point: Uint8Array }
-  | { kind: 'rsa'; n: bigint; e: bigint };
+export type PublicKey = { kind: 'ec'; curve: typeof p256; point: Uint8Array } | { kind: 'rsa'; n: bigint; e: bigint };
 
 /** Which rule a signature was made by. */
 export interface SignatureAlgorithm {
@@ -53,7 +51,7 @@ export function readAlgorithm(element: Element | undefined): SignatureAlgorithm 
 export function readPublicKey(element: Element | undefined): PublicKey | null {
   const [algorithm, key] = sequenceOf(element);
   const [id, parameters] = sequenceOf(algorithm);
-  const { bytes } = bitsOf(key);
+  const bytes = bitsOf(key);
   if (oidOf(id) === oids.ecPublicKey) {
     const curve = curves[oidOf(parameters)];
     return curve === undefined ? null : { kind: 'ec', curve, point: bytes };
@@ -111,12 +109,12 @@ function holdsPss(
   signature: Uint8Array,
 ): boolean {
   const fields = parameters === null ? [] : sequenceOf(readElement(parameters));
-  const field = (tag: number) => itemsOf(fields.find((item) => contextTag(item) === tag))[0];
+  const field = (tag: number) => explicit(fields.find((item) => contextTag(item) === tag), tag);
   const digest = digestOf(readAlgorithm(field(0)).id);
   const mask = readAlgorithm(field(1));
   const maskDigest = mask.id === oids.mgf1 && mask.parameters ? digestOf(readAlgorithm(readElement(mask.parameters)).id) : undefined;
   const salt = Number(integerOf(field(2)));
-  const isOfOtherTrailer = fields.some((item) => contextTag(item) === 3 && integerOf(itemsOf(item)[0]) !== 1n);
+  const isOfOtherTrailer = fields.some((item) => contextTag(item) === 3 && integerOf(explicit(item, 3)) !== 1n);
   if (digest === undefined || maskDigest === undefined || isOfOtherTrailer) return false;
   return PSS(digest.hash, mgf1(maskDigest.hash), salt).verify(key, message, signature);
 } // prettier-ignore

@@ -1,6 +1,6 @@
 import {
-  contextTag, type Element, integerOf, isTrue, itemsOf, octetsOf, oidOf, readElement, sequenceOf, timeOf,
-} from '@/lib/evidence/asn1'; // prettier-ignore
+  contextTag, type Element, explicit, integerOf, isTrue, itemsOf, octetsOf, oidOf, readElement, sequenceOf, timeOf,
+} from '@/lib/evidence/der'; // prettier-ignore
 import { sameBytes, utf8 } from '@/lib/evidence/bytes';
 import { type Certificate, hasKeyUsage, keyUsageBits, purposesOf } from '@/lib/evidence/certificate';
 import { checkSignedData } from '@/lib/evidence/cms';
@@ -40,10 +40,10 @@ export function readToken(der: Uint8Array): TokenContent {
   demandSize(der);
   try {
     const [type, outer] = sequenceOf(readElement(der));
-    const [, , encapsulated] = sequenceOf(itemsOf(outer)[0]);
+    const [, , encapsulated] = sequenceOf(explicit(outer, 0));
     const [contentType, content] = sequenceOf(encapsulated);
     if (oidOf(type) !== oids.signedData || oidOf(contentType) !== oids.tstInfo) throw new Error('no time stamp');
-    return readInfo(octetsOf(itemsOf(content)[0]));
+    return readInfo(octetsOf(explicit(content, 0)));
   } catch {
     throw new EvidenceError('malformed', 'This is not a time-stamp token (RFC 3161).');
   }

@@ -1,6 +1,6 @@
 import 'server-only';
 
-/** Writing DER (X.690 §10): just what requests, tokens and certificates need. Reading is asn1js' and pkijs' work. */
+/** Writing DER (X.690 §10): just what requests, tokens and certificates need. Reading is lib/evidence/der. */
 const tag = {
   boolean: 0x01,
   integer: 0x02,

@@ -1,5 +1,5 @@
 import 'server-only';
-import { bytesOf, integerOf, itemsOf, readElement, sequenceOf, stringOf } from '@/lib/evidence/asn1';
+import { bytesOf, integerOf, isConstructed, itemsOf, readElement, sequenceOf, stringOf } from '@/lib/evidence/der';
 import { sameBytes } from '@/lib/evidence/bytes';
 import { oids } from '@/lib/evidence/oids';
 import { checkToken } from '@/lib/evidence/token';
@@ -42,11 +42,12 @@ function readReply(der: Uint8Array): { status: number; reason: string; token: Ui
   try {
     const [info, token] = sequenceOf(readElement(new Uint8Array(der)));
     const [status, ...rest] = sequenceOf(info);
-    const texts = rest.flatMap((item) => (item.idBlock.isConstructed ? itemsOf(item).map(stringOf) : []));
+    // Texts and the reason as bits may both be left out.
+    const texts = rest.filter(isConstructed).flatMap(itemsOf).map(stringOf);
     return {
       status: Number(integerOf(status)),
       reason: texts.filter((text) => text !== null).join(' '),
-      token: token === undefined ? null : bytesOf(token).slice(),
+      token: token === undefined ? null : new Uint8Array(bytesOf(token)),
     };
   } catch (cause) {
     throw new Error('The authority did not answer with a time-stamp reply.', { cause });

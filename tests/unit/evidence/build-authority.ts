@@ -2,7 +2,7 @@ import { createHash, generateKeyPairSync, type KeyObject, randomBytes, sign } fr
 import { oids } from '@/lib/evidence/oids';
 import {
   bitString, boolean, context, generalizedTime, integer, namedBits, nullValue, octetString, oid, sequence, setOf, utf8String,
-} from '@/lib/ports/time-stamp-authority/der'; // prettier-ignore
+} from '@/lib/ports/der'; // prettier-ignore
 
 // An authority of the tests' own, so that tokens can be made for any time and with any one thing wrong. It signs with
 // node:crypto (OpenSSL) and writes its own DER; what is tested reads with other code. tests/outside/stamp-trust.test.ts
