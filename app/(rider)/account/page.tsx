@@ -6,9 +6,11 @@ import { SessionList } from '@/components/account/session-list';
 import { SignOutForm } from '@/components/account/sign-out-form';
 import { PasskeyPart } from '@/components/passkey/passkey-part';
 import { Sheet } from '@/components/ui/box';
+import { LinkButton } from '@/components/ui/button';
 import { PageHead } from '@/components/ui/page-head';
 import { requireSession } from '@/lib/auth/session';
 import { formatInstant } from '@/lib/domain/instants';
+import { paths } from '@/lib/paths';
 import { readSessions } from '@/lib/services/end-session';
 import { listPasskeys } from '@/lib/services/list-passkeys';
 import { passkeySite } from '@/lib/services/passkey-site';
@@ -27,7 +29,16 @@ export default async function AccountPage() {
   const words = (instant: string) => formatInstant(instant, timeZone);
   return (
     <>
-      <PageHead title="Account" note={email} actions={<SignOutForm action={signOutAction} />} />
+      <PageHead
+        title="Account"
+        note={email}
+        actions={
+          <>
+            <LinkButton href={paths.imports}>Records from elsewhere</LinkButton>
+            <SignOutForm action={signOutAction} />
+          </>
+        }
+      />
       <div className="grid max-w-[44rem] gap-8">
         <Part title="Name and units">
           <AccountForm

@@ -6,6 +6,7 @@ import { LinkList } from '@/components/proof/link-list';
 import { MakeLink } from '@/components/proof/make-link';
 import { PacketList } from '@/components/proof/packet-list';
 import { ProofPager } from '@/components/proof/proof-pager';
+import { LinkButton } from '@/components/ui/button';
 import { PageHead } from '@/components/ui/page-head';
 import { UserText } from '@/components/ui/user-text';
 import { orNotFound } from '@/lib/auth/guard';
@@ -41,7 +42,11 @@ export default async function ProofPage({ params, searchParams }: Props) {
   const zone = machine.timeZone;
   return (
     <>
-      <PageHead label={<UserText>{machine.name}</UserText>} title={newsOf(linksOpen)} />
+      <PageHead
+        label={<UserText>{machine.name}</UserText>}
+        title={newsOf(linksOpen)}
+        actions={<LinkButton href={paths.export(machineId)}>Export the whole record</LinkButton>}
+      />
       <section aria-labelledby="packets" className="mt-2">
         <h2 id="packets">Packets</h2>
         <p className="mt-1 mb-4 max-w-[70ch]">
