@@ -4,6 +4,7 @@ import { parseArgs } from 'node:util';
 import { readContainer } from '@/lib/evidence/container';
 import type { Finding, Outcome } from '@/lib/evidence/finding';
 import { givenKey } from '@/lib/evidence/given-key';
+import { readRoots } from '@/lib/evidence/roots';
 import { verifyBundle } from '@/lib/evidence/verify';
 import { companionNames, type GivenFile } from '@/lib/evidence/verify-files';
 import { printable, reportText } from '@/scripts/verify-report';
@@ -15,7 +16,8 @@ const usage = `Checks a Witnessmark packet, export (ZIP) or record.json. Needs n
   --key KEY        the verifier key you have from elsewhere (name+hex+base64), or its fingerprint
   --files DIR      folder with the pictures and papers that belong to the record
   --against OLDER  an older packet, export, record.json or signed checkpoint
-  --tsa-roots PEM  accepted, but this version does not check who made a time stamp
+  --tsa-roots PEM  root certificates of time-stamp authorities that you trust, got from the authorities
+                   themselves; without them no time is called proven
   --json           print the whole finding as JSON
 
 Exit code 0: unchanged. 1: altered. 2: unreadable, or called wrongly.
@@ -41,9 +43,6 @@ async function run(argumentsGiven: string[]): Promise<number> {
     return exitCodes.unreadable;
   }
   const finding = await check(file, values);
-  if (values['tsa-roots'] !== undefined) {
-    finding.notChecked.push('Time-stamp trust is not checked by this version: the roots you gave were not used.');
-  }
   process.stdout.write(
     values.json === true ? `${printable(JSON.stringify(finding, null, 2))}\n` : reportText(file, finding),
   );
@@ -54,10 +53,12 @@ interface Options {
   key?: string | undefined;
   files?: string | undefined;
   against?: string | undefined;
+  'tsa-roots'?: string | undefined;
 }
 
-async function check(file: string, { key, files: folder, against }: Options): Promise<Finding> {
+async function check(file: string, { key, files: folder, against, 'tsa-roots': rootsFile }: Options): Promise<Finding> {
   const bytes = await readGiven(file);
+  const roots = rootsFile === undefined ? [] : await readGivenRoots(rootsFile);
   let container: Awaited<ReturnType<typeof readContainer>>;
   try {
     container = await readContainer(bytes);
@@ -72,6 +73,8 @@ async function check(file: string, { key, files: folder, against }: Options): Pr
     container.files === undefined && beside === undefined ? undefined : [...(container.files ?? []), ...(beside ?? [])];
   return verifyBundle({
     bundleText: container.bundleText,
+    at: new Date().toISOString(),
+    roots,
     ...(files && { files }),
     ...(given.verifierKey !== undefined && { key: given.verifierKey }),
     ...(against !== undefined && { against: await readOlder(against) }),
@@ -84,6 +87,16 @@ async function readGiven(file: string): Promise<Buffer> {
     return await readFile(file);
   } catch (error) {
     throw new Error(`The file ${file} cannot be opened: is the name right? (${error instanceof Error ? error.message : String(error)})`);
+  }
+} // prettier-ignore
+
+/** Without the roots that were meant, no answer is better than one that calls everything unproven. */
+async function readGivenRoots(file: string): Promise<Uint8Array[]> {
+  const bytes = await readGiven(file);
+  try {
+    return readRoots(bytes);
+  } catch (error) {
+    throw new Error(`Nothing was checked. The roots in ${file}: ${error instanceof Error ? error.message : String(error)}`);
   }
 } // prettier-ignore
 

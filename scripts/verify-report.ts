@@ -1,5 +1,5 @@
 import { whatIsShown } from '@/lib/evidence/format';
-import { signedRoot, type EntryFinding, type Finding } from '@/lib/evidence/finding';
+import { signedRoot, type EntryFinding, type Finding, type Stamp } from '@/lib/evidence/finding';
 
 /** Invisible characters that could move a terminal's cursor or turn the direction of a line. */
 const unsafe = /[\u0000-\u0008\u000b-\u001f\u007f-\u009f\u061c\u200e\u200f\u202a-\u202e\u2066-\u2069]/g;
@@ -35,6 +35,7 @@ export function reportText(file: string, finding: Finding): string {
   section(lines, 'Altered', finding.alterations.map((item) => `${item.sentence}\n      ${placed(item.code, item)}: ${item.technical}`));
   section(lines, 'To know', finding.remarks.map((item) => `${item.sentence} [${item.code}]`));
   section(lines, 'Not checked', finding.notChecked);
+  section(lines, 'Time stamps', authorityLines(finding.entries));
   section(lines, 'Entries', finding.entries.map(entryLine));
   if (bundle !== null) lines.push('', whatIsShown);
   return `${printable(lines.join('\n'))}\n`;
@@ -64,13 +65,37 @@ function titleOf(entry: EntryFinding): string {
   return typeof title === 'string' ? ` “${title.replace(/\s+/g, ' ')}”` : '';
 }
 
+function provenWords({ proven, earliestStamp }: EntryFinding): string {
+  if (proven !== null) return `proven to exist by ${proven.genTime}`;
+  return earliestStamp === null ? 'not proven' : `not proven (a time stamp says ${earliestStamp.genTime})`;
+}
+
+/** Who stamped, each once: those that a root vouches for first. */
+function authorityLines(entries: EntryFinding[]): string[] {
+  const counts = new Map<string, number>();
+  const stamps = entries.flatMap(({ stampedBy }) => stampedBy);
+  const order: Stamp['trust'][] = ['independent', 'unknown', 'own'];
+  for (const stamp of stamps.toSorted((a, b) => order.indexOf(a.trust) - order.indexOf(b.trust))) {
+    const words = authorityWords(stamp);
+    counts.set(words, (counts.get(words) ?? 0) + 1);
+  }
+  return [...counts].map(([words, count]) => `${count} by ${words}`);
+}
+
+function authorityWords({ signer, trust, root }: Stamp): string {
+  const name = signer === null ? 'an authority without a name' : `“${signer.replace(/\s+/g, ' ')}”`;
+  if (trust === 'own') return `${name}: an installation’s own test authority, not independent`;
+  if (root === null) return `${name}: under no root that you brought, so anybody may have made them`;
+  const fingerprint = root.sha256.match(/.{4}/g)?.join(' ') ?? root.sha256;
+  return `${name}: independent, under your root “${root.name.replace(/\s+/g, ' ')}”\n      root fingerprint ${fingerprint}`;
+}
+
 function entryLine(entry: EntryFinding): string {
-  const { claimed, earliestStamp } = entry;
+  const { claimed } = entry;
   const moment = claimed?.finishedAt ?? claimed?.startedAt;
   const said = moment === undefined ? '' : `, claimed ${moment.date}${moment.time === undefined ? '' : ` ${moment.time}`} ${moment.zone}`;
-  const stamp = earliestStamp === null ? '' : ` (a time stamp says ${earliestStamp.genTime})`;
   const closed = entry.withheldParts.length === 0 ? '' : `, withheld: ${entry.withheldParts.join(' ')}`;
   const wrong = entry.problems.length === 0 ? '' : ` !! ${entry.problems.join(' ')}`;
   const own = entry.deviceSignature === null ? '' : `, signed with the signer’s own key, outside the server, on ${entry.deviceSignature.site} (key named in entry ${entry.deviceSignature.keySeq})`;
-  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${titleOf(entry)}${said}, sealed ${entry.sealedAt ?? 'unknown'}, not proven${stamp}${own}${closed}${wrong}`;
+  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${titleOf(entry)}${said}, sealed ${entry.sealedAt ?? 'unknown'}, ${provenWords(entry)}${own}${closed}${wrong}`;
 } // prettier-ignore

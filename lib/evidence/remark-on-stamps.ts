@@ -72,8 +72,8 @@ function sayWhatWasNotChecked(trust: StampTrust, stamps: number, independent: nu
   if (stamps > 0 && trust.roots.length === 0) {
     findings.notChecked.push(
       'Whether a time stamp is independent: no root certificate was brought, and this check ships none. Get the ' +
-        'authority’s root (PEM) from the authority itself, never from this file, and check again with it: ' +
-        'node scripts/verify.mjs FILE --tsa-roots PEM.',
+        'authority’s root (PEM) from the authority itself, never from this file, and check again with it (for the ' +
+        'command: --tsa-roots PEM).',
     );
   }
   if (independent > 0) {
