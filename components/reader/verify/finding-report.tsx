@@ -40,7 +40,7 @@ export function FindingReport({ name, checked, checkedAt, published, checkedWith
       tabIndex={-1}
       data-outcome={outcome}
       aria-labelledby="outcome"
-      className="mt-8 border-t border-line pt-6 outline-none print:mt-0 print:border-t-0 print:pt-0"
+      className="mt-8 border-t border-line pt-6 outline-none print:mt-0 print:border-t-0 print:pt-0 print:[&_.tone-gap]:text-ink print:[&_.tone-warn]:text-ink"
     >
       {isReadable && verdict.alarm !== null ? <KeyAlarm alarm={verdict.alarm} /> : null}
       <OutcomeHead name={name} checked={checked} isKeyDoubted={verdict.alarm !== null} />

@@ -6,7 +6,9 @@ import { makeDisclosure, openDisclosure } from '@/lib/evidence/disclosure';
 import type { Bundle, BundleLog } from '@/lib/evidence/format';
 import { leafHash } from '@/lib/evidence/leaf';
 import { rootOf } from '@/lib/evidence/merkle';
+import { readContainer } from '@/lib/evidence/container';
 import { verifyBundle } from '@/lib/evidence/verify';
+import { forgeries as listed } from './build-forgeries';
 import {
   attacker, author, buildRecord, givenFiles, installation, keyOf, listedOil, listedReceipt, LogBuilder, machineLog,
   oilBytes, origin, receiptBytes, shelfLog, signedText, unsignedBundle,
@@ -400,4 +402,28 @@ it.each([
     entries: [],
   }));
   expect(verifyBundle({ key, bundleText: resigned({ logs: [machine, shelf, ...empty] }) }).outcome).toBe(outcome);
+});
+
+it.each(listed.map((one) => [one.what, one] as const))(
+  'a forger who %s is found out, from the file on',
+  async (_, forged) => {
+    const { bytes, codes } = forged;
+    const file = await bytes();
+    if (codes.length === 0) return expect(readContainer(file)).rejects.toMatchObject({ code: 'unreadable' });
+    const { bundleText: text } = await readContainer(file);
+    expect([...new Set(codesOf({ bundleText: text }))]).toEqual(codes);
+  },
+);
+
+it('a rewrite signed again with the same key passes alone, and is found out by whoever kept an older file', () => {
+  const rewritten = buildRecord(() => ({ amount: '4.5' }));
+  const bundleText = signedText(unsignedBundle(rewritten));
+  expect(verifyBundle({ key, bundleText }).outcome).toBe('unchanged');
+  const older = signedText(unsignedBundle(record, { madeAt: '2026-04-20T00:00:00.000Z' }));
+  for (const against of [older, record.machine.seals[2] ?? '']) {
+    const finding = verifyBundle({ key, bundleText, against });
+    expect(finding.alterations.map(({ code }) => code)).toContain('forked');
+    expect(finding.against).toMatchObject({ result: 'forked' });
+    expect(finding.against?.notes[0]?.log).toBe(machineLog);
+  }
 });
