@@ -14,9 +14,11 @@ import { inviteCountersigner } from '@/lib/services/invite-countersigner';
 import { machineInput } from '@/lib/services/machine-input';
 import { buildPerson } from './build-person';
 import { demoAccounts, type DemoRole } from './demo-accounts';
+import { sorrelAddenda, sorrelStrikes, wrongMachineWork } from './story-later';
 import { sorrelCountersignatures, sorrelPurchases, sorrelWorks } from './story-sorrel';
 import { openGearboxWork } from './story-open';
 import { wrenPurchases, wrenWorks } from './story-wren';
+import { tellAddendum, tellStrike } from './tell-later';
 import { instantAt, minutesAfter, tellPurchase, tellWork, zone, type Garage } from './tell-story';
 import type { StoryCountersignature } from './story-types';
 
@@ -56,11 +58,22 @@ export async function seedDemo(report: (done: number, of: number) => void): Prom
       at: instantAt(purchase.on, purchase.time),
       tell: () => tellPurchase(wren, purchase),
     })),
-    ...sorrelWorks.map((work) => ({
+    ...[...sorrelWorks, wrongMachineWork].map((work) => ({
       at: instantAt(work.sealed?.on ?? work.on, work.sealed?.time ?? work.to),
       tell: async () => void seqByDay.set(work.on, (await tellWork(sorrel, work)) ?? 0),
     })),
-    ...wrenWorks.map((work) => ({ at: instantAt(work.on, work.to), tell: () => tellWork(wren, work) })),
+    ...wrenWorks.map((work) => ({
+      at: instantAt(work.sealed?.on ?? work.on, work.sealed?.time ?? work.to),
+      tell: () => tellWork(wren, work),
+    })),
+    ...sorrelStrikes.map((strike) => ({
+      at: instantAt(strike.on, strike.time),
+      tell: () => tellStrike(sorrel, strike, seqOf(strike.of)),
+    })),
+    ...sorrelAddenda.map((addendum) => ({
+      at: instantAt(addendum.on, addendum.time),
+      tell: () => tellAddendum(sorrel, addendum, seqOf(addendum.of)),
+    })),
     ...countersignings,
     { at: instantAt('2026-11-19', '20:00'), tell: () => inviteAgain(cast, sorrel, seqOf('2026-08-15')) },
     {

@@ -62,8 +62,12 @@ export function fieldsOfWork(
     ['startedAt/date', work.on],
     ['startedAt/time', work.from],
     ['zone', options.zone],
-    ['odometer/value', work.odometer],
-    ['odometer/unit', '[mi_i]'],
+    ...((work.odometerUnknown === undefined
+      ? [
+          ['odometer/value', work.odometer],
+          ['odometer/unit', '[mi_i]'],
+        ]
+      : [['odometer/unknownWhy', work.odometerUnknown]]) as FieldValues),
     ...present([
       ['title', work.title],
       ['notes', work.notes],

@@ -50,6 +50,8 @@ export interface StoryWork {
   from: string;
   to: string;
   odometer: string;
+  /** Why no odometer was read, in place of a figure. */
+  odometerUnknown?: string;
   title?: string;
   tasks: StoryTask[];
   photos: StoryPhoto[];
@@ -77,6 +79,22 @@ export interface StoryCountersignature {
   of: string;
   capacity: 'did-the-work' | 'inspected' | 'was-present' | 'checked-papers';
   statement: string;
+}
+
+/** An entry withdrawn, found by the day of its work. */
+export interface StoryStrike {
+  on: string;
+  time: string;
+  of: string;
+  reason: string;
+}
+/** What was added to an entry later, found by the day of its work. */
+export interface StoryAddendum {
+  on: string;
+  time: string;
+  of: string;
+  text: string;
+  photo: StoryPhoto & { caption: string };
 }
 
 export const shops = {

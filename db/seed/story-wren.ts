@@ -29,7 +29,8 @@ const oil = (title: string): StoryWork['tasks'][number] => ({
 export const wrenWorks: StoryWork[] = [
   { on: '2024-05-11', from: '10:20', to: '11:10', odometer: '612', title: 'First service', tasks: [oil('Engine oil and filter')],
     photos: [{ role: 'odometer' }, { role: 'magnet', grade: 1, caption: 'Drain plug, before wiping' }] },
-  { on: '2025-05-03', from: '15:15', to: '16:05', odometer: '3480', tasks: [oil('Engine oil and filter')],
+  // Logged on the other machine first, and struck there (story-later.ts).
+  { on: '2025-05-03', from: '15:15', to: '16:05', sealed: { on: '2025-05-03', time: '16:58' }, odometer: '3480', tasks: [oil('Engine oil and filter')],
     photos: [{ role: 'odometer' }, { role: 'magnet', grade: 1, caption: 'Drain plug, before wiping' }] },
   { on: '2026-04-11', from: '09:00', to: '09:40', odometer: '5215', title: 'Chain and sprockets',
     tasks: [{ key: 'free', title: 'Chain cleaned, slack set', action: 'adjust', inspections: [['Chain slack', null, '35 mm in the middle']] }], photos: [{ role: 'odometer' }] },

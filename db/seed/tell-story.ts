@@ -124,7 +124,7 @@ async function drawsOf(garage: Garage, wanted: Wanted[], on: string): Promise<Fi
   return fields;
 }
 
-function svgOf(photo: StoryPhoto, work: StoryWork): string {
+export function svgOf(photo: StoryPhoto, work: Pick<StoryWork, 'on' | 'odometer'>): string {
   if (photo.role === 'odometer') return odometerSvg(work.odometer, 'mi', work.on);
   if (photo.role === 'magnet') return magnetSvg(photo.grade, work.on);
   if (photo.role === 'part') return partSvg(photo.name, photo.number, work.on);
@@ -152,7 +152,7 @@ function printed(purchase: StoryPurchase): Parameters<typeof receiptSvg>[0] {
   };
 }
 
-async function sendPicture(options: {
+export async function sendPicture(options: {
   garage: Garage;
   draft: string;
   name: string;
@@ -186,7 +186,7 @@ function cameraNote(at: Date): { local: string; offset: string } {
   };
 }
 
-async function change(person: PersonRow, draftId: string, fields: FieldValues, at: Date): Promise<void> {
+export async function change(person: PersonRow, draftId: string, fields: FieldValues, at: Date): Promise<void> {
   const deviceAt = at.toISOString();
   for (let i = 0; i < fields.length; i += 400) {
     const changes = fields.slice(i, i + 400).map(([field, value]) => ({ id: randomUUID(), field, value, deviceAt }));
