@@ -1,4 +1,4 @@
-import { ownSignatureWords } from '@/components/passkey/words';
+import { ownSignatureWords } from '@/lib/domain/own-signature-words';
 import { capacityWords } from '@/lib/domain/record-words';
 import type { EntryView } from '@/lib/services/record-view';
 import { addendumText, authorWords, counted } from './words';

@@ -1,5 +1,5 @@
 import Link from 'next/link';
-import { ownSignatureLimit, ownSignatureWords } from '@/components/passkey/words';
+import { ownSignatureLimit, ownSignatureWords } from '@/lib/domain/own-signature-words';
 import { Box, Boxes } from '@/components/ui/box';
 import { Hash } from '@/components/ui/hash';
 import { UserText } from '@/components/ui/user-text';

@@ -5,7 +5,7 @@ import { Notice } from '@/components/ui/notice';
 import { UserText } from '@/components/ui/user-text';
 import type { PasskeyLine } from '@/lib/services/list-passkeys';
 import { AddPasskeyForm } from './add-passkey-form';
-import { ownSignatureLimit } from './words';
+import { ownSignatureLimit } from '@/lib/domain/own-signature-words';
 
 export interface PasskeyPartProps {
   /** Times in words. */

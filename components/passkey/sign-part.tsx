@@ -1,7 +1,7 @@
 import Link from 'next/link';
 import { paths } from '@/lib/paths';
 import { SignEntry, type SignEntryProps } from './sign-entry';
-import { ownSignatureLimit } from './words';
+import { ownSignatureLimit } from '@/lib/domain/own-signature-words';
 
 export interface SignPartProps extends SignEntryProps {
   /** The person has a key that works here. */

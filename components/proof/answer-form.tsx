@@ -3,7 +3,7 @@
 import { useActionState, useState } from 'react';
 import { FormShell, type FormAction } from '@/components/account/form-shell';
 import { PasskeyStep } from '@/components/passkey/passkey-step';
-import { ownSignatureLimit } from '@/components/passkey/words';
+import { ownSignatureLimit } from '@/lib/domain/own-signature-words';
 import { Button } from '@/components/ui/button';
 import { Dialog } from '@/components/ui/dialog';
 import { FieldError } from '@/components/ui/field';

@@ -1,5 +1,5 @@
 import { AddPasskeyForm, type AddPasskeyFormProps } from '@/components/passkey/add-passkey-form';
-import { ownSignatureLimit } from '@/components/passkey/words';
+import { ownSignatureLimit } from '@/lib/domain/own-signature-words';
 
 export interface OfferKeyProps extends AddPasskeyFormProps {
   /** Why no key can be added at this address; null if it can. */

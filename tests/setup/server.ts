@@ -19,7 +19,7 @@ export const isDevServer = process.env.WITNESSMARK_TEST_SERVER === 'dev';
 const longestStartMilliseconds = isDevServer ? 120_000 : 30_000;
 
 export interface TestServer {
-  /** `http://127.0.0.1:port` */
+  /** `http://127.0.0.1:port`, or by the name asked for */
   url: string;
   request: ReturnType<typeof supertest>;
   /** All the server has written so far. */
@@ -35,7 +35,11 @@ export interface TestServer {
  * const server = useServer();
  * it('is healthy', () => server.request.get('/api/health').expect(200));
  */
-export function useServer(environment: Record<string, string> = {}): TestServer {
+export function useServer(
+  environment: Record<string, string> = {},
+  // Keys of one's own are made for names: browsers offer them on localhost, and at no number.
+  { hostName = '127.0.0.1' }: { hostName?: '127.0.0.1' | 'localhost' } = {},
+): TestServer {
   const server = {} as TestServer;
   let child: ChildProcess | undefined;
 
@@ -44,7 +48,7 @@ export function useServer(environment: Record<string, string> = {}): TestServer 
       throw new Error(`There is no build in ${buildFolder}. Run \`npm run build\`, or all tests with \`npm test\`.`);
     }
     const port = await freePort();
-    server.url = `http://127.0.0.1:${port}`;
+    server.url = `http://${hostName}:${port}`;
     server.request = supertest(server.url);
     let output = '';
     server.output = () => output;

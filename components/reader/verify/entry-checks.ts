@@ -1,3 +1,4 @@
+import { ownSignatureLimit } from '@/lib/domain/own-signature-words';
 import type { MarkState } from '@/lib/domain/mark-geometry';
 import type { DeviceSignature, EntryFinding, Finding } from '@/lib/evidence/finding';
 import type { LaterLines } from './about-lines';
@@ -40,6 +41,6 @@ export function deviceWords({ person, keySeq, site, signs }: DeviceSignature, { 
     .find((one) => one.person === person);
   const who = typeof author?.name === 'string' ? `the key that entry ${keySeq} calls ${author.name}’s` : `the key in entry ${keySeq}`;
   return cut(
-    `Signed on a device of its own with ${who}, at ${site}, for entry ${signs}. It shows that whoever holds that device approved this request, not what their screen showed, and not who they are.`,
+    `Signed with the signer’s own key, outside the server that made this file: ${who}, at ${site}, for entry ${signs}. ${ownSignatureLimit} Nor does it show who they are.`,
   );
 } // prettier-ignore

@@ -8,6 +8,7 @@ import type { PacketContent } from '../content';
 import { drawBoxes, type Cell } from '../sheet/boxes';
 import type { Sheet } from '../sheet/sheet';
 import { confirmedWords, counted, odometerWords, sentence } from '../words';
+import { ownSignatureCells, ownSignatureSentence } from './own-signature';
 import { drawTask } from './task';
 
 const startWords: Record<OpeningBody['recordStarts']['why'], string> = {
@@ -40,7 +41,10 @@ export function drawBody(sheet: Sheet, entry: EntryView, content: PacketContent)
       { label: 'Invited by', value: invitedBy, span: 2 },
       { label: 'Shop', value, note: known, span: 4, isGap: shop.confirmedBy === null },
       { label: 'Statement', value: statement, span: 4 },
+      { label: 'Own signature', value: ownSignatureSentence(entry.ownSignature), span: 4 },
     ]);
+  } else if (entry.kind === 'signature' || entry.kind === 'key') {
+    drawBoxes(sheet, 4, [...about, ...ownSignatureCells(entry)]);
   } else {
     drawBoxes(sheet, 4, [...about, ...otherCells(entry.body)]);
     drawExtra(sheet, entry.body, content);

@@ -16,6 +16,7 @@ import { confirmedWords, kindWords, lowered, odometerWords, performerWords, sent
 import { drawBody } from './entry-body';
 import { absentWord, drawAddenda, drawStruck } from './later-words';
 import { drawLeaf, provenCell } from './leaf';
+import { drawSignedBy, ownSignatureSentence } from './own-signature';
 import { platesOf } from './plates-of';
 import { drawTask } from './task';
 
@@ -137,6 +138,7 @@ function drawFollowing(sheet: Sheet, entry: EntryView, content: PacketContent): 
     sheet.paragraph(entry.notes);
   }
   if (entry.countersignatures.length > 0) drawCountersignatures(sheet, entry, content);
+  drawSignedBy(sheet, entry, content);
   drawAddenda(sheet, entry, content);
 }
 
@@ -166,13 +168,14 @@ function drawChecks(sheet: Sheet, { checks }: ServiceBody): void {
 
 function drawCountersignatures(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void {
   sheet.heading('Countersigned', { tag: 'H3', below: 60 });
-  for (const { seq, sealedAt, author, body } of entry.countersignatures) {
+  for (const { seq, sealedAt, author, body, ownSignature } of entry.countersignatures) {
     const { shop } = body;
     const since = formatLocalDate(localDateOf(shop.accountSince, zone));
     sheet.paragraph(
       `“${body.statement}” ${author?.name ?? 'Name withheld'}, ${shop.name}, who ${capacityWords[body.capacity]}. ` +
         `Entry ${seq} of this record, sealed ${formatInstant(sealedAt, zone)}. Invited by ${body.invitedBy}. ` +
-        `The shop’s account exists since ${since}; the shop is ${confirmedWords(shop.confirmedBy)}.`,
+        `The shop’s account exists since ${since}; the shop is ${confirmedWords(shop.confirmedBy)}. ` +
+        ownSignatureSentence(ownSignature),
     );
     sheet.gap(3);
   }

@@ -8,6 +8,7 @@ import { drawQr } from '../sheet/qr';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
 import { counted } from '../words';
+import { drawOwnSignatures } from './own-signature';
 import { drawPageSignature } from './page-signature';
 
 /** 29 mm: with its quiet zone still above the 25 mm that a phone reads without trouble. */
@@ -24,6 +25,7 @@ export function drawVerification(sheet: Sheet, content: PacketContent): void {
     drawLink(sheet, content);
     drawSteps(sheet, content);
     drawLogs(sheet, content);
+    drawOwnSignatures(sheet, content);
     drawFiles(sheet, content);
     drawPageSignature(sheet, content);
     drawNotChecked(sheet);
