@@ -85,6 +85,23 @@ export const pages: Record<string, Reach> = {
     who: ownerOnly,
     at: ({ machine }) => `/machines/${machine}/proof/preview?opens=for-sale`,
   },
+  '(rider)/machines/[machine]/record/[seq]/addendum/page.tsx': {
+    who: ridersOfTheMachine,
+    at: ({ machine }) => `/machines/${machine}/record/0/addendum`,
+  },
+  '(rider)/machines/[machine]/record/[seq]/strike/page.tsx': {
+    who: ownerOnly,
+    at: ({ machine }) => `/machines/${machine}/record/0/strike`,
+  },
+  '(rider)/machines/[machine]/record/[seq]/erase/page.tsx': {
+    who: ownerOnly,
+    at: ({ machine }) => `/machines/${machine}/record/0/erase`,
+  },
+  '(rider)/shelves/[shelf]/[seq]/strike/page.tsx': {
+    who: ownerOnly,
+    at: ({ shelf }) => `/shelves/${shelf}/0/strike`,
+  },
+  '(rider)/shelves/[shelf]/[seq]/erase/page.tsx': { who: ownerOnly, at: ({ shelf }) => `/shelves/${shelf}/0/erase` },
   '(rider)/machines/[machine]/record/[seq]/countersign/page.tsx': {
     who: ownerOnly,
     at: ({ machine }) => `/machines/${machine}/record/0/countersign`,
@@ -256,6 +273,33 @@ export const actions: Record<string, ActionReach> = {
     who: technicianOnly,
     on: ({ invitation }) => `/countersign/answer/${invitation}`,
     form: ({ invitation, shop }) => ({ invitation, shop, answer: 'decline', reason: '' }),
+  },
+  // What is asked of the opening below is refused to its owner in words, and to everybody else as not there.
+  '(rider)/machines/[machine]/record/[seq]/strike/actions.ts strikeAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/record/0/strike`,
+    form: ({ machine }) => ({ machine, seq: '0', reason: 'A mistake.', key: crypto.randomUUID() }),
+  },
+  '(rider)/machines/[machine]/record/[seq]/erase/actions.ts eraseAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/record/0/erase`,
+    form: ({ machine }) => ({ machine, seq: '0', part: 'prices', word: 'erase', reason: '', key: crypto.randomUUID() }),
+  },
+  '(rider)/machines/[machine]/record/[seq]/addendum/actions.ts sealAddendumAction': {
+    who: ownerOnly,
+    told: ['helper'],
+    on: ({ machine }) => `/machines/${machine}/record/0/addendum`,
+    form: ({ addendum }) => ({ draft: addendum, shown: 'what was shown' }),
+  },
+  '(rider)/shelves/[shelf]/[seq]/strike/actions.ts strikeLineAction': {
+    who: ownerOnly,
+    on: ({ shelf }) => `/shelves/${shelf}/0/strike`,
+    form: ({ shelf }) => ({ shelf, seq: '0', reason: 'A mistake.', key: crypto.randomUUID() }),
+  },
+  '(rider)/shelves/[shelf]/[seq]/erase/actions.ts eraseLineAction': {
+    who: ownerOnly,
+    on: ({ shelf }) => `/shelves/${shelf}/0/erase`,
+    form: ({ shelf }) => ({ shelf, seq: '0', part: 'prices', word: 'erase', reason: '', key: crypto.randomUUID() }),
   },
   // Entry 0 is no service, which the owner is told and nobody else learns.
   '(rider)/machines/[machine]/record/[seq]/countersign/actions.ts inviteAction': {

@@ -37,6 +37,8 @@ export interface AccessWorld {
   /** Open drafts of the machine and the shelf; `discarded` is the one the test may throw away. */
   worksheet: string;
   receipt: string;
+  /** An open addendum to the opening, with nothing in it. */
+  addendum: string;
   discarded: string;
   /** SHA-256 of a picture on the worksheet. */
   plate: string;
@@ -95,12 +97,13 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
 
   const [worksheet, discarded] = [await draft('worksheet', machine), await draft('worksheet', machine)];
   const receipt = await draft('receipt', shelf);
+  const addendum = await draft('addendum', machine, 0);
   await sendMail({ to: people.owner.email, subject: 'A reminder', text: 'Engine oil is due.\n' });
 
-  async function draft(kind: DraftRow['kind'], subjectId: string): Promise<string> {
+  async function draft(kind: DraftRow['kind'], subjectId: string, refersToSeq: number | null = null): Promise<string> {
     const id = randomUUID();
     const row = { id, kind, subjectId, createdBy: people.owner.id, createdAt: at, changedAt: at };
-    await drafts.insert({ ...row, state: 'open', sealedLog: null, sealedSeq: null, refersToSeq: null });
+    await drafts.insert({ ...row, state: 'open', sealedLog: null, sealedSeq: null, refersToSeq });
     return id;
   }
 
@@ -133,6 +136,7 @@ export async function buildAccessWorld(): Promise<AccessWorld> {
     shop,
     worksheet,
     receipt,
+    addendum,
     discarded,
     log,
     packet: await failedPacket(machine, people.owner.id),
