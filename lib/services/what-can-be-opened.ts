@@ -3,6 +3,7 @@ import { machineById } from '@/db/queries/machines';
 import type { PersonRow } from '@/db/models/people';
 import { authorise } from '@/lib/auth/guard';
 import { formatLocalDate, localDateOf } from '@/lib/domain/instants';
+import { defaultStatement } from '@/lib/domain/service-body';
 import type { ScopeLine } from '@/lib/domain/scope';
 import type { OpenableLine, OpenablePurchase } from '@/lib/domain/scope-effect';
 import { notFound } from '@/lib/errors';
@@ -45,7 +46,9 @@ export async function whatCanBeOpened(options: { person: PersonRow; machineId: s
 
 function withContent(line: ScopeLine, entry: OpenedEntry): OpenableLine {
   const { statement, text, reason } = (entry.values.get('body') ?? {}) as Record<string, unknown>;
-  const texts = [statement, text, reason, notesOf(entry)].filter((one) => typeof one === 'string' && one !== '');
+  const texts = [statement, text, reason, notesOf(entry)].filter(
+    (one) => typeof one === 'string' && one !== '' && one !== defaultStatement,
+  );
   return { ...line, pictures: attachmentsOf(entry).length, texts: texts.length };
 }
 

@@ -1,9 +1,15 @@
 import { createHash } from 'node:crypto';
+import { mkdirSync, writeFileSync } from 'node:fs';
+import path from 'node:path';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { write } from '@/db/index';
 import { findViewingLink, updateViewingLink } from '@/db/queries/viewing-links';
+import { updatePacket } from '@/db/queries/packets';
+import { forSaleScope, type Scope } from '@/lib/domain/scope';
 import { verifyBundle } from '@/lib/evidence/verify';
+import { packetFile } from '@/lib/services/build-packet';
 import { createViewingLink } from '@/lib/services/create-viewing-link';
+import { queuePacket } from '@/lib/services/request-packet';
 import { revokeViewingLink } from '@/lib/services/revoke-viewing-link';
 import { buildProofWorld } from '@/tests/setup/proof-world';
 import { cookieOf, readerCookieOf, useServer } from '@/tests/setup/server';
@@ -143,5 +149,95 @@ describe('the program for checking at home', () => {
     const page = await server.request.get('/method').expect(200);
     expect(page.text).toContain(sha256.slice(0, 8));
     expect(page.text.replace(/<[^>]*>/g, '')).toContain(sha256);
+  });
+});
+
+describe('a viewing link that opens a part', () => {
+  const linkWith = async (scope: Scope, expiresAt: string | null = null) => {
+    const { id } = await createViewingLink({
+      machineId: world.machine,
+      by: world.person.id,
+      label: 'for a buyer',
+      expiresAt,
+      scope,
+    });
+    const cookie = await readerOf(id);
+    return { id, get: (address: string) => server.request.get(address).set('cookie', cookie) };
+  };
+
+  it('hands out no picture and no paper of what is closed, by whatever name', async () => {
+    const noPapers = await linkWith(forSaleScope);
+    const file = (id: string, sha256: string, kind: string) => `/api/view/${id}/files/${sha256}/${kind}`;
+    await noPapers.get(file(noPapers.id, world.odometer, 'plate')).expect(200);
+    for (const kind of ['thumb', 'plate', 'copy'])
+      await noPapers.get(file(noPapers.id, world.receiptPdf, kind)).expect(404);
+    const nothing = await linkWith({ entries: { seqs: [] }, closed: [] });
+    for (const sha256 of [world.odometer, world.receiptPdf]) {
+      for (const kind of ['thumb', 'plate', 'copy']) await nothing.get(file(nothing.id, sha256, kind)).expect(404);
+    }
+    // What one link remembers of its files is not what another one opens.
+    const usual = await linkWith({ closed: ['prices'] });
+    await usual.get(file(usual.id, world.receiptPdf, 'copy')).expect(200);
+    await noPapers.get(file(noPapers.id, world.receiptPdf, 'copy')).expect(404);
+  });
+
+  it('for sale shows neither names nor VIN on its pages, and gives out a record that checks', async () => {
+    const { id, get } = await linkWith(forSaleScope);
+    for (const address of [`/view/${id}`, `/view/${id}/entries/0`, `/view/${id}/entries/${world.seq}`]) {
+      const page = await get(address).expect(200);
+      expect(page.text).not.toContain('AAACRVSR3NA000417');
+      expect(page.text).not.toContain(world.person.name);
+    }
+    const bundle = await get(`/api/view/${id}/record.json`).expect(200);
+    const finding = verifyBundle({ bundleText: bundle.text });
+    expect(finding.outcome).toBe('unchanged');
+    const opened = JSON.stringify(finding.entries.map(({ openedParts }) => openedParts));
+    expect(opened).toContain('Fernhill');
+    for (const secret of ['AAACRVSR3NA000417', world.person.name]) expect(opened).not.toContain(secret);
+  });
+
+  it('shows a closed entry as a line that is withheld, and gives no verdict', async () => {
+    const { id, get } = await linkWith({ entries: { seqs: [] }, closed: ['prices'] });
+    const page = (await get(`/view/${id}`).expect(200)).text.replace(/<!-- -->/g, '');
+    expect(page).toContain('Service, withheld');
+    expect(page).toContain('what is withheld is not judged');
+    expect(page).not.toContain('always in time');
+    const entry = await get(`/view/${id}/entries/${world.seq}`).expect(200);
+    expect(entry.text).toContain('Its text is withheld');
+  });
+
+  it('whose stored choice cannot be read opens as little as there is', async () => {
+    const { id, get } = await linkWith(forSaleScope);
+    await write((transaction) => updateViewingLink(id, { scope: '{"closed":["prices","later"]}' }, transaction));
+    await get(`/api/view/${id}/files/${world.odometer}/plate`).expect(404);
+    const page = await get(`/view/${id}`).expect(200);
+    expect(page.text).not.toContain('AAACRVSR3NA000417');
+    expect(page.text).toContain('Service, withheld');
+  });
+
+  it('offers only a packet that opens exactly the same, and whose own link does not outlive it', async () => {
+    const soon = new Date(Date.now() + 86_400_000).toISOString();
+    const packetOf = async (scope: Scope) => {
+      const row = await queuePacket({ machineId: world.machine, by: world.person.id, purpose: '', scope });
+      const own = await linkWith(scope);
+      mkdirSync(path.dirname(packetFile(row.number)), { recursive: true });
+      writeFileSync(packetFile(row.number), 'a packet');
+      await write((transaction) => updatePacket(row.id, { state: 'ready', linkId: own.id }, transaction));
+      return { own: own.id };
+    };
+    await packetOf({ closed: ['prices'] });
+    const offered = async ({ id, get }: Awaited<ReturnType<typeof linkWith>>) =>
+      (await get(`/api/view/${id}/packet`)).status;
+    expect(await offered(await linkWith({ closed: ['prices'] }))).toBe(200);
+    // Neither a narrower nor a wider packet.
+    expect(await offered(await linkWith(forSaleScope))).toBe(404);
+    expect(await offered(await linkWith({ closed: [] }))).toBe(404);
+    const sale = await packetOf(forSaleScope);
+    expect(await offered(await linkWith(forSaleScope))).toBe(200);
+    // The packet’s own link stays open: it would give a reader more time than this one does.
+    const ending = await linkWith(forSaleScope, soon);
+    expect(await offered(ending)).toBe(404);
+    await write((transaction) => updateViewingLink(sale.own, { revokedAt: new Date().toISOString() }, transaction));
+    expect(await offered(ending)).toBe(200);
   });
 });

@@ -11,10 +11,11 @@ const counted = (count: number, one: string, many: string) => `${count} ${count 
 function stayOpen({ pictures, texts }: ScopeEffect): string {
   const what = [
     ...(pictures === 0 ? [] : [counted(pictures, 'picture', 'pictures')]),
-    ...(texts === 0 ? [] : [counted(texts, 'text', 'texts')]),
+    ...(texts === 0 ? [] : [counted(texts, 'note or statement', 'notes and statements')]),
   ].join(' and ');
-  if (what === '') return 'No picture and no text in your own words stays open.';
-  return `${what} in your own words or photographs stay open. They can show names, prices or plates; look through them before you share.`;
+  if (what === '') return 'No picture, note or statement stays open.';
+  const stays = pictures + texts === 1 ? 'stays' : 'stay';
+  return `${what} ${stays} open. Pictures and your own words, titles too, can show names, prices or plates: look before you share.`;
 }
 
 /** What the choice does, said while it is made. */
