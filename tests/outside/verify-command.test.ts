@@ -11,7 +11,7 @@ import { fingerprint, parseNote, parseVerifierKey, signNote } from '@/lib/eviden
 import type { Finding } from '@/lib/evidence/finding';
 import { sha256Hex } from '@/lib/evidence/hash';
 import { isTokenOf, readToken } from '@/lib/evidence/token';
-import { buildVerify, verifyFile } from '@/scripts/build-verify';
+import { buildPage, buildVerify, verifyFile, verifyPageFile } from '@/scripts/build-verify';
 import {
   attacker, buildRecord, givenFiles, installation, keyOf, signedText, unsignedBundle,
 } from '../unit/evidence/build-record'; // prettier-ignore
@@ -57,6 +57,14 @@ it('the committed verifier is what its sources make, byte for byte', async () =>
   const built = await buildVerify();
   // Not compared as texts: a difference in a megabyte of code is nothing to print.
   expect(built === (await readFile(verifyFile, 'utf8')), 'run scripts/build-verify.ts and commit verify.mjs').toBe(
+    true,
+  );
+  expect(built).not.toContain(path.dirname(path.dirname(verifyFile)) + path.sep);
+});
+
+it('the committed verify.html is what its sources make, byte for byte', async () => {
+  const built = await buildPage();
+  expect(built === (await readFile(verifyPageFile, 'utf8')), 'run npm run build:verify and commit verify.html').toBe(
     true,
   );
   expect(built).not.toContain(path.dirname(path.dirname(verifyFile)) + path.sep);
