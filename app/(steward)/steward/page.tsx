@@ -50,7 +50,7 @@ export default async function StewardPage({ searchParams }: Props) {
           </>
         }
       />
-      <Boxes columns={3} className="mb-8">
+      <Boxes columns={2} className="mb-8">
         <Box label="Accounts">{total}</Box>
         <Box label="Shops" note={shops.unconfirmed > 0 ? `${shops.unconfirmed} not confirmed` : undefined}>
           {shops.total}
