@@ -31,7 +31,7 @@ const beforeFirstRequest: (() => Promise<unknown>)[] = [
 ];
 
 /** What an earlier run left unfinished, taken up again in the background; none of it may hold up or stop the start. */
-const resumed: (() => void | Promise<void>)[] = [kickStamping, resumePackets, finishAllErasing];
+const resumed: (() => void | Promise<void>)[] = [kickStamping, kickCheckpointMails, resumePackets, finishAllErasing];
 
 /** Runs once per server. Safe to call again: later calls wait for the first. */
 export function startServerWork(): Promise<void> {

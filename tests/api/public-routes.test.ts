@@ -155,12 +155,32 @@ describe('the start of the server', () => {
     return start();
   };
 
-  it('fails with a sentence when others can read the signing key', async () => {
+  it.each<[string, (file: string) => void, string]>([
+    ['when others can read the signing key', (file) => chmodSync(file, 0o644), 'has mode 0644'],
+    ['without the signing key', (file) => rmSync(file), 'is missing'],
+    ['with a signing key that is none', (file) => writeFileSync(file, 'nothing'), 'is not a private key in PEM form'],
+  ])('goes on %s: it says so, health is bad, records are read and keys told', async (_, spoil, sentence) => {
+    const errors = vi.spyOn(console, 'error').mockImplementation(() => {});
+    const { machine, seal } = await sealRecord();
     const file = path.join(env.dataFolder, 'keys', 'log.pem');
-    chmodSync(file, 0o644);
-    await expect(restart()).rejects.toThrow('has mode 0644');
-    chmodSync(file, 0o600);
-    await expect(restart()).resolves.toBeUndefined();
+    const pem = readFileSync(file);
+    spoil(file);
+    await restart();
+    expect(errors).toHaveBeenCalledWith(expect.stringMatching(new RegExp(`^Nothing can be sealed: .*${sentence}`)));
+    expect(await (await getHealth(get('/api/health'), noParams)).json()).toMatchObject({
+      ok: false,
+      signingKey: 'failed',
+    });
+    const { keys } = (await (await getKeys(get('/api/log-keys'), noParams)).json()) as {
+      keys: { verifierKey: string }[];
+    };
+    const note = await getCheckpoint(get('/x'), { params: Promise.resolve({ log: machine.log }) });
+    expect(verifyNote(await note.text(), keys[0]?.verifierKey ?? '')).toBe(true);
+    const reading = { body: { odometer: { value: '1', unit: '[mi_i]', instrument: 0 } } };
+    await expect(seal(machine.log, 'reading', reading)).rejects.toMatchObject({ code: 'key-unusable', status: 503 });
+    rmSync(file);
+    writeFileSync(file, pem, { mode: 0o600 });
+    expect((await seal(machine.log, 'reading', reading)).seq).toBe(3);
   });
 
   it('says which log is behind, and health says so too', async () => {
