@@ -22,11 +22,22 @@ const schema = z.object({
   WITNESSMARK_MAIL_FROM: z.preprocess(blankIsAbsent, z.email().default('steward@witnessmark.example')),
   /** E-mail address of the account that runs the installation. */
   WITNESSMARK_STEWARD: z.preprocess(blankIsAbsent, z.email().toLowerCase().optional()),
-  /** Addresses of RFC 3161 authorities, separated by spaces. Absent: the installation's own test authority stamps. */
+  /**
+   * Addresses of RFC 3161 authorities, separated by spaces; the word `own` among them: the installation's own test
+   * authority stamps as well. Absent: that one alone.
+   */
   WITNESSMARK_TIME_STAMP_URLS: z.preprocess(
-    (value) => (typeof value === 'string' ? value.split(/\s+/).filter((word) => word !== '') : value),
-    z.array(z.url({ protocol: /^https?$/ })).default([]),
+    (value) => (typeof value === 'string' ? [...new Set(value.split(/\s+/).filter((word) => word !== ''))] : value),
+    z
+      .array(
+        z.union([z.literal('own'), z.url({ protocol: /^https?$/ })], {
+          error: 'addresses beginning with http:// or https://, or the word own, with spaces between',
+        }),
+      )
+      .default([]),
   ),
+  /** A PEM file of root certificates: stamps that end in one of them count as independent on this installation's pages. */
+  WITNESSMARK_TIME_STAMP_ROOTS: z.preprocess(blankIsAbsent, z.string().optional()),
   /** At least 32 characters; absent: one is made at first start and kept in the data folder. */
   WITNESSMARK_SECRET: z.preprocess(blankIsAbsent, z.string().min(32).optional()),
 });
@@ -41,6 +52,7 @@ export const env = (() => {
     );
   }
   const e = parsed.data;
+  const timeStampUrls = e.WITNESSMARK_TIME_STAMP_URLS.filter((word) => word !== 'own');
   return {
     dataFolder: path.resolve(/* turbopackIgnore: true */ e.WITNESSMARK_DATA),
     origin: e.WITNESSMARK_ORIGIN,
@@ -49,7 +61,9 @@ export const env = (() => {
     smtp: e.WITNESSMARK_SMTP,
     mailFrom: e.WITNESSMARK_MAIL_FROM,
     steward: e.WITNESSMARK_STEWARD,
-    timeStampUrls: e.WITNESSMARK_TIME_STAMP_URLS,
+    timeStampUrls,
+    doesOwnAuthorityStamp: timeStampUrls.length === 0 || e.WITNESSMARK_TIME_STAMP_URLS.includes('own'),
+    timeStampRoots: e.WITNESSMARK_TIME_STAMP_ROOTS,
     secret: e.WITNESSMARK_SECRET,
     /** An installation with the demo's origin says "demo" on every page. */
     isDemo: e.WITNESSMARK_ORIGIN === 'demo.example',

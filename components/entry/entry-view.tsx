@@ -60,6 +60,7 @@ export function EntryView({ entry, facts, links, actions, isJustSealed }: EntryV
         leafHash={leafHash}
         previous={entry.previous}
         tokens={entry.tokens}
+        stampsToCome={entry.stampsToCome}
         withheld={entry.withheld}
         erasures={entry.erasures}
         entry={links.entry}

@@ -5,11 +5,14 @@ import { partWords } from '@/lib/domain/erasure';
 import { formatInstant } from '@/lib/domain/instants';
 import type { PartName } from '@/lib/evidence/format';
 import type { ErasureView, LogView, TokenView } from '@/lib/services/record-view';
+import { stamperWords, stampToComeWords } from './words';
 
 export interface HeldByProps {
   leafHash: string;
   previous?: string | null | undefined;
   tokens: TokenView[];
+  /** Authorities whose stamp is still to come. */
+  stampsToCome?: string[] | undefined;
   withheld: PartName[];
   erasures?: ErasureView[] | undefined;
   /** Leads to the entry that records an erasure. */
@@ -25,6 +28,7 @@ export function HeldBy({
   leafHash,
   previous,
   tokens,
+  stampsToCome = [],
   withheld,
   erasures = [],
   entry,
@@ -32,18 +36,19 @@ export function HeldBy({
   log,
   zone,
 }: HeldByProps) {
-  const stamps = tokens.map(({ authority, genTime, isOwnAuthority, sha256 }): DefinitionItem => ({
+  const stamps = tokens.map((token): DefinitionItem => ({
     term: 'Time stamp',
     detail: (
       <>
-        {formatInstant(genTime, zone)},{' '}
-        {isOwnAuthority ? 'this installation’s own test authority, not independent' : <bdi>{authority}</bdi>}
+        {formatInstant(token.genTime, zone)}, <bdi>{stamperWords(token)}</bdi>
         <span className="block">
-          <Hash value={sha256} what="SHA-256 of the time stamp" isCopyable={false} />
+          <Hash value={token.sha256} what="SHA-256 of the time stamp" isCopyable={false} />
         </span>
       </>
     ),
   }));
+  const named = stampsToCome.map(stampToComeWords);
+  const toCome = named.length === 0 && stamps.length === 0 ? ['Still to come'] : named;
   return (
     <section className="mt-8">
       <h2 className="mb-2">What holds it</h2>
@@ -71,7 +76,12 @@ export function HeldBy({
               </>
             ),
           },
-          ...(stamps.length > 0 ? stamps : [{ term: 'Time stamp', detail: 'Still to come', tone: 'warn' as const }]),
+          ...stamps,
+          ...toCome.map((detail): DefinitionItem => ({
+            term: 'Time stamp',
+            tone: 'warn',
+            detail: <bdi>{detail}</bdi>,
+          })),
           ...(withheld.length === 0 ? [] : [{ term: 'Withheld here', detail: withheld.join(', ') }]),
           ...erasures.map((one) =>
             erasedItem(one, zone, { name: `${what} ${one.recordedSeq}`, href: entry?.(one.recordedSeq) }),

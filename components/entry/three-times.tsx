@@ -33,7 +33,7 @@ export function ThreeTimes({ claimed, claimedLabel = 'Claimed', sealedAt, tokens
       >
         {formatInstant(sealedAt, zone)}
       </Box>
-      <Box label="Proven" note={proven.note} tone="warn">
+      <Box label="Proven" note={proven.note} tone={proven.isProven ? 'plain' : 'warn'}>
         {proven.words}
       </Box>
     </Boxes>

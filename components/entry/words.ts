@@ -1,5 +1,6 @@
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { convert, Decimal, formatAmount, units } from '@/lib/domain/units';
+import { ownAuthorityName } from '@/lib/evidence/own-authority';
 import type { Amount, Attachment, AuthorPart } from '@/lib/evidence/format';
 import type { EntryView, TokenView } from '@/lib/services/record-view';
 
@@ -41,22 +42,38 @@ export function takenWords({ takenAt, receivedAt }: Attachment, zone: string): s
   return `Camera’s word: ${day} ${time.slice(0, 5)}, ${offset}; ${received}`;
 }
 
-/** Whose stamp an entry carries. Whether an authority is independent is for the reader to say, with a root of their own. */
-export function provenWords(tokens: readonly TokenView[], zone: string): { words: string; note: string } {
+/** Who made a stamp, and what this installation can say of that. Its own word about itself is never independence. */
+export function stamperWords({
+  authority,
+  isOwnAuthority,
+  isIndependent,
+  rootName,
+}: Omit<TokenView, 'genTime' | 'sha256'>): string {
+  if (isOwnAuthority) return 'this installation’s own test authority, not independent';
+  if (!isIndependent) return `${authority}, under no root that this installation trusts`;
+  return `${authority}, under ${rootName ?? 'a root'}, which this installation trusts`;
+}
+
+/** The authority whose stamp is still to come. */
+export const stampToComeWords = (authority: string): string =>
+  `Still to come from ${authority === ownAuthorityName ? 'this installation’s own test authority' : authority}`;
+
+/** The third time: proven by the earliest independent stamp, else not, and why. */
+export function provenWords(
+  tokens: readonly TokenView[],
+  zone: string,
+): { words: string; note: string; isProven: boolean } {
   const earliest = [...tokens].sort((a, b) => a.genTime.localeCompare(b.genTime));
-  const other = earliest.find(({ isOwnAuthority }) => !isOwnAuthority);
-  if (other !== undefined) {
-    return {
-      words: 'To be checked',
-      note: `Stamped ${formatInstant(other.genTime, zone)} by ${other.authority}: check it against a root you trust`,
-    };
+  const independent = earliest.find(({ isIndependent }) => isIndependent);
+  if (independent !== undefined) {
+    const note = `No later than this, by ${stamperWords(independent)}: check it with a root of your own`;
+    return { words: formatInstant(independent.genTime, zone), note, isProven: true };
   }
-  const [own] = earliest;
-  if (own === undefined) return { words: 'Not proven', note: 'The time stamp is still to come' };
-  return {
-    words: 'Not proven',
-    note: `Stamped ${formatInstant(own.genTime, zone)} by this installation’s own test authority, not independent`,
-  };
+  const first = earliest.find(({ isOwnAuthority }) => !isOwnAuthority) ?? earliest[0];
+  if (first === undefined) return { words: 'Not proven', note: 'The time stamp is still to come', isProven: false };
+  const advice = first.isOwnAuthority ? '' : ': check it with a root of your own';
+  const note = `Stamped ${formatInstant(first.genTime, zone)} by ${stamperWords(first)}${advice}`;
+  return { words: 'Not proven', note, isProven: false };
 }
 
 /** `4.26 L` for measures that are not metric; undefined where nothing is gained. */

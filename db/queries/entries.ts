@@ -12,6 +12,8 @@ import {
   type ErasureRow,
   logs,
   type LogRow,
+  stampJobs,
+  type StampJobRow,
   tokens,
   type TokenRow,
 } from '../models/logs';
@@ -27,6 +29,8 @@ export interface StoredLog {
   parts: EntryPartRow[];
   checkpoints: CheckpointRow[];
   tokens: TokenRow[];
+  /** Stamps still to come. */
+  stampJobs: StampJobRow[];
   erasures: ErasureRow[];
 }
 
@@ -39,22 +43,23 @@ export function findEntryByIdempotencyKey(idempotencyKey: string, options: In = 
 }
 
 /**
- * Whole logs, in the order asked for, by six queries however long they are. An id without a log is left out.
+ * Whole logs, in the order asked for, by seven queries however long they are. An id without a log is left out.
  * Logs grow while they are read: each is cut to the size that its newest checkpoint had at the beginning.
  */
 export async function readStoredLogs(ids: string[], options: In = {}): Promise<StoredLog[]> {
   const inLogs = { logId: { [Op.in]: ids } };
   const checkpointRows = await checkpoints.all(inLogs, { ...options, order: [['size', 'ASC']] });
-  const [logRows, entryRows, partRows, tokenRows, erasureRows] = await Promise.all([
+  const [logRows, entryRows, partRows, tokenRows, jobRows, erasureRows] = await Promise.all([
     logs.all({ id: { [Op.in]: ids } }, options),
     entries.all(inLogs, { ...options, order: [['seq', 'ASC']] }),
     entryParts.all(inLogs, { ...options, order: [['seq', 'ASC'], ['name', 'ASC']] }), // prettier-ignore
     tokens.all(inLogs, { ...options, order: [['size', 'ASC'], ['genTime', 'ASC']] }), // prettier-ignore
+    stampJobs.all({ ...inLogs, doneAt: null }, options),
     erasures.all(inLogs, { ...options, order: [['recordedSeq', 'ASC']] }),
   ]);
   const checkpointsOf = byLog(checkpointRows);
   const [entriesOf, partsOf, tokensOf] = [byLog(entryRows), byLog(partRows), byLog(tokenRows)];
-  const erasuresOf = byLog(erasureRows);
+  const [jobsOf, erasuresOf] = [byLog(jobRows), byLog(erasureRows)];
   return ids.flatMap((id) => {
     const log = logRows.find((row) => row.id === id);
     if (log === undefined) return [];
@@ -66,6 +71,7 @@ export async function readStoredLogs(ids: string[], options: In = {}): Promise<S
       parts: (partsOf.get(id) ?? []).filter((row) => row.seq < size),
       checkpoints: notes,
       tokens: (tokensOf.get(id) ?? []).filter((row) => row.size <= size),
+      stampJobs: jobsOf.get(id) ?? [],
       // Its part may be gone before the entry that says so is within the cut; gone it is all the same.
       erasures: erasuresOf.get(id) ?? [],
     };

@@ -53,12 +53,13 @@ export function readToken(der: Uint8Array): TokenContent {
  * Checks what a token can be checked for by itself: one signer, whose signature holds, by a certificate that the
  * token names, that is for time stamps alone (RFC 3161 §2.3) and was valid at the token's time.
  *
+ * @param known.isSignatureKnown these same bytes passed this check before, and only what follows from it is asked again
  * @throws EvidenceError `malformed` or `too-large`, with a sentence that says what does not hold
  * @example checkToken(der).signer.name; // 'Another authority'
  */
-export function checkToken(der: Uint8Array): CheckedToken {
+export function checkToken(der: Uint8Array, { isSignatureKnown = false } = {}): CheckedToken {
   const read = readToken(der);
-  const { signer, certificates } = checkSignedData({ der, contentType: oids.tstInfo });
+  const { signer, certificates } = checkSignedData({ der, contentType: oids.tstInfo, isSignatureKnown });
   if (!isForTimeStampsAlone(signer)) throw refused('The signer’s certificate is not for time stamps alone.');
   const at = Date.parse(read.genTime);
   if (at < signer.notBefore || at > signer.notAfter) {

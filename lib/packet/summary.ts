@@ -4,7 +4,7 @@ import type { MachineHistory } from '@/lib/domain/schedule-limits';
 import type { WarrantyState } from '@/lib/domain/warranty';
 import type { RecordView } from '@/lib/services/record-view';
 import { isService, type PacketContent, type ServiceEntry } from './content';
-import { gapsOf, isStampedByOthers, wholeGaps, type Gap } from './summary/gaps';
+import { gapsOf, isProven, wholeGaps, type Gap } from './summary/gaps';
 import { headlineOf } from './summary/headline';
 import { doneOf, historyOf } from './summary/history';
 import { itemsOf, type ItemSummary } from './summary/items';
@@ -52,12 +52,12 @@ function countsOf(record: RecordView, services: ServiceEntry[], opened: Opened):
   const prompt = services.filter(
     ({ body, sealedAt }) => body !== null && delayInDays(body.finishedAt, sealedAt) <= promptDays,
   );
-  const stamped = record.entries.filter(isStampedByOthers).length;
+  const proven = record.entries.filter(isProven).length;
   const countersigned = services.filter(({ countersignatures }) => countersignatures.length > 0).length;
   return {
     entries: `${opened.entries} of ${opened.of}`,
     prompt: `${prompt.length} of ${services.length}`,
-    proven: stamped === 0 ? 'none' : `${stamped} to check`,
+    proven: proven === 0 ? 'none' : `${proven} of ${record.entries.length}`,
     countersigned: `${countersigned} of ${services.length}`,
   };
 }

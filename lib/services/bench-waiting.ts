@@ -1,10 +1,12 @@
 import 'server-only';
 import { invitationsOfMachine } from '@/db/queries/invitations';
 import { waitingStamps } from '@/db/queries/lots';
+import type { StampJobRow } from '@/db/models/logs';
 import type { MachineRow } from '@/db/models/machines';
 import type { CheckKey } from '@/lib/domain/checks';
 import { formatInstant, formatLocalDate, localDateOf } from '@/lib/domain/instants';
 import { now } from '@/lib/ports/clock';
+import { authorities } from '@/lib/ports/time-stamp-authority/authorities';
 import type { SealedHistory } from './read-history';
 
 export interface Waiting {
@@ -36,15 +38,14 @@ export async function whatWaits(options: { machine: MachineRow; history: SealedH
         note: `Asked on ${asked}. ${read}`,
       };
     });
-  const stamps = (await waitingStamps(history.log)).map((job): Waiting => {
-    const next = formatInstant(job.nextTryAt, machine.timeZone);
-    return {
-      kind: 'time-stamp',
-      seq: job.size - 1,
-      title: `Entry ${job.size - 1} waits for its time stamp.`,
-      note: job.attempts === 0 ? 'It is being fetched.' : `The authority did not answer; next try ${next}.`,
-    };
-  });
+  const jobs = await waitingStamps(history.log);
+  const stamps = authorities().flatMap(({ name, isOwn }) =>
+    stampsToCome({
+      jobs: jobs.filter(({ authority }) => authority === name),
+      from: isOwn ? 'this installation’s own test authority' : name,
+      zone: machine.timeZone,
+    }),
+  );
   const gaps = history.services.slice(-latestServices).flatMap(({ seq, body }) =>
     body.checks
       .filter(({ key, result }) => result === 'gap' && mendable.has(key))
@@ -56,4 +57,23 @@ export async function whatWaits(options: { machine: MachineRow; history: SealedH
       })),
   );
   return [...invited, ...stamps, ...gaps.reverse()];
+}
+
+/** One line an authority, however many entries wait for it. */
+function stampsToCome({ jobs, from, zone }: { jobs: StampJobRow[]; from: string; zone: string }): Waiting[] {
+  const [first, last] = [jobs[0], jobs.at(-1)];
+  if (first === undefined || last === undefined) return [];
+  const seq = last.size - 1;
+  const title =
+    jobs.length === 1
+      ? `Entry ${seq} waits for its time stamp.`
+      : `${jobs.length} entries, the last of them entry ${seq}, wait for their time stamps.`;
+  const failed = jobs
+    .filter(({ attempts }) => attempts > 0)
+    .toSorted((a, b) => a.nextTryAt.localeCompare(b.nextTryAt))[0];
+  const note =
+    failed === undefined
+      ? `It is being fetched from ${from}.`
+      : `${from} gave none so far; next try ${formatInstant(failed.nextTryAt, zone)}. The entries are sealed all the same.`;
+  return [{ kind: 'time-stamp', seq, title, note }];
 }

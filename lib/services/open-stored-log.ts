@@ -1,15 +1,15 @@
 import 'server-only';
 import type { StoredLog } from '@/db/queries/entries';
-import type { TokenRow } from '@/db/models/logs';
 import { struckLines } from '@/lib/domain/standing';
 import { openDisclosure } from '@/lib/evidence/disclosure';
 import type { Attachment, AuthorPart, EntryKind, Leaf, NotesPart, PartName } from '@/lib/evidence/format';
 import { parseLeaf } from '@/lib/evidence/leaf';
 import { keyOfNote } from '@/lib/services/log-keys';
-import type { ErasureView, LogView, StruckView, TokenView } from '@/lib/services/record-view';
+import type { ErasureView, LogView, StruckView } from '@/lib/services/record-view';
+import { type StampsOfEntry, stampsOfLog } from '@/lib/services/stamps-of-log';
 
 /** A line of a log with the parts that are to be shown. */
-export interface OpenedEntry {
+export interface OpenedEntry extends StampsOfEntry {
   leaf: Leaf;
   leafHash: string;
   kind: EntryKind;
@@ -19,8 +19,6 @@ export interface OpenedEntry {
   withheld: PartName[];
   /** Named in the leaf and destroyed for good, each with the entry that says so. */
   erasures: ErasureView[];
-  /** The earliest stamp of each authority over this entry. */
-  tokens: TokenView[];
   /** The strike that withdraws it, if one stands. */
   struckBy: StruckView | null;
 }
@@ -37,7 +35,7 @@ export function openStoredLog(
     const values = valuesBySeq.get(seq) ?? new Map<PartName, unknown>();
     valuesBySeq.set(seq, values.set(part, openDisclosure(disclosure).value));
   }
-  const tokens = tokensBySeq(stored);
+  const stamps = stampsOfLog(stored);
   const opened = stored.entries.map((row): OpenedEntry => {
     const leaf = parseLeaf(row.leaf);
     const values = valuesBySeq.get(row.seq) ?? new Map<PartName, unknown>();
@@ -45,7 +43,6 @@ export function openStoredLog(
     const isErased = (name: PartName) => erasures.some((one) => one.name === name);
     const closed = leaf.parts.map(({ name }) => name).filter((name) => !values.has(name));
     const withheld = closed.filter((name) => !isErased(name));
-    const stamps = tokens.get(row.seq) ?? [];
     return {
       leaf,
       leafHash: row.leafHash,
@@ -53,7 +50,7 @@ export function openStoredLog(
       values,
       withheld,
       erasures,
-      tokens: stamps,
+      ...(stamps.get(row.seq) ?? { tokens: [], stampsToCome: [] }),
       struckBy: null,
     };
   });
@@ -96,24 +93,6 @@ export function attachmentsOf({ values }: OpenedEntry): Attachment[] {
 
 export function notesOf({ values }: OpenedEntry): string | null {
   return (values.get('notes') as NotesPart | undefined)?.text ?? null;
-}
-
-/** A checkpoint covers every line before its size, so an entry's stamps are those of any later checkpoint too. */
-function tokensBySeq(stored: StoredLog): Map<number, TokenView[]> {
-  const bySize = new Map<number, TokenRow[]>();
-  for (const row of stored.tokens) bySize.set(row.size, [...(bySize.get(row.size) ?? []), row]);
-  const earliest = new Map<string, TokenView>();
-  const found = new Map<number, TokenView[]>();
-  for (let size = stored.checkpoints.length; size > 0; size -= 1) {
-    for (const { authority, genTime, isOwnAuthority, sha256 } of bySize.get(size) ?? []) {
-      const known = earliest.get(authority);
-      if (known === undefined || genTime <= known.genTime) {
-        earliest.set(authority, { authority, genTime, isOwnAuthority, sha256 });
-      }
-    }
-    found.set(size - 1, [...earliest.values()]);
-  }
-  return found;
 }
 
 function markStruck(opened: OpenedEntry[]): void {

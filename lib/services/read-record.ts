@@ -132,7 +132,7 @@ const partsWithheldIn = (entries: OpenedEntry[]): number =>
   entries.reduce((sum, { withheld }) => sum + withheld.length, 0);
 
 function entryView(entry: OpenedEntry, referring: OpenedEntry[], nameOf: NameOf): EntryView {
-  const { leaf, leafHash, kind, values, withheld, erasures, tokens, struckBy } = entry;
+  const { leaf, leafHash, kind, values, withheld, erasures, tokens, stampsToCome, struckBy } = entry;
   const countersignatures = referring.flatMap((other) => {
     const body = other.kind === 'countersignature' ? other.values.get('body') : undefined;
     if (body === undefined) return [];
@@ -157,6 +157,7 @@ function entryView(entry: OpenedEntry, referring: OpenedEntry[], nameOf: NameOf)
     erased: erasures.map(({ name }) => name),
     erasures,
     tokens,
+    stampsToCome,
     countersignatures,
     struckBy,
     addenda: referring.filter((other) => other.kind === 'addendum').map((other) => other.leaf.seq),

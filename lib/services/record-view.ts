@@ -78,6 +78,8 @@ export type EntryView = BodyOf & {
   erased: PartName[];
   erasures: ErasureView[];
   tokens: TokenView[];
+  /** Authorities whose stamp over this entry is still to come. */
+  stampsToCome: string[];
   countersignatures: (SignedBy & { body: CountersignatureBody })[];
   /** What was found about the signature made outside the server that this entry carries; absent if it carries none. */
   ownSignature?: StatementFinding;
@@ -109,6 +111,9 @@ export interface TokenView {
   authority: string;
   genTime: string;
   isOwnAuthority: boolean;
+  /** Its chain ends in a root that this installation trusts. Readers decide by roots of their own. */
+  isIndependent: boolean;
+  rootName: string | null;
   sha256: string;
 }
 

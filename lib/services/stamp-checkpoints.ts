@@ -6,7 +6,7 @@ import { dueStampJobs } from '@/db/queries/stamp-jobs';
 import { sha256, sha256Hex } from '@/lib/evidence/hash';
 import { utf8 } from '@/lib/evidence/bytes';
 import { now } from '@/lib/ports/clock';
-import { authorityNamed } from '@/lib/ports/time-stamp-authority/authorities';
+import { authorities, authorityNamed } from '@/lib/ports/time-stamp-authority/authorities';
 import { checkReply } from '@/lib/ports/time-stamp-authority/check-reply';
 import { buildRequest, newNonce } from '@/lib/ports/time-stamp-authority/request';
 
@@ -42,25 +42,33 @@ export async function stampingSettled(): Promise<void> {
   for (let running = runner().running; running !== null; running = runner().running) await running;
 }
 
-/** Stamps one checkpoint now, with every authority that was to stamp it. A failure is kept with its job. */
+/** Stamps one checkpoint now, with every authority that is to stamp it. A failure is kept with its job. */
 export async function stampCheckpoint(log: string, size: number): Promise<void> {
-  const jobs = await stampJobs.all({ logId: log, size, doneAt: null });
+  const named = authorities().map(({ name }) => name);
+  const jobs = (await stampJobs.all({ logId: log, size, doneAt: null })).filter((job) => named.includes(job.authority));
   for (const job of jobs) await stamp(job);
 }
 
+/** Beside each other, so that an authority that does not answer holds up no other. */
 async function run(): Promise<void> {
   try {
-    for (;;) {
-      const jobs = await dueStampJobs(now().toISOString(), jobsAtOnce);
-      if (jobs.length === 0) return;
-      for (const job of jobs) await stamp(job);
-    }
+    await Promise.all(authorities().map(({ name }) => runWith(name)));
   } catch (error) {
     console.error('Stamping has stopped and will be tried again.', error);
   }
 }
 
-async function stamp(job: StampJobRow): Promise<void> {
+/** One after another until one fails: then the others of this authority wait for the next run, and need not fail too. */
+async function runWith(authority: string): Promise<void> {
+  for (;;) {
+    const jobs = await dueStampJobs({ authority, at: now().toISOString(), limit: jobsAtOnce });
+    if (jobs.length === 0) return;
+    for (const job of jobs) if (!(await stamp(job))) return;
+  }
+}
+
+/** Whether it worked. */
+async function stamp(job: StampJobRow): Promise<boolean> {
   const key = { logId: job.logId, size: job.size, authority: job.authority };
   try {
     const authority = authorityNamed(job.authority);
@@ -87,8 +95,10 @@ async function stamp(job: StampJobRow): Promise<void> {
       await tokens.insert(row, { transaction });
       await stampJobs.update(key, { doneAt: row.createdAt, lastError: null }, { transaction });
     });
+    return true;
   } catch (error) {
     await postpone(job, error instanceof Error ? error.message : String(error));
+    return false;
   }
 }
 

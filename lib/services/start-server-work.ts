@@ -3,6 +3,7 @@ import { prepareDatabase } from '@/db/index';
 import { migrate } from '@/db/migrate';
 import { sweepIncomingBlobs } from '@/lib/ports/blob-store';
 import { ownCertificates } from '@/lib/ports/time-stamp-authority/own-certificates';
+import { installationTrust } from '@/lib/ports/time-stamp-authority/trusted-roots';
 import { appointSteward } from '@/lib/services/appoint-steward';
 import { resumePackets } from '@/lib/services/build-packet';
 import { keyTrouble, publishedKeys } from '@/lib/services/log-keys';
@@ -26,6 +27,8 @@ const beforeFirstRequest: (() => Promise<unknown>)[] = [
   migrate,
   appointSteward,
   reportKeys,
+  // Read now, so that a path written wrong is said at the start and not on somebody's page.
+  async () => installationTrust(),
   reportRollbacks,
   () => sweepIncomingBlobs(),
 ];

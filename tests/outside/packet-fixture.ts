@@ -95,7 +95,14 @@ const terms: TermsBody = {
 }; // prettier-ignore
 
 function token(at: string): TokenView {
-  return { authority: 'demo.example test authority', genTime: at, isOwnAuthority: true, sha256: sha256(at) };
+  return {
+    authority: 'demo.example test authority',
+    genTime: at,
+    isOwnAuthority: true,
+    isIndependent: false,
+    rootName: null,
+    sha256: sha256(at),
+  };
 }
 
 const log = (id: string, size: number): LogView => ({
@@ -191,7 +198,7 @@ function entry(seq: number, title: string, sealedAt: string) {
   return {
     seq, title, sealedAt, leafHash: sha256(`leaf ${seq}`), previous: seq === 0 ? null : sha256(`leaf ${seq - 1}`), refersTo: null,
     author: { person: owner, name: 'Imke Vandersloot', role: 'owner' as const }, attachments: [], notes: null, withheld: [], erased: [], erasures: [],
-    tokens: [token(sealedAt)], countersignatures: [], struckBy: null, addenda: [], state: 'sealed' as const,
+    tokens: [token(sealedAt)], countersignatures: [], struckBy: null, addenda: [], stampsToCome: [], state: 'sealed' as const,
   }; // prettier-ignore
 }
 

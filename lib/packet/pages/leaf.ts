@@ -9,27 +9,35 @@ import { erasedWords } from './later-words';
 import { types, type Sheet } from '../sheet/sheet';
 
 /**
- * What can be said of a proven time inside a file: only that it is not proven here. Independence is never read from a
- * file; a stamp by another authority is the verifier's to judge.
+ * The third time, as the installation that drew the packet can say it, by the roots it trusts. Independence is never read
+ * from a file, so the reader is told to check it with a root of their own.
  */
 export function provenCell(tokens: TokenView[], zone: string): Cell {
   const others = tokens.filter(({ isOwnAuthority }) => !isOwnAuthority);
-  const first = [...others].sort((a, b) => a.genTime.localeCompare(b.genTime))[0];
+  const [first] = others.toSorted((a, b) => a.genTime.localeCompare(b.genTime));
+  const [proven] = others
+    .filter(({ isIndependent }) => isIndependent)
+    .toSorted((a, b) => a.genTime.localeCompare(b.genTime));
+  if (proven !== undefined) {
+    const root = proven.rootName ?? 'a root';
+    const note = `By ${proven.authority}, under ${root}, which this installation trusts: check it with a root of your own.`;
+    return { label: 'Time proven', value: formatInstant(proven.genTime, zone), note };
+  }
   if (first !== undefined) {
-    return {
-      label: 'Time proven',
-      value: 'to be checked',
-      note: `Stamped ${formatInstant(first.genTime, zone)} by ${first.authority}: check it against a root you trust.`,
-    };
+    const note = `Stamped ${formatInstant(first.genTime, zone)} by ${first.authority}: check it with a root of your own.`;
+    return { label: 'Time proven', value: 'not proven', note };
   }
   const note = tokens.length === 0 ? 'The time stamp is still to come.' : 'Only this installation’s own stamp.';
   return { label: 'Time proven', value: 'not proven', note };
 }
 
-function stampWords({ genTime, authority, isOwnAuthority }: TokenView, zone: string): string {
+function stampWords({ genTime, authority, isOwnAuthority, isIndependent, rootName }: TokenView, zone: string): string {
+  const known = isIndependent
+    ? `under ${rootName ?? 'a root'}, which this installation trusts`
+    : 'under no root that this installation trusts';
   const who = isOwnAuthority
     ? 'this installation’s own test authority, not independent'
-    : `${authority}; whether it is independent is for the reader to judge`;
+    : `${authority}, ${known}; whether it is independent is for the reader to judge`;
   return `Stamped ${formatInstant(genTime, zone)} by ${who}.`;
 }
 

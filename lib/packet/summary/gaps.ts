@@ -14,12 +14,13 @@ export interface Gap {
   sentence: string;
 }
 
-export const isStampedByOthers = ({ tokens }: EntryView) => tokens.some(({ isOwnAuthority }) => !isOwnAuthority);
+/** By the roots this installation trusts; readers check with their own. */
+export const isProven = ({ tokens }: EntryView) => tokens.some(({ isIndependent }) => isIndependent);
 
 /** What a sceptical reader asks before looking at any entry: whose limits, whose clock, and what was withdrawn. */
 export function wholeGaps({ entries, terms }: RecordView, opened: Opened): Gap[] {
   const whole = (sentence: string): Gap => ({ seq: null, isWhole: true, sentence });
-  const stamped = entries.filter(isStampedByOthers).length;
+  const stamped = entries.filter(isProven).length;
   const struck = entries.filter(({ struckBy }) => struckBy !== null).map(({ seq }) => seq);
   const named = struck.length === 1 ? `Entry ${struck[0]} is` : `Entries ${listed(struck.map(String), 'others')} are`;
   return [

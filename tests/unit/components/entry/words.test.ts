@@ -1,32 +1,59 @@
 import { describe, expect, it } from 'vitest';
-import { bytesWords, metricWords, provenWords, takenWords } from '@/components/entry/words';
+import { bytesWords, metricWords, provenWords, stampToComeWords, takenWords } from '@/components/entry/words';
+import { ownAuthorityName } from '@/lib/evidence/own-authority';
 import type { TokenView } from '@/lib/services/record-view';
 
 const zone = 'America/Denver';
-const stamp = (authority: string, genTime: string, isOwnAuthority: boolean): TokenView => ({
+const stamp = (authority: string, genTime: string, change: Partial<TokenView> = {}): TokenView => ({
   authority,
   genTime,
-  isOwnAuthority,
+  isOwnAuthority: false,
+  isIndependent: false,
+  rootName: null,
   sha256: 'aa',
+  ...change,
 });
+const own = stamp('demo.example', '2025-10-20T00:04:11.000Z', { isOwnAuthority: true });
 
 describe('provenWords', () => {
-  it('never calls a time proven: another authority’s stamp is the reader’s to check', () => {
-    const own = stamp('demo.example', '2025-10-20T00:04:11.000Z', true);
-    const other = stamp('stamps.example', '2025-10-20T00:05:00.000Z', false);
-    expect(provenWords([own, other], zone)).toEqual({
-      words: 'To be checked',
-      note: 'Stamped 19 Oct 2025 18:05 by stamps.example: check it against a root you trust',
+  it('prove by the earliest independent stamp, whatever an earlier one of others says', () => {
+    const unknown = stamp('a.example', '2019-05-01T00:00:00.000Z');
+    const root = { isIndependent: true, rootName: 'Quill root' };
+    const late = stamp('b.example', '2025-10-21T00:05:00.000Z', root);
+    const early = stamp('c.example', '2025-10-20T00:05:00.000Z', root);
+    expect(provenWords([own, unknown, late, early], zone)).toEqual({
+      words: '19 Oct 2025 18:05',
+      note: 'No later than this, by c.example, under Quill root, which this installation trusts: check it with a root of your own',
+      isProven: true,
     });
-    expect(provenWords([own], zone).words).toBe('Not proven');
-    expect(provenWords([own], zone).note).toContain('not independent');
-    expect(provenWords([], zone)).toEqual({ words: 'Not proven', note: 'The time stamp is still to come' });
   });
-  it('names the earliest of several stamps by others', () => {
-    const late = stamp('a.example', '2025-10-21T00:00:00.000Z', false);
-    const early = stamp('b.example', '2025-10-20T00:00:00.000Z', false);
+  it('call nothing proven by an authority that no root vouches for, nor by the own one', () => {
+    const other = stamp('stamps.example', '2025-10-20T00:05:00.000Z');
+    expect(provenWords([own, other], zone)).toEqual({
+      words: 'Not proven',
+      note: 'Stamped 19 Oct 2025 18:05 by stamps.example, under no root that this installation trusts: check it with a root of your own',
+      isProven: false,
+    });
+    expect(provenWords([own], zone)).toMatchObject({ words: 'Not proven', isProven: false });
+    expect(provenWords([own], zone).note).toMatch(/own test authority, not independent$/);
+    expect(provenWords([], zone)).toEqual({
+      words: 'Not proven',
+      note: 'The time stamp is still to come',
+      isProven: false,
+    });
+  });
+  it('name the earliest of several stamps by others', () => {
+    const [late, early] = [
+      stamp('a.example', '2025-10-21T00:00:00.000Z'),
+      stamp('b.example', '2025-10-20T00:00:00.000Z'),
+    ];
     expect(provenWords([late, early], zone).note).toContain('by b.example');
   });
+});
+
+it('stampToComeWords name the authority, and the own one as such', () => {
+  expect(stampToComeWords('https://stamps.example/')).toBe('Still to come from https://stamps.example/');
+  expect(stampToComeWords(ownAuthorityName)).toBe('Still to come from this installation’s own test authority');
 });
 
 describe('takenWords', () => {
