@@ -64,6 +64,8 @@ async function screens(): Promise<Record<Who, string[]>> {
       paths.entry(sorrel.id, 12), paths.entry(sorrel.id, 16), paths.inviteShop(sorrel.id, 11), paths.schedule(sorrel.id), paths.specSheet(sorrel.id),
       paths.machineSettings(sorrel.id), paths.proof(sorrel.id), paths.shelf(shelf.id), paths.shelfEntry(shelf.id, 1), paths.bench(wren.id),
       paths.newMachine, paths.account, paths.garage, paths.newWorksheet(sorrel.id), paths.newReceipt,
+      paths.entry(sorrel.id, 15), paths.addendum(sorrel.id, 0), paths.addendum(sorrel.id, 11), paths.strike(sorrel.id, 11), paths.strike(sorrel.id, 0), paths.erase(sorrel.id, 11),
+      paths.shelfStrike(shelf.id, 1), paths.shelfErase(shelf.id, 1),
     ],
     teodora: [paths.shop(shop.id), paths.invitationAnswer(open.id)],
     steward: [paths.steward, paths.stewardMail, paths.stewardShops],
