@@ -16,7 +16,6 @@ export function RollbackList({ rollbacks }: { rollbacks: StoreView['rollbacks'] 
                 refused
               </p>
               <p className="max-w-[70ch]">{sentence}</p>
-              <p className="tag break-all">Log {log}</p>
             </div>
             <div className="grid gap-3 md:grid-cols-2">
               <Note label="Given out" note={issued} none="The file that remembers it cannot be read." />

@@ -178,7 +178,7 @@ describe('the start of the server', () => {
     expect(verifyNote(await note.text(), keys[0]?.verifierKey ?? '')).toBe(true);
     const reading = { body: { odometer: { value: '1', unit: '[mi_i]', instrument: 0 } } };
     await expect(seal(machine.log, 'reading', reading)).rejects.toMatchObject({ code: 'key-unusable', status: 503 });
-    rmSync(file);
+    rmSync(file, { force: true });
     writeFileSync(file, pem, { mode: 0o600 });
     expect((await seal(machine.log, 'reading', reading)).seq).toBe(3);
   });

@@ -4,7 +4,7 @@ import { chmodSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, st
 import path from 'node:path';
 import { beforeEach, describe, expect, it, vi } from 'vitest';
 import { env } from '@/lib/env';
-import { parseNote, parseVerifierKey, signNote, verifyNote } from '@/lib/evidence/checkpoint';
+import { parseNote, signNote } from '@/lib/evidence/checkpoint';
 import { useTestDatabase } from '../setup/test-database';
 
 useTestDatabase();

@@ -9,7 +9,7 @@ import { readContainer } from '@/lib/evidence/container';
 import { openDisclosure } from '@/lib/evidence/disclosure';
 import { EvidenceError } from '@/lib/evidence/evidence-error';
 import { givenKey } from '@/lib/evidence/given-key';
-import { leafHash, parseLeaf } from '@/lib/evidence/leaf';
+import { parseLeaf } from '@/lib/evidence/leaf';
 import { CompactTree, inclusionProof, verifyConsistency, verifyInclusion } from '@/lib/evidence/merkle';
 import { checkToken, readToken } from '@/lib/evidence/token';
 import { verifyBundle } from '@/lib/evidence/verify';
