@@ -15,6 +15,7 @@ async function readyPage(browser: Browser, address: string): Promise<{ page: Pag
   const page = await (await browser.newContext({ viewport: { width: 390, height: 844 } })).newPage();
   await page.goto(address);
   await page.getByText('Ready. The file stays on this device').waitFor();
+  await page.evaluate(() => document.fonts.ready.then(() => undefined));
   const asked: Request[] = [];
   page.context().on('request', (request) => asked.push(request));
   await page.context().setOffline(true);

@@ -12,7 +12,7 @@ export function outcomeTitle(finding: Finding, isKeyDoubted: boolean): string {
       ? 'Not signed with that key: nothing in it can be relied on'
       : 'Altered: this is not what was sealed';
   }
-  if (isKeyDoubted) return 'It fits its own key, and whose that is is open';
+  if (isKeyDoubted) return 'It fits its own key; whose key that is, is not known';
   return key?.source === 'reader' ? 'Unchanged since it was sealed' : 'Unchanged, going by the key in the file itself';
 }
 
