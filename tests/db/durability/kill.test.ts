@@ -66,31 +66,35 @@ async function sealAndKill(kill: number, from: number): Promise<Acknowledged[]> 
 }
 
 describe(`a server killed ${kills} times while it seals`, () => {
-  it('loses nothing it acknowledged, breaks nothing, and seals nothing twice', { timeout: 60_000 + kills * 20_000 }, async () => {
-    const acknowledged = new Map<string, Acknowledged>();
-    let next = 0;
-    for (let kill = 0; kill < kills; kill += 1) {
-      for (const one of await sealAndKill(kill, next)) acknowledged.set(one.key, one);
-      // The device tries again with the same key what it has no answer for.
-      next = acknowledged.size;
-    }
-    expect(acknowledged.size).toBeGreaterThan(kills);
+  it(
+    'loses nothing it acknowledged, breaks nothing, and seals nothing twice',
+    { timeout: 60_000 + kills * 20_000 },
+    async () => {
+      const acknowledged = new Map<string, Acknowledged>();
+      let next = 0;
+      for (let kill = 0; kill < kills; kill += 1) {
+        for (const one of await sealAndKill(kill, next)) acknowledged.set(one.key, one);
+        // The device tries again with the same key what it has no answer for.
+        next = acknowledged.size;
+      }
+      expect(acknowledged.size).toBeGreaterThan(kills);
 
-    const stored = await entries.all({ logId: log }, { order: [['seq', 'ASC']] });
-    expect(stored.map(({ seq }) => seq)).toEqual(stored.map((_, index) => index));
-    const byKey = new Map(stored.map((row) => [row.idempotencyKey, row]));
-    for (const { key, seq, leafHash } of acknowledged.values()) {
-      expect(byKey.get(key), `${key} was acknowledged`).toMatchObject({ seq, leafHash });
-    }
-    // At most the one that was under way at the last kill is there without having been acknowledged.
-    expect(stored.length - 1 - acknowledged.size).toBeLessThanOrEqual(1);
+      const stored = await entries.all({ logId: log }, { order: [['seq', 'ASC']] });
+      expect(stored.map(({ seq }) => seq)).toEqual(stored.map((_, index) => index));
+      const byKey = new Map(stored.map((row) => [row.idempotencyKey, row]));
+      for (const { key, seq, leafHash } of acknowledged.values()) {
+        expect(byKey.get(key), `${key} was acknowledged`).toMatchObject({ seq, leafHash });
+      }
+      // At most the one that was under way at the last kill is there without having been acknowledged.
+      expect(stored.length - 1 - acknowledged.size).toBeLessThanOrEqual(1);
 
-    const last = stored.at(-1)!;
-    const again = await appendEntry({ log, kind: 'reading', by: rider, idempotencyKey: last.idempotencyKey, parts: async () => ({}) }); // prettier-ignore
-    expect(again).toMatchObject({ seq: last.seq, leafHash: last.leafHash, isNew: false });
-    await stampingSettled();
-    expect(await checkRecords()).toMatchObject({ problemCount: 0, problems: [], entries: stored.length });
-  });
+      const last = stored.at(-1)!;
+      const again = await appendEntry({ log, kind: 'reading', by: rider, idempotencyKey: last.idempotencyKey, parts: async () => ({}) }); // prettier-ignore
+      expect(again).toMatchObject({ seq: last.seq, leafHash: last.leafHash, isNew: false });
+      await stampingSettled();
+      expect(await checkRecords()).toMatchObject({ problemCount: 0, problems: [], entries: stored.length });
+    },
+  );
 
   it('leaves nothing half-written once the next start has swept', async () => {
     await sweepIncomingBlobs(0);
