@@ -16,6 +16,7 @@ requireCommands(
     sqlite3: 'sqlite3',
     'heif-enc': 'libheif-examples',
     python3: 'python3',
+    unzip: 'unzip',
   },
   'the tests ask outside programs to judge',
 );

@@ -35,7 +35,7 @@ export function ImportPictures({ id, finding, files }: ImportPicturesProps) {
   const entries = finding.entries.filter((entry) => attachmentsOf(entry).length > 0);
   if (entries.length === 0) return null;
   return (
-    <section className="mt-8">
+    <section id="pictures" className="mt-8">
       <h2 className="mb-3">Pictures and papers</h2>
       <ol role="list" className="grid gap-6">
         {entries.map((entry) => (
@@ -44,9 +44,9 @@ export function ImportPictures({ id, finding, files }: ImportPicturesProps) {
               {entry.log === machine ? 'Entry' : 'Shelf, line'} {entry.seq}:{' '}
               <UserText>{entryWords(entry).title}</UserText>
             </h3>
-            <ul role="list" className="flex flex-wrap gap-4">
+            <ul role="list" className="flex flex-wrap gap-3 sm:gap-4">
               {attachmentsOf(entry).map((attachment, index) => (
-                <li key={index} className="w-40">
+                <li key={index} className="w-[6.75rem] sm:w-40">
                   <Picture id={id} attachment={attachment} shown={shownOf(attachment, files)} isThere={files.has(attachment.sha256)} />
                 </li>
               ))}
@@ -70,7 +70,7 @@ function Picture({ id, attachment, shown, isThere }: PictureProps) {
   return (
     <figure>
       {shown === null ? (
-        <span className="tag flex h-40 w-40 items-center justify-center border border-edge bg-sheet p-3 text-center">
+        <span className="tag flex size-[6.75rem] sm:size-40 items-center justify-center border border-edge bg-sheet p-3 text-center">
           {isThere ? 'A paper: it is in the ZIP' : 'Not in the export'}
         </span>
       ) : (
@@ -80,7 +80,7 @@ function Picture({ id, attachment, shown, isThere }: PictureProps) {
             alt={caption === '' ? role : `${role}: ${caption}`}
             loading="lazy"
             decoding="async"
-            className="h-40 w-40 border border-edge bg-steel object-cover"
+            className="size-[6.75rem] sm:size-40 border border-edge bg-steel object-cover"
           />
         </a>
       )}

@@ -11,10 +11,12 @@ export interface ReadmeOptions {
   /** Named in the record, and not to be found on the server when this was made. */
   missing: BundleFile[];
   hasPage: boolean;
+  /** A log in it was sealed under a clock that somebody set: it is a demo. */
+  areTimesInjected: boolean;
 }
 
 /** README.txt of an export: for somebody in fifty years who has nothing but the ZIP. The same bundle, the same text. */
-export function exportReadme({ bundle, which, missing, hasPage }: ReadmeOptions): string {
+export function exportReadme({ bundle, which, missing, hasPage, areTimesInjected }: ReadmeOptions): string {
   const [machine, ...shelves] = bundle.logs;
   const [key = ''] = bundle.verifierKeys;
   const files = bundle.files.filter(({ included }) => included);
@@ -26,6 +28,9 @@ export function exportReadme({ bundle, which, missing, hasPage }: ReadmeOptions)
       'This ZIP file holds the maintenance record of one machine: every service, with what was used, the receipts, and the pictures, as its owner sealed it. It was kept with a program called Witnessmark. You do not need that program to read or to check it.',
     ),
     '',
+    ...(areTimesInjected
+      ? [...wrap('DEMO, TIMES INJECTED. The record was made up to show the program: its times are not the ones at which it was sealed, and nothing in it happened.'), '']
+      : []),
     `Number of this file   ${bundle.number}`,
     `Made                  ${bundle.madeAt} (UTC)`,
     `Entries               ${machine?.entries.length ?? 0} of the machine${shelves.length === 0 ? '' : `, ${shelves.reduce((sum, { entries }) => sum + entries.length, 0)} of ${shelves.length === 1 ? 'the shelf' : `${shelves.length} shelves`} its receipts are on`}`,

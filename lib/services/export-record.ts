@@ -1,5 +1,6 @@
 import 'server-only';
 import { randomInt } from 'node:crypto';
+import { readStoredLogs } from '@/db/queries/entries';
 import type { PersonRow } from '@/db/queries/people';
 import type { Scope } from '@/lib/domain/scope';
 import { authorise } from '@/lib/auth/guard';
@@ -92,7 +93,9 @@ async function gather(machineId: string, which: ExportFiles): Promise<Gathered> 
     }
     const { text, bundle } = await bundleRecord({ ...asked, included });
     if (sizeOf(bundle) !== sizeOf(first)) continue;
-    return { bundle, missing, sources: await sourcesOf({ bundle, text, which, missing }) };
+    const logs = await readStoredLogs(bundle.logs.map(({ id }) => id));
+    const areTimesInjected = logs.some(({ log }) => log.timesInjected);
+    return { bundle, missing, sources: await sourcesOf({ bundle, text, which, missing, areTimesInjected }) };
   }
   throw new WitnessmarkError('conflict', 'The record kept growing while it was read. Ask for the export again.');
 }
@@ -109,10 +112,11 @@ async function sourcesOf(of: {
   text: string;
   which: ExportFiles;
   missing: BundleFile[];
+  areTimesInjected: boolean;
 }): Promise<ZipSource[]> {
-  const { bundle, text, which, missing } = of;
+  const { bundle, text, which, missing, areTimesInjected } = of;
   const page = await readPage();
-  const readme = exportReadme({ bundle, which, missing, hasPage: page !== null });
+  const readme = exportReadme({ bundle, which, missing, hasPage: page !== null, areTimesInjected });
   const files = bundle.files
     .filter(({ included }) => included)
     .map(({ sha256, name, bytes }) => ({ name, bytes, open: () => blobStore.open(sha256) }));

@@ -12,7 +12,10 @@ const mostAround = localHeaderBytes + 255 + 1024 + 16;
  */
 export async function readFromZip<T>(
   file: string,
-  use: (zip: { sizeOf: (name: string) => number | null; read: (name: string) => Promise<Buffer | null> }) => Promise<T>,
+  work: (zip: {
+    sizeOf: (name: string) => number | null;
+    read: (name: string) => Promise<Buffer | null>;
+  }) => Promise<T>,
 ): Promise<T> {
   const handle = await open(file, 'r');
   try {
@@ -20,7 +23,7 @@ export async function readFromZip<T>(
     const end = readZipEnd(await piece(handle, Math.max(0, size - endRecordBytes), endRecordBytes), size);
     const entries = readZipDirectory(await piece(handle, end.offset, end.bytes), end);
     const byName = new Map(entries.map((entry) => [entry.name, entry]));
-    return await use({
+    return await work({
       sizeOf: (name) => byName.get(name)?.bytes ?? null,
       read: async (name) => {
         const entry = byName.get(name);

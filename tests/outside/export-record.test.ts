@@ -107,6 +107,8 @@ describe('an export', () => {
     for (const standard of ['RFC 8785', 'FIPS 180-4', 'RFC 6962', 'RFC 8032', 'RFC 3161', 'RFC 9901', 'signed-note']) {
       expect(readme).toContain(standard);
     }
+    // This record was sealed by the real clock.
+    expect(readme).not.toContain('DEMO');
     const keyLine = bundle.verifierKeys[0]!.length + 2;
     expect(readme.split('\n').filter((line) => line.length > Math.max(79, keyLine))).toEqual([]);
   });

@@ -62,8 +62,10 @@ export default async function ImportedPage({ params }: { params: Promise<{ impor
       <ImportFinding note={note}>
         <ComparedImport compared={note.compared} zone={person.timeZone} />
       </ImportFinding>
+      <div id="entries">
+        <FindingEntries finding={finding} about={aboutLines(recordText)} isTrusted={finding.outcome === 'unchanged'} />
+      </div>
       <ImportPictures id={id} finding={finding} files={files} />
-      <FindingEntries finding={finding} about={aboutLines(recordText)} isTrusted={finding.outcome === 'unchanged'} />
       <p className="kept-together mt-8 max-w-[70ch] border-l-4 border-l-petrol pl-4">{whatIsShown}</p>
     </>
   );
