@@ -110,7 +110,7 @@ export function describeChecks(
         mimeType: 'application/pdf',
         buffer: jpeg,
       });
-      await page.locator('p', { hasText: 'This is a JPEG picture, not a given.record().' }).first().waitFor();
+      await page.locator('p', { hasText: 'This is a JPEG picture, not a record.' }).first().waitFor();
       expect((await check(page, '{"format":"something else"}')).outcome).toBe('unreadable');
       expect(await violations(page)).toEqual([]);
     });
