@@ -20,7 +20,9 @@ export function StrikeEffects({ preview, what = 'entry' }: { preview: StrikePrev
             {what === 'entry' ? 'Entry' : 'Line'} {one} stands again.
           </li>
         ))}
-        {kind === 'service' ? <li>It counts as not done, and its odometer reading no longer counts.</li> : null}
+        {kind === 'service' ? (
+          <li>It counts as not done, and its odometer reading no longer counts: forecasts may move by some days.</li>
+        ) : null}
         {kind === 'purchase' ? <li>Its lots leave the shelf.</li> : null}
         {termsAfter === null ? null : <li>The terms of entry {termsAfter} hold again.</li>}
         {countersigned ? (

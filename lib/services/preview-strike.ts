@@ -19,7 +19,7 @@ export interface StrikePreview {
   refusal: string | null;
   /** Entries that stand again, when a strike is struck. */
   standingAgain: number[];
-  /** Schedule items whose due date or distance changes. */
+  /** What it did on the schedule, and when that falls due then; of terms, whatever changes. */
   due: { title: string; before: string; after: string }[];
   /** What goes back to its lot, and what is taken from one again. */
   returned: string[];
@@ -56,16 +56,29 @@ export async function previewStrike(options: {
   };
 }
 
-async function machineEffects(machineId: string, { lines, linesAfter }: StrikeEffect) {
+async function machineEffects(machineId: string, { lines, linesAfter, withdrawn, standingAgain }: StrikeEffect) {
   const machine = await machineById(machineId);
   if (machine === null) throw notFound('machine');
   const [before, after] = [historyOf('', lines), historyOf('', linesAfter)];
   const earlier = new Map(whatIsDue(machine, before).map(({ item, words }) => [item, words]));
+  // A reading less moves every forecast by some days; listed is only what the work itself was about.
+  const done = itemsOf([...withdrawn, ...standingAgain]);
+  const hasOtherTerms = before.termsSeq !== after.termsSeq;
   const due = whatIsDue(machine, after).flatMap(({ item, title, words }) => {
     const was = earlier.get(item);
-    return was === words ? [] : [{ title, before: was ?? 'not in the schedule', after: words }];
+    return was === words || !(hasOtherTerms || done.has(item))
+      ? []
+      : [{ title, before: was ?? 'not in the schedule', after: words }];
   });
-  return { due, termsAfter: before.termsSeq === after.termsSeq ? null : after.termsSeq };
+  return { due, termsAfter: hasOtherTerms ? after.termsSeq : null };
+}
+
+function itemsOf(lines: StrikeEffect['withdrawn']): Set<string> {
+  const bodies = lines.flatMap((line) =>
+    line.entry.kind === 'service' ? (openedPart<ServiceBody>(line, 'body') ?? []) : [],
+  );
+  const tasks = bodies.flatMap((body) => body.tasks);
+  return new Set(tasks.flatMap(({ scheduleItem, scheduleItems }) => [scheduleItem ?? [], scheduleItems ?? []].flat()));
 }
 
 /** `4.25 US qt of Fernhill V-Twin 20W-50, lot 3`, for every draw of these entries. */
