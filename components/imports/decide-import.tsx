@@ -8,7 +8,7 @@ export interface DecideImportProps {
   keep: FormAction;
   discard: FormAction;
   recheck: FormAction;
-  /** Null: it may not be kept, or is kept already. */
+  /** False: it may not be kept, or is kept already. */
   canKeep: boolean;
   canRecheck: boolean;
 }
@@ -16,6 +16,8 @@ export interface DecideImportProps {
 /** Keep it, throw it away, or check it with a key from elsewhere first. */
 export function DecideImport({ id, keep, discard, recheck, canKeep, canRecheck }: DecideImportProps) {
   const hidden = <input type="hidden" name="import" value={id} />;
+  // Of a file that may not be kept, nothing is here to be thrown away but what was found.
+  const dismiss = canRecheck ? 'Do not keep it' : 'Done';
   return (
     <div className="not-printed grid max-w-[44rem] gap-6">
       <div className="flex flex-wrap gap-2.5">
@@ -24,7 +26,7 @@ export function DecideImport({ id, keep, discard, recheck, canKeep, canRecheck }
             {() => hidden}
           </FormShell>
         ) : null}
-        <FormShell action={discard} submit="Do not keep it" busy="Removing it" look="plain" label="Do not keep it">
+        <FormShell action={discard} submit={dismiss} busy="Removing it" look="plain" label={dismiss}>
           {() => hidden}
         </FormShell>
       </div>

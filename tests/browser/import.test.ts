@@ -106,7 +106,7 @@ describe('on a phone', () => {
 
   it('one that was changed is named and not kept', async () => {
     const bytes = readFileSync(zip);
-    // One letter of the record itself: the check sum no longer fits, so that it is no export at all.
+    // One letter: the ZIP's own check sum no longer fits, so that it is no export at all.
     const broken = path.join(folder, 'broken.zip');
     bytes.writeUInt8(bytes[bytes.indexOf('witnessmark/bundle/1')]! ^ 1, bytes.indexOf('witnessmark/bundle/1'));
     writeFileSync(broken, bytes);

@@ -18,7 +18,10 @@ export const recheckImportAction = formAction(
   async ({ input, person }) => {
     await recheckImport({ person, id: input.import, key: input.key });
     revalidatePath(paths.stagedImport(input.import));
-    return { message: 'It was checked with the key you gave; what was found stands above.', keep: true };
+    return {
+      message: 'It was checked again, with the key you gave. What is shown here is what that found.',
+      keep: true,
+    };
   },
 );
 

@@ -59,6 +59,14 @@ export default async function ImportedPage({ params }: { params: Promise<{ impor
         It is what <bdi>{origin}</bdi> had sealed when the export was made. Nothing can be added to it here, and what
         was sealed or struck there since is not seen here. Before you rely on it, ask for a newer export.
       </Notice>
+      <p className="not-printed mt-3 flex flex-wrap gap-x-5">
+        <a href="#entries" className="link inline-flex min-h-11 items-center">
+          Entries
+        </a>
+        <a href="#pictures" className="link inline-flex min-h-11 items-center">
+          Pictures and papers
+        </a>
+      </p>
       <ImportFinding note={note}>
         <ComparedImport compared={note.compared} zone={person.timeZone} />
       </ImportFinding>
