@@ -18,7 +18,9 @@ export function StrikeRefused({ refusal, uses }: { refusal: string; uses: LotUse
           {[...own.values()].map(({ machine, seq }) => (
             <li key={`${machine.id}:${seq}`}>
               <Link className="link inline-flex min-h-11 items-center" href={paths.entry(machine.id, seq)}>
-                Entry {seq} of the <UserText>{machine.name}</UserText>
+                <span>
+                  Entry {seq} of the <UserText>{machine.name}</UserText>
+                </span>
               </Link>
             </li>
           ))}
