@@ -82,24 +82,28 @@ async function flipOne(flip: number): Promise<{ bySqlite: boolean; byCheck: bool
 }
 
 describe(`${flips} random bit flips`, () => {
-  it('in the database are found wherever they change anything that is sealed', { timeout: 600_000 }, async () => {
-    const missed: string[] = [];
-    let [bySqlite, byCheck] = [0, 0];
-    for (let flip = 0; flip < flips; flip += 1) {
-      const found = await flipOne(flip);
-      if (found.bySqlite) bySqlite += 1;
-      if (found.byCheck) byCheck += 1;
-      if (found.isSame === false) missed.push(`flip ${flip} at byte ${placeOf(flip, pristine.length).byte}`);
-    }
-    await putBack(pristine);
-    expect(missed).toEqual([]);
-    // The store is small and much of its file empty or not sealed; without the check of records fewer would be found.
-    expect(byCheck).toBeGreaterThan(bySqlite);
-    expect(await checkRecords()).toMatchObject({ problemCount: 0 });
-    process.stdout.write(`\n${flips} flips of the database: SQLite found ${bySqlite}, the check ${byCheck}.\n`);
-  });
+  it(
+    'in the database are found wherever they change anything that is sealed',
+    { timeout: 60_000 + flips * 5_000 },
+    async () => {
+      const missed: string[] = [];
+      let [bySqlite, byCheck] = [0, 0];
+      for (let flip = 0; flip < flips; flip += 1) {
+        const found = await flipOne(flip);
+        if (found.bySqlite) bySqlite += 1;
+        if (found.byCheck) byCheck += 1;
+        if (found.isSame === false) missed.push(`flip ${flip} at byte ${placeOf(flip, pristine.length).byte}`);
+      }
+      await putBack(pristine);
+      expect(missed).toEqual([]);
+      // The store is small and much of its file empty or not sealed; without the check of records fewer would be found.
+      expect(byCheck).toBeGreaterThan(bySqlite);
+      expect(await checkRecords()).toMatchObject({ problemCount: 0 });
+      process.stdout.write(`\n${flips} flips of the database: SQLite found ${bySqlite}, the check ${byCheck}.\n`);
+    },
+  );
 
-  it('in stored files are all found, and each names its file', async () => {
+  it('in stored files are all found, and each names its file', { timeout: 60_000 + flipsOfFiles * 5_000 }, async () => {
     const folder = path.join(env.dataFolder, 'blobs');
     const files = readdirSync(folder, { recursive: true, encoding: 'utf8' }).filter((name) =>
       /[0-9a-f]{64}$/.test(name),
