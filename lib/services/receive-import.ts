@@ -45,7 +45,6 @@ export async function receiveImport({ person, fileName, body, declaredBytes }: R
   underWay.add(person.id);
   try {
     await refuseBeforehand(person, declaredBytes);
-    await sweep(person);
     const blob = await receiveBlob(body, maxZipBytes);
     return await stage({ person, fileName, blob, declaredBytes });
   } finally {
@@ -72,6 +71,8 @@ async function stage(of: { person: PersonRow; fileName: string; blob: IncomingBl
     if (!/^PK/.test(blob.head.toString('latin1'))) {
       throw new WitnessmarkError('unsupported-file', 'This is no ZIP file. Give the export as it was downloaded; a packet or a record.json can be checked under “Check a packet”.');
     }
+    // Only now: a file that is refused at once costs nobody what is waiting.
+    await sweep(person);
     await stageImport(id, blob);
     await refuseHugeRecord(id);
     const receivedAt = now().toISOString();

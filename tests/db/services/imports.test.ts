@@ -239,6 +239,12 @@ describe('is not kept', () => {
     expect(readdirSync(path.join(env.dataFolder, 'blobs', 'incoming'))).toEqual([]);
   });
 
+  it('what is refused at once leaves alone what is waiting', async () => {
+    const { id } = await send(zip);
+    await expect(send(Buffer.from('%PDF-1.7'))).rejects.toThrow();
+    expect(waiting()).toContain(id);
+  });
+
   it('one with a record of more than 8 MB', async () => {
     const record = { name: 'record.json', bytes: Buffer.alloc(8_000_001, 32) };
     await expect(send(buildZip([record]))).rejects.toThrow('no more than 8');
