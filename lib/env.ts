@@ -30,9 +30,12 @@ const schema = z.object({
     (value) => (typeof value === 'string' ? [...new Set(value.split(/\s+/).filter((word) => word !== ''))] : value),
     z
       .array(
-        z.union([z.literal('own'), z.url({ protocol: /^https?$/ })], {
-          error: 'addresses beginning with http:// or https://, or the word own, with spaces between',
-        }),
+        z
+          .string()
+          .refine(
+            (word) => word === 'own' || /^https?:$/.test(URL.parse(word)?.protocol ?? ''),
+            'Addresses beginning with http:// or https://, or the word own, with spaces between',
+          ),
       )
       .default([]),
   ),

@@ -73,6 +73,7 @@ describe('stamping checkpoints', () => {
     vi.spyOn(ownAuthority, 'stamp').mockResolvedValue(new Uint8Array([0x30, 0x03, 0x02, 0x01, 0x00]));
     const { log } = await openShelf();
     await stampingSettled();
+    await stampCheckpoint(log, 1);
     expect(await tokens.count({ logId: log })).toBe(0);
     expect((await stampJobs.find({ logId: log }))?.lastError).toContain('The authority did not answer with');
   });

@@ -4,11 +4,13 @@ It shares no code with the project: JSON, SHA-256 and base64 come from Python's 
 signatures and RFC 3161 tokens are judged by the openssl command, packets are opened by poppler's pdfdetach, exports by zipfile. A packet's pages count by the
 one signature in the PDF (ISO 32000-2, 12.8), which openssl judges too.
 
-    python3 independent_verifier.py record.json|packet.pdf|export.zip [--tsa-root root.pem]
+    python3 independent_verifier.py record.json|packet.pdf|export.zip [--tsa-roots roots.pem]
 
-Exit status: 0 unchanged, 1 altered, 2 unreadable. Problems go to standard output, one a line.
+Exit status: 0 unchanged, 1 altered, 2 unreadable. Problems go to standard output, one a line; with roots, then each
+entry's proven time.
 """
 import base64
+import datetime
 import hashlib
 import json
 import os
@@ -140,12 +142,13 @@ def check_note(where, note, key):
 
 
 def check_checkpoint(where, note, key, log, size, hashes):
+    """Whether it is signed and belongs to these lines."""
+    before = len(problems)
     lines = check_note(where, note, key)
-    if lines is None:
-        return
     want = [f"{log['origin']}/{log['id']}", str(size), base64.b64encode(root_of(hashes[:size])).decode()]
-    if lines != want:
+    if lines is not None and lines != want:
         problem(where, f"says {lines}, recomputed {want}")
+    return len(problems) == before
 
 
 PARTS = ["attachments", "author", "body", "contact", "identity", "notes", "prices", "supplier"]
@@ -321,18 +324,69 @@ def check_statements(log, lines):
             problem(where, f"signature made outside the server: {error}")
 
 
-def check_token(where, token, note, tsa_root):
+OWN_AUTHORITY = "Witnessmark test authority (not independent)"
+CLOCK_TOLERANCE = 300
+
+
+def time_of(token_path):
+    """genTime as openssl prints it: (seconds since 1970, ISO with milliseconds)."""
+    text = subprocess.run(["openssl", "ts", "-reply", "-in", token_path, "-token_in", "-text"], capture_output=True,
+                          text=True, check=True).stdout
+    printed = re.search(r"^Time stamp: (\w{3} +\d+ \d\d:\d\d:\d\d)(?:\.(\d+))? (\d{4}) GMT$", text, re.M)
+    if not printed:
+        raise ValueError("a token without a time")
+    moment = datetime.datetime.strptime(f"{printed[1]} {printed[3]} +0000", "%b %d %H:%M:%S %Y %z")
+    thousandths = (printed[2] or "").ljust(3, "0")[:3]
+    return moment.timestamp(), moment.strftime("%Y-%m-%dT%H:%M:%S.") + thousandths + "Z"
+
+
+SHA256_IMPRINTS = [bytes.fromhex("3031300d060960864801650304020105000420"), bytes.fromhex("302f300b0609608648016503040201" "0420")]
+
+
+def check_token(where, token, note, roots):
+    """Names what does not hold of the token itself; returns its time if a root that was brought vouches for it."""
     with tempfile.TemporaryDirectory() as folder:
-        token_path, note_path = os.path.join(folder, "token"), os.path.join(folder, "note")
+        token_path, note_path, signer, content = (os.path.join(folder, name) for name in ("token", "note", "signer", "content"))
         with open(token_path, "wb") as file:
             file.write(b64(token))
         with open(note_path, "wb") as file:
             file.write(note.encode())
-        outcome = subprocess.run(
-            ["openssl", "ts", "-verify", "-data", note_path, "-in", token_path, "-token_in", "-CAfile", tsa_root],
-            capture_output=True, text=True)
-        if outcome.returncode != 0:
-            problem(where, f"openssl refuses the token: {outcome.stderr.strip()}")
+
+        def openssl(*arguments):
+            return subprocess.run(["openssl", *arguments], capture_output=True, text=True, check=True).stdout
+
+        try:
+            # The signature and what it is over; -noverify: not the chain. The signers' certificates are written out.
+            openssl("cms", "-verify", "-noverify", "-binary", "-inform", "DER", "-in", token_path, "-signer", signer,
+                    "-out", content)
+            seconds, time = time_of(token_path)
+            at = ["-attime", str(int(seconds))]
+            # RFC 3161 2.3: valid then, and critically for time stamps alone.
+            openssl("verify", "-purpose", "timestampsign", "-partial_chain", "-trusted", signer, *at, signer)
+            if open(signer).read().count("BEGIN CERTIFICATE") != 1:
+                raise ValueError("not exactly one signer")
+            openssl("x509", "-in", signer, "-outform", "DER", "-out", signer + ".der")
+            der = open(signer + ".der", "rb").read()
+            # RFC 5816 and RFC 2634: the signer's certificate is named by its hash.
+            names = [b"\x04" + bytes([len(hash)]) + hash for hash in (sha256(der), hashlib.sha1(der).digest(),
+                     hashlib.sha384(der).digest(), hashlib.sha512(der).digest())]
+            if not any(name in b64(token) for name in names):
+                raise ValueError("the token names another certificate")
+            if not any(start + sha256(note.encode()) in open(content, "rb").read() for start in SHA256_IMPRINTS):
+                raise ValueError("the token is over something else")
+            if seconds > datetime.datetime.now().timestamp() + CLOCK_TOLERANCE:
+                raise ValueError(f"a token from the future, {time}")
+            carried = openssl("pkcs7", "-inform", "DER", "-in", token_path, "-print_certs")
+        except (ValueError, subprocess.CalledProcessError) as error:
+            problem(where, f"token: {getattr(error, 'stderr', None) or error}")
+            return None
+        if roots is None or re.search(r"^(subject|issuer)=.*CN ?= ?" + re.escape(OWN_AUTHORITY) + r"$", carried, re.M):
+            return None
+        try:
+            openssl("ts", "-verify", "-data", note_path, "-in", token_path, "-token_in", "-CAfile", roots, *at)
+            return time
+        except subprocess.CalledProcessError:
+            return None
 
 
 def check_draws(where, body, purchases):
@@ -345,7 +399,7 @@ def check_draws(where, body, purchases):
                     problem(where, "draws from a purchase that is not in the file")
 
 
-def verify(text, tsa_root):
+def verify(text, roots):
     bundle = parse(text)
     if not isinstance(bundle, dict) or bundle.get("format") != "witnessmark/bundle/1":
         raise ValueError("not a bundle")
@@ -361,9 +415,9 @@ def verify(text, tsa_root):
     if lines is not None and lines != ["witnessmark/bundle/1", bundle["madeAt"], digest]:
         problem("bundle", "the signature is over something else")
 
-    purchases, services, named_files, entries = {}, [], {}, 0
+    purchases, services, named_files, entries, proven = {}, [], {}, 0, []
     for log in bundle["logs"]:
-        hashes, leaves, previous = [], [], None
+        hashes, leaves, previous, stamps = [], [], None, []
         for seq, entry in enumerate(log["entries"]):
             where = f"{log['subject']} {log['id'][:8]} entry {seq}"
             leaf = check_leaf(where, entry["leaf"], log, seq, previous, leaves)
@@ -384,10 +438,13 @@ def verify(text, tsa_root):
                 purchases[(log["id"], seq)] = leaf
             if leaf["kind"] == "service" and "body" in opened:
                 services.append((where, opened["body"]))
-            check_checkpoint(where + " seal", entry["seal"]["checkpoint"], key, log, seq + 1, hashes)
-            if tsa_root:
-                for token in entry["seal"]["tokens"]:
-                    check_token(where, token, entry["seal"]["checkpoint"], tsa_root)
+            is_sealed = check_checkpoint(where + " seal", entry["seal"]["checkpoint"], key, log, seq + 1, hashes)
+            for token in entry["seal"]["tokens"]:
+                time = check_token(where, token, entry["seal"]["checkpoint"], roots)
+                if time is not None and is_sealed:
+                    stamps.append((seq, time))
+        for seq in range(len(log["entries"])):
+            proven.append((log["id"], seq, min((time for at, time in stamps if at >= seq), default=None)))
         check_statements(log, [leaf for leaf in leaves if "opened" in leaf])
         check_checkpoint(f"log {log['id'][:8]}", log["checkpoint"], key, log, len(log["entries"]), hashes)
     for where, body in services:
@@ -395,7 +452,7 @@ def verify(text, tsa_root):
     for file in bundle["files"]:
         if file["derivedFrom"] is None and named_files.get(file["sha256"]) != (file["bytes"], file["mediaType"]):
             problem(f"file {file['name']}", "no opened part names it so")
-    return entries, [file for file in bundle["files"] if file["included"]], bundle["packetCertificate"]
+    return entries, [file for file in bundle["files"] if file["included"]], bundle["packetCertificate"], proven
 
 
 def der_length(data):
@@ -462,7 +519,7 @@ def read_export(path, folder):
 
 def main(arguments):
     path = arguments[0]
-    tsa_root = arguments[arguments.index("--tsa-root") + 1] if "--tsa-root" in arguments else None
+    roots = arguments[arguments.index("--tsa-roots") + 1] if "--tsa-roots" in arguments else None
     with tempfile.TemporaryDirectory() as folder:
         try:
             begins = open(path, "rb").read(5)
@@ -471,7 +528,7 @@ def main(arguments):
                 text = (read_packet if is_packet else read_export)(path, folder)
             else:
                 text = open(path, encoding="utf-8", newline="").read()
-            entries, included, certificate = verify(text, tsa_root)
+            entries, included, certificate, proven = verify(text, roots)
         except (ValueError, KeyError, TypeError, IndexError, subprocess.CalledProcessError, AttributeError,
                 zipfile.BadZipFile) as error:
             print(f"unreadable: {type(error).__name__} {error}")
@@ -489,6 +546,8 @@ def main(arguments):
                 problem(f"file {file['name']}", "is missing or not the bytes it should be")
     for line in problems:
         print(line)
+    for log, seq, time in proven if roots is not None else []:
+        print(f"proven {log} {seq} {time or '-'}")
     print(f"{'altered' if problems else 'unchanged'}: {entries} entries")
     return 1 if problems else 0
 

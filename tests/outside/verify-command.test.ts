@@ -1,12 +1,12 @@
 import { execFile } from 'node:child_process';
-import { createPublicKey, generateKeyPairSync, verify as verifyWithOpenssl } from 'node:crypto';
+import { createPublicKey, verify as verifyWithOpenssl } from 'node:crypto';
 import { copyFile, mkdir, mkdtemp, readFile, rm, writeFile } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import { promisify } from 'node:util';
 import { PDFDocument } from 'pdf-lib';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
-import { fromBase64, joinBytes, toHex } from '@/lib/evidence/bytes';
+import { joinBytes, toBase64, toHex } from '@/lib/evidence/bytes';
 import { fingerprint, parseNote, parseVerifierKey, signNote } from '@/lib/evidence/checkpoint';
 import type { Finding } from '@/lib/evidence/finding';
 import { sha256Hex } from '@/lib/evidence/hash';
@@ -15,6 +15,7 @@ import { buildPage, buildVerify, verifyFile, verifyPageFile } from '@/scripts/bu
 import {
   attacker, buildRecord, givenFiles, installation, keyOf, signedText, unsignedBundle,
 } from '../unit/evidence/build-record'; // prettier-ignore
+import { makeOpensslAuthority, Openssl, opensslToken } from './openssl-authority';
 
 const run = promisify(execFile);
 const key = keyOf(installation);
@@ -117,12 +118,6 @@ describe('the command', () => {
     expect((await verify('record.json', '--key', key, '--against', 'forked.note')).code).toBe(1);
   });
 
-  it('says plainly that it does not check who made a time stamp', async () => {
-    const { code, stdout } = await verify('record.json', '--key', key, '--tsa-roots', 'roots.pem');
-    expect(code).toBe(0);
-    expect(stdout).toContain('Time-stamp trust is not checked by this version');
-  });
-
   it.each([
     [['half.json'], 'UNREADABLE'],
     [['verify.mjs'], 'UNREADABLE'],
@@ -193,53 +188,60 @@ describe('openssl agrees', () => {
   });
 });
 
-it('reads a time stamp that openssl made over a checkpoint', async () => {
-  const { privateKey } = generateKeyPairSync('ec', { namedCurve: 'P-256' });
-  await writeFile(at('tsa.key'), privateKey.export({ format: 'pem', type: 'pkcs8' }));
-  await writeFile(
-    at('tsa.cnf'),
-    [
-      '[req]', 'distinguished_name=dn', 'x509_extensions=ext', 'prompt=no', '[dn]', 'CN=Test authority',
-      '[ext]', 'extendedKeyUsage=critical,timeStamping', '[tsa]', 'default_tsa=t', '[t]', `serial=${at('serial')}`,
-      `signer_cert=${at('tsa.pem')}`, `signer_key=${at('tsa.key')}`, 'signer_digest=sha256', 'default_policy=1.2.3.4.1',
-      'digests=sha256', 'accuracy=secs:1', 'ordering=no', 'tsa_name=no', 'ess_cert_id_chain=no', 'ess_cert_id_alg=sha256',
-    ].join('\n'),
-  ); // prettier-ignore
-  await writeFile(at('serial'), '4D\n');
-  await run('openssl', [
-    'req',
-    '-x509',
-    '-new',
-    '-key',
-    at('tsa.key'),
-    '-out',
-    at('tsa.pem'),
-    '-days',
-    '2',
-    '-config',
-    at('tsa.cnf'),
-  ]);
-  await run('openssl', ['ts', '-query', '-data', at('older.note'), '-sha256', '-cert', '-out', at('q.tsq')]);
-  const reply = ['ts', '-reply', '-config', at('tsa.cnf'), '-section', 't', '-queryfile', at('q.tsq')];
-  await run('openssl', [...reply, '-token_out', '-out', at('token.der')]);
-  const der = await readFile(at('token.der'));
-  const token = readToken(der);
-  const shown = (await run('openssl', ['ts', '-reply', '-in', at('token.der'), '-token_in', '-token_out', '-text']))
-    .stdout;
-  expect(token).toMatchObject({ policy: '1.2.3.4.1', imprintAlgorithm: '2.16.840.1.101.3.4.2.1' });
-  expect(toHex(token.imprint)).toBe(sha256Hex(Buffer.from(note)));
-  expect(isTokenOf(token, note)).toBe(true);
-  expect(shown).toContain(`Serial number: 0x${token.serial.toUpperCase()}`);
-  const printed = /Time stamp: (.*)/.exec(shown)?.[1] ?? '';
-  expect(new Date(printed).toISOString()).toBe(token.genTime);
+describe('a time stamp that openssl made over a checkpoint', () => {
+  const openssl = new Openssl();
+  let der: Uint8Array;
+  beforeAll(async () => {
+    makeOpensslAuthority(openssl, 'P-256');
+    der = opensslToken(openssl, note);
+    const logs = [record.machine.toLog(), record.shelf.toLog()];
+    logs[0]?.entries[0]?.seal.tokens.push(toBase64(der));
+    await writeFile(at('stamped.json'), signedText(unsignedBundle(record, { logs })));
+    await copyFile(openssl.at('root.pem'), at('roots.pem'));
+  });
+  afterAll(() => openssl.remove());
 
-  const logs = [record.machine.toLog(), record.shelf.toLog()];
-  logs[0]?.entries[0]?.seal.tokens.push(der.toString('base64'));
-  await writeFile(at('stamped.json'), signedText(unsignedBundle(record, { logs })));
-  const found = await finding('stamped.json', '--key', key);
-  expect(found.outcome).toBe('unchanged');
-  expect(found.entries[0]?.stampedBy).toEqual([
-    { genTime: token.genTime, serial: token.serial, policy: '1.2.3.4.1', size: 1 },
-  ]);
-  expect(fromBase64(der.toString('base64'))).toHaveLength(der.length);
+  it('is read as openssl prints it', () => {
+    const token = readToken(der);
+    const shown = openssl.run('ts', '-reply', '-in', 'token.der', '-token_in', '-token_out', '-text');
+    expect(token).toMatchObject({ policy: '1.2.3.4.1', imprintAlgorithm: '2.16.840.1.101.3.4.2.1' });
+    expect(toHex(token.imprint)).toBe(sha256Hex(Buffer.from(note)));
+    expect(isTokenOf(token, note)).toBe(true);
+    expect(shown).toContain(`Serial number: 0x${token.serial.toUpperCase()}`);
+    const printed = /Time stamp: (.*)/.exec(shown)?.[1] ?? '';
+    expect(new Date(printed).toISOString()).toBe(token.genTime);
+  });
+
+  it('proves nothing without a root, and the command says how to bring one', async () => {
+    const found = await finding('stamped.json', '--key', key);
+    const { genTime, serial } = readToken(der);
+    expect(found.outcome).toBe('unchanged');
+    expect(found.entries[0]).toMatchObject({ proven: null, stampedBy: [{ genTime, serial, policy: '1.2.3.4.1', size: 1 }] });
+    expect(found.entries[0]?.stampedBy).toMatchObject([{ sha256: sha256Hex(der), signer: 'Quill stamps', trust: 'unknown' }]);
+    const { stdout } = await verify('stamped.json', '--key', key);
+    expect(stdout).toContain('--tsa-roots PEM');
+    expect(stdout).toContain(`not proven (a time stamp says ${genTime})`);
+    expect(stdout).toContain('1 by “Quill stamps”: under no root that you brought');
+  }); // prettier-ignore
+
+  it('proves by the root that is given, which the report names with the fingerprint openssl prints', async () => {
+    const { code, stdout } = await verify('stamped.json', '--key', key, '--tsa-roots', 'roots.pem');
+    expect(code).toBe(0);
+    expect(stdout).toMatch(
+      new RegExp(`, sealed 2026-01-01T08:01:00.000Z, proven to exist by ${readToken(der).genTime}`),
+    );
+    expect(stdout).toContain('1 by “Quill stamps”: independent, under your root “Quill root”');
+    const printed = openssl.run('x509', '-in', 'root.pem', '-noout', '-fingerprint', '-sha256');
+    const digits = (printed.split('=')[1] ?? '').trim().replaceAll(':', '').toLowerCase();
+    expect(stdout).toContain(`root fingerprint ${digits.match(/.{4}/g)?.join(' ')}`);
+  });
+
+  it('is not checked at all with a roots file that cannot be used', async () => {
+    await writeFile(at('empty.pem'), 'none');
+    for (const [file, sentence] of [['empty.pem', 'holds no certificate'], ['missing.pem', 'cannot be opened']] as const) {
+      const { code, stdout, stderr } = await verify('stamped.json', '--key', key, '--tsa-roots', file);
+      expect([code, stdout]).toEqual([2, '']);
+      expect(stderr).toContain(sentence);
+    }
+  }); // prettier-ignore
 });

@@ -1,6 +1,5 @@
 import 'server-only';
 import { createHash } from 'node:crypto';
-import type { TimeStampReq } from 'pkijs';
 import { digestOf } from '@/lib/evidence/digests';
 import { oids } from '@/lib/evidence/oids';
 import { ownAuthorityName } from '@/lib/evidence/own-authority';
@@ -19,7 +18,7 @@ import {
   utf8String,
 } from '@/lib/ports/der';
 import { ownCertificates } from './own-certificates';
-import { parseRequest } from './request';
+import { parseRequest, type StampRequest } from './request';
 import type { TimeStampAuthority } from './time-stamp-authority';
 
 /** PKIFailureInfo, RFC 3161 §2.4.2. */
@@ -38,22 +37,22 @@ export const ownAuthority: TimeStampAuthority = {
 
 /** DER of a TimeStampResp (RFC 3161 §2.4.2); a request that cannot be granted is rejected with its reason. */
 export function answerRequest(der: Uint8Array, certificates = ownCertificates()): Uint8Array {
-  let request: TimeStampReq;
+  let request: StampRequest;
   try {
     request = parseRequest(der);
   } catch {
     return rejection('badDataFormat', 'This is not a time-stamp request in DER.');
   }
-  if (request.version !== 1) return rejection('badRequest', 'Only requests of version 1 are answered.');
-  const digest = digestOf(request.messageImprint.hashAlgorithm.algorithmId);
+  if (request.version !== 1n) return rejection('badRequest', 'Only requests of version 1 are answered.');
+  const digest = digestOf(request.algorithm);
   if (digest === undefined) return rejection('badAlg', 'Digests by SHA-256, SHA-384 and SHA-512 are stamped.');
-  if (request.messageImprint.hashedMessage.valueBlock.valueHexView.length !== digest.bytes) {
+  if (request.digest.length !== digest.bytes) {
     return rejection('badDataFormat', `A digest by ${digest.name} is ${digest.bytes} bytes long.`);
   }
-  if (request.reqPolicy !== undefined && request.reqPolicy !== oids.ownPolicy) {
+  if (request.policy !== null && request.policy !== oids.ownPolicy) {
     return rejection('unacceptedPolicy', `Stamps are made under the policy ${oids.ownPolicy} alone.`);
   }
-  if ((request.extensions?.length ?? 0) > 0) return rejection('unacceptedExtension', 'No extensions are supported.');
+  if (request.hasExtensions) return rejection('unacceptedExtension', 'No extensions are supported.');
   return sequence(sequence(integer(granted)), token(request, certificates));
 }
 
@@ -61,26 +60,22 @@ function rejection(reason: keyof typeof failure, sentence: string): Uint8Array {
   return sequence(sequence(integer(rejected), sequence(utf8String(sentence)), namedBits(failure[reason])));
 }
 
-function token(request: TimeStampReq, chain: CertificateChain): Uint8Array {
+function token(request: StampRequest, chain: CertificateChain): Uint8Array {
   const content = tstInfo(request, chain.subject);
   const digest = createHash('sha256').update(content).digest();
   const signed = signAttributes({ contentType: oids.tstInfo, digest, chain });
-  return contentInfo(signed, { chain, content, withCertificates: request.certReq === true });
+  return contentInfo(signed, { chain, content, withCertificates: request.wantsCertificates });
 }
 
-function tstInfo(request: TimeStampReq, stamperName: Uint8Array): Uint8Array {
-  const imprint = request.messageImprint;
+function tstInfo(request: StampRequest, stamperName: Uint8Array): Uint8Array {
   return sequence(
     integer(1),
     oid(oids.ownPolicy),
-    sequence(
-      sequence(oid(imprint.hashAlgorithm.algorithmId), nullValue()),
-      octetString(imprint.hashedMessage.valueBlock.valueHexView),
-    ),
+    sequence(sequence(oid(request.algorithm), nullValue()), octetString(request.digest)),
     integer(serialNumber()),
     generalizedTime(now()),
     sequence(integer(accuracySeconds)),
-    ...(request.nonce === undefined ? [] : [new Uint8Array(request.nonce.toBER())]),
+    ...(request.nonce === null ? [] : [request.nonce]),
     context(0, context(4, stamperName)),
   );
 }

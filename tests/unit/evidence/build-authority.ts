@@ -1,4 +1,5 @@
 import { createHash, generateKeyPairSync, type KeyObject, randomBytes, sign } from 'node:crypto';
+import { integerOf, octetsOf, readElement, sequenceOf } from '@/lib/evidence/der';
 import { oids } from '@/lib/evidence/oids';
 import {
   bitString, boolean, context, generalizedTime, integer, namedBits, nullValue, octetString, oid, sequence, setOf, utf8String,
@@ -94,6 +95,7 @@ export interface TokenOptions {
   imprintAlgorithm?: string;
   contentType?: string;
   messageDigest?: Uint8Array;
+  nonce?: bigint;
 }
 
 /** DER of a time-stamp token over a text. */
@@ -108,6 +110,7 @@ export function makeToken(text: string, options: TokenOptions): Uint8Array {
     ),
     integer(77),
     generalizedTime(new Date(genTime)),
+    ...(options.nonce === undefined ? [] : [integer(options.nonce)]),
   );
   const signedData = sequence(
     integer(3),
@@ -117,6 +120,13 @@ export function makeToken(text: string, options: TokenOptions): Uint8Array {
     setOf(...signers.map((party) => signerInfo(info, contentType, party, options))),
   );
   return sequence(oid(oids.signedData), context(0, signedData));
+}
+
+/** DER of a granting reply (RFC 3161 §2.4.2) to a request for a SHA-256 digest with a nonce. */
+export function makeReply(request: Uint8Array, options: TokenOptions): Uint8Array {
+  const [, imprint, nonce] = sequenceOf(readElement(new Uint8Array(request)));
+  const asked = { imprint: octetsOf(sequenceOf(imprint)[1]), nonce: integerOf(nonce) };
+  return sequence(sequence(integer(0)), makeToken('', { ...asked, ...options }));
 }
 
 function signerInfo(info: Uint8Array, contentType: string, party: Party, options: TokenOptions): Uint8Array {
