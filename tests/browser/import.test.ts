@@ -88,7 +88,9 @@ describe('on a phone', () => {
   it('its pictures are shown, and what is shown was made anew', async () => {
     const picture = page.getByRole('img', { name: /^Odometer/ });
     await picture.scrollIntoViewIfNeeded();
-    await expect.poll(() => picture.evaluate((one: HTMLImageElement) => one.naturalWidth)).toBeGreaterThan(0);
+    await expect
+      .poll(() => picture.evaluate((one: HTMLImageElement) => one.naturalWidth), { timeout: 60_000 })
+      .toBeGreaterThan(0);
     const address = await picture.getAttribute('src');
     const answer = await page.request.get(server.url + address!);
     expect(answer.headers()).toMatchObject({ 'content-type': 'image/webp', 'x-content-type-options': 'nosniff' });
