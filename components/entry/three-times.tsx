@@ -15,7 +15,7 @@ export interface ThreeTimesProps {
 
 /** What is claimed, what this installation's clock says, and what anybody else can confirm. */
 export function ThreeTimes({ claimed, claimedLabel = 'Claimed', sealedAt, tokens, zone }: ThreeTimesProps) {
-  const proven = provenWords(tokens, zone);
+  const proven = provenWords(tokens, { zone, sealedAt });
   return (
     <Boxes columns={claimed === undefined ? 2 : 3} isOneColumnOnPhone label="Three times">
       {claimed === undefined ? null : (

@@ -58,15 +58,21 @@ export function stamperWords({
 export const stampToComeWords = (authority: string): string =>
   `Still to come from ${authority === ownAuthorityName ? 'this installation’s own test authority' : authority}`;
 
+/** From here on a verifier calls a stamp late (72 hours). */
+const lateDays = 3;
+const millisecondsInDay = 86_400_000;
+
 /** The third time: proven by the earliest independent stamp, else not, and why. */
 export function provenWords(
   tokens: readonly TokenView[],
-  zone: string,
+  { zone, sealedAt }: { zone: string; sealedAt: string },
 ): { words: string; note: string; isProven: boolean } {
   const earliest = [...tokens].sort((a, b) => a.genTime.localeCompare(b.genTime));
   const independent = earliest.find(({ isIndependent }) => isIndependent);
   if (independent !== undefined) {
-    const note = `No later than this, by ${stamperWords(independent)}: check it with a root of your own`;
+    const days = Math.floor((Date.parse(independent.genTime) - Date.parse(sealedAt)) / millisecondsInDay);
+    const late = days < lateDays ? '' : `${days} days after sealing, `;
+    const note = `No later than this, ${late}by ${stamperWords(independent)}: check it with a root of your own`;
     return { words: formatInstant(independent.genTime, zone), note, isProven: true };
   }
   const first = earliest.find(({ isOwnAuthority }) => !isOwnAuthority) ?? earliest[0];

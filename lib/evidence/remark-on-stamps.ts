@@ -59,7 +59,7 @@ export function remarkOnStamps(logs: readonly WalkedLog[], trust: StampTrust, fi
   }
   if (count('unknown') > 0) {
     const why = trust.roots.length === 0 ? 'no root was brought to check it by' : 'no root that was brought vouches for it';
-    const sentence = `${timeStamps(count('unknown'))} made for this record, but by whom was not established: ${why}.`;
+    const sentence = `${timeStamps(count('unknown'), 'was', 'were')} made for this record, but by whom was not established: ${why}.`;
     findings.remark('authority-unknown', sentence, { count: count('unknown') });
   }
   sayWhatWasNotChecked(trust, stamps.length, count('independent'), findings);
@@ -122,4 +122,5 @@ function remarkOnClock(log: WalkedLog, { seq, leaf, stamps }: WalkedLine, findin
   findings.remark('clock-off', sentence, { log: log.source.id, seq });
 }
 
-const timeStamps = (count: number): string => (count === 1 ? '1 time stamp is' : `${count} time stamps are`);
+const timeStamps = (count: number, is = 'is', are = 'are'): string =>
+  count === 1 ? `1 time stamp ${is}` : `${count} time stamps ${are}`;

@@ -15,28 +15,36 @@ const stamp = (authority: string, genTime: string, change: Partial<TokenView> = 
 });
 const own = stamp('demo.example', '2025-10-20T00:04:11.000Z', { isOwnAuthority: true });
 
+const at = { zone, sealedAt: '2025-10-20T00:00:00.000Z' };
+
 describe('provenWords', () => {
   it('prove by the earliest independent stamp, whatever an earlier one of others says', () => {
     const unknown = stamp('a.example', '2019-05-01T00:00:00.000Z');
     const root = { isIndependent: true, rootName: 'Quill root' };
     const late = stamp('b.example', '2025-10-21T00:05:00.000Z', root);
     const early = stamp('c.example', '2025-10-20T00:05:00.000Z', root);
-    expect(provenWords([own, unknown, late, early], zone)).toEqual({
+    expect(provenWords([own, unknown, late, early], at)).toEqual({
       words: '19 Oct 2025 18:05',
       note: 'No later than this, by c.example, under Quill root, which this installation trusts: check it with a root of your own',
       isProven: true,
     });
   });
+  it('say how late a stamp is from three days on, as the verifier does', () => {
+    const noteAt = (genTime: string) =>
+      provenWords([stamp('c.example', genTime, { isIndependent: true, rootName: 'Quill root' })], at).note;
+    expect(noteAt('2025-10-22T23:59:59.999Z')).toMatch(/^No later than this, by c.example/);
+    expect(noteAt('2025-10-23T00:00:00.000Z')).toMatch(/^No later than this, 3 days after sealing, by c.example/);
+  });
   it('call nothing proven by an authority that no root vouches for, nor by the own one', () => {
     const other = stamp('stamps.example', '2025-10-20T00:05:00.000Z');
-    expect(provenWords([own, other], zone)).toEqual({
+    expect(provenWords([own, other], at)).toEqual({
       words: 'Not proven',
       note: 'Stamped 19 Oct 2025 18:05 by stamps.example, under no root that this installation trusts: check it with a root of your own',
       isProven: false,
     });
-    expect(provenWords([own], zone)).toMatchObject({ words: 'Not proven', isProven: false });
-    expect(provenWords([own], zone).note).toMatch(/own test authority, not independent$/);
-    expect(provenWords([], zone)).toEqual({
+    expect(provenWords([own], at)).toMatchObject({ words: 'Not proven', isProven: false });
+    expect(provenWords([own], at).note).toMatch(/own test authority, not independent$/);
+    expect(provenWords([], at)).toEqual({
       words: 'Not proven',
       note: 'The time stamp is still to come',
       isProven: false,
@@ -47,7 +55,7 @@ describe('provenWords', () => {
       stamp('a.example', '2025-10-21T00:00:00.000Z'),
       stamp('b.example', '2025-10-20T00:00:00.000Z'),
     ];
-    expect(provenWords([late, early], zone).note).toContain('by b.example');
+    expect(provenWords([late, early], at).note).toContain('by b.example');
   });
 });
 
