@@ -1,4 +1,5 @@
 import 'server-only';
+import type { Readable } from 'node:stream';
 
 /**
  * A response's body that takes the next piece only when the reader has room for it, so that a slow reader costs no
@@ -19,4 +20,9 @@ export function pullStream(source: AsyncGenerator<Uint8Array, void, void>): Read
     },
     { highWaterMark: 1 },
   );
+}
+
+/** A stream's bytes for `pullStream`; one that is left early is closed. */
+export async function* piecesOf(stream: Readable): AsyncGenerator<Uint8Array, void, void> {
+  for await (const piece of stream) yield piece as Uint8Array;
 }

@@ -1,8 +1,8 @@
 import 'server-only';
-import { Readable } from 'node:stream';
 import { findFile, uploadVisibleFrom } from '@/db/queries/uploads';
 import { notFound } from '@/lib/errors';
 import { blobStore } from '@/lib/ports/blob-store';
+import { piecesOf, pullStream } from '@/lib/services/pull-stream';
 
 export type FileKind = 'thumb' | 'plate' | 'copy' | 'original';
 
@@ -37,7 +37,7 @@ async function openStored(sha256: string, kind: FileKind, name: string): Promise
   const isShown = kind === 'thumb' || kind === 'plate';
   const shownName = kind === 'original' ? name : `${sha256.slice(0, 16)}.jpg`;
   return {
-    body: Readable.toWeb(blobStore.open(sha256)) as ReadableStream,
+    body: pullStream(piecesOf(blobStore.open(sha256))),
     headers: {
       'Content-Type': file.mediaType,
       'Content-Length': String(file.bytes),

@@ -1,12 +1,12 @@
 import 'server-only';
 import { createReadStream } from 'node:fs';
 import { stat } from 'node:fs/promises';
-import { Readable } from 'node:stream';
 import type { PersonRow } from '@/db/queries/people';
 import { findPacket, type PacketRow } from '@/db/queries/packets';
 import { authorise } from '@/lib/auth/guard';
 import { WitnessmarkError, notFound } from '@/lib/errors';
 import { packetFile } from '@/lib/services/build-packet';
+import { piecesOf, pullStream } from '@/lib/services/pull-stream';
 
 export interface PacketProgress {
   id: string;
@@ -60,7 +60,7 @@ export async function openPacketFile(packet: PacketRow): Promise<{ body: Readabl
   );
   if (size === null) throw new WitnessmarkError('gone', 'The file of this packet is gone. Ask for a new one.');
   return {
-    body: Readable.toWeb(createReadStream(file)) as ReadableStream,
+    body: pullStream(piecesOf(createReadStream(file))),
     headers: {
       'Content-Type': 'application/pdf',
       'Content-Length': String(size),
