@@ -11,7 +11,9 @@ describe('erasing', () => {
     const text = erasureText({ part: 'notes', of: 'entry 7', reason: '' });
     expect(text).toMatch(/^Erased for good: the notes of entry 7\./);
     expect(text).not.toContain('Reason');
-    expect(erasureText({ part: 'notes', of: 'entry 7', reason: 'Asked for.' })).toBe(`${text} Reason given: Asked for.`);
+    expect(erasureText({ part: 'notes', of: 'entry 7', reason: 'Asked for.' })).toBe(
+      `${text} Reason given: Asked for.`,
+    );
   });
 
   it.each([
