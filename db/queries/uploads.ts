@@ -42,14 +42,22 @@ export async function insertUpload(upload: UploadRow, named: FileRow[], transact
 
 /** The upload behind an original, a shared copy or a thumb, if it belongs to that machine or shelf. */
 export async function uploadVisibleFrom(sha256: string, subjectId: string): Promise<UploadRow | null> {
-  // A machine also shows the receipts of what was drawn for it, though they lie on a shelf.
+  // A machine also shows the receipts of what was drawn for it, though they lie on a shelf, and what was sealed about
+  // them later: `about` finds the purchase behind a line, however many lines refer to one another.
   const rows = await database().query<{ id: string }>(
-    `SELECT u.id FROM uploads u JOIN drafts d ON d.id = u.draft_id
-      WHERE (u.sha256 = :sha256 OR u.copy_sha256 = :sha256 OR u.thumb_sha256 = :sha256)
-        AND (d.subject_id = :subjectId OR EXISTS (
-          SELECT 1 FROM draws w JOIN logs l ON l.id = w.machine_log
-          WHERE l.subject_id = :subjectId AND w.shelf_log = d.sealed_log AND w.purchase_seq = d.sealed_seq))
-      LIMIT 1`,
+    `WITH RECURSIVE found AS (
+        SELECT u.id, d.subject_id, d.sealed_log, d.sealed_seq FROM uploads u JOIN drafts d ON d.id = u.draft_id
+         WHERE u.sha256 = :sha256 OR u.copy_sha256 = :sha256 OR u.thumb_sha256 = :sha256),
+      about (id, log_id, seq) AS (
+        SELECT id, sealed_log, sealed_seq FROM found WHERE sealed_seq IS NOT NULL
+        UNION SELECT a.id, a.log_id, e.refers_to_seq FROM about a JOIN entries e ON e.log_id = a.log_id AND e.seq = a.seq
+         WHERE e.refers_to_seq IS NOT NULL)
+      SELECT f.id FROM found f
+       WHERE f.subject_id = :subjectId OR EXISTS (
+         SELECT 1 FROM about a JOIN draws w ON w.shelf_log = a.log_id AND w.purchase_seq = a.seq
+           JOIN logs l ON l.id = w.machine_log
+          WHERE a.id = f.id AND l.subject_id = :subjectId)
+       LIMIT 1`,
     { type: QueryTypes.SELECT, replacements: { sha256, subjectId } },
   );
   return rows[0] === undefined ? null : findUpload(rows[0].id);

@@ -1,4 +1,5 @@
-import { openedParts, partsOpened, type Scope, type ScopeLine } from './scope';
+import { openedParts, type Scope, type ScopeLine } from './scope';
+import { openedShelfParts } from './shelf-scope';
 
 /** What nobody can search: pictures, and texts in a person's own words. */
 export interface FreeContent {
@@ -11,6 +12,8 @@ export type OpenableLine = ScopeLine & FreeContent;
 export interface OpenablePurchase {
   line: OpenableLine;
   usedBy: readonly number[];
+  /** What was said of it later, on the shelf's log. */
+  saidOfIt?: readonly OpenableLine[];
 }
 
 export interface ScopeEffect extends FreeContent {
@@ -41,6 +44,10 @@ export function scopeEffect(
     else effect.withheld += 1;
     count(line, parts.get(line.seq) ?? new Set());
   }
-  for (const { line, usedBy } of purchases) if (usedBy.some(isOpen)) count(line, partsOpened(scope, line));
+  for (const { line, usedBy, saidOfIt = [] } of purchases) {
+    if (!usedBy.some(isOpen)) continue;
+    const onShelf = openedShelfParts(scope, [line, ...saidOfIt], new Set([line.seq]));
+    for (const one of [line, ...saidOfIt]) count(one, onShelf.get(one.seq) ?? new Set());
+  }
   return effect;
 }

@@ -49,6 +49,8 @@ export interface ScopeLine {
   identifying: readonly PartName[];
   /** Its attachments hold a receipt, a work order or another paper. */
   hasPapers: boolean;
+  /** It stands, and its attachments are blacked-out copies, all of them. Absent: no. */
+  isBlackedOut?: boolean;
 }
 
 /** On these everything else stands, and a strike out of sight would be a withdrawal out of sight. */
@@ -99,9 +101,13 @@ export function partsOpened(scope: Scope, line: ScopeLine): ReadonlySet<PartName
   return line.parts.includes('body') && !parts.has('body') ? nothing : parts;
 }
 
-/** One part holds all attachments of a line, so one paper among them closes them all. */
-function areClosed(closed: ReadonlySet<ClosedChoice>, { kind, hasPapers }: ScopeLine): boolean {
-  if (kind === 'purchase') return closed.has('receipt-pictures');
+/**
+ * One part holds all attachments of a line, so one paper among them closes them all. Blacked-out copies were made to be
+ * shown where the pictures are not.
+ */
+function areClosed(closed: ReadonlySet<ClosedChoice>, { kind, hasPapers, isBlackedOut }: ScopeLine): boolean {
+  if (isBlackedOut === true) return false;
+  if (kind === 'purchase' || kind === 'correction') return closed.has('receipt-pictures');
   return closed.has('pictures') || (hasPapers && closed.has('receipt-pictures'));
 }
 

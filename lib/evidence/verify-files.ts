@@ -14,6 +14,8 @@ export interface GivenFile {
 /** What lies at the top of an export beside the record, for whoever finds it later. */
 export const companionNames: readonly string[] = ['README.txt', 'verify.mjs', 'verify.html'];
 type FileNote = Pick<BundleFile, 'sha256' | 'bytes' | 'mediaType'>;
+/** A file as an opened part names it, and the words for the entry that holds the part. */
+type SealedFile = FileNote & { where: string };
 
 /**
  * Checks the listed files against the attachments and copies that opened parts name, and the given bytes against the
@@ -70,14 +72,16 @@ export function checkFiles(
   }
 }
 
-function checkListed(file: BundleFile, sealed: Map<string, FileNote[]>, findings: Findings): void {
+function checkListed(file: BundleFile, sealed: Map<string, SealedFile[]>, findings: Findings): void {
   const notes = sealed.get(file.sha256);
   if (file.derivedFrom !== null) {
     if (!sealed.has(file.derivedFrom)) {
       const sentence = `The file “${file.name}” is said to be a copy of something that no opened entry names.`;
       findings.alter('file-unbound', {}, sentence, `derivedFrom ${file.derivedFrom} is in no opened part`);
-    } else if (notes === undefined) {
-      const sentence = `The file “${file.name}” is a copy made later by the installation; it was not sealed itself.`;
+    } else {
+      const made = `The file “${file.name}” was made later by the installation from the file with SHA-256 ${file.derivedFrom.slice(0, 16)}…`;
+      const [note] = notes ?? [];
+      const sentence = note === undefined ? `${made}; it was not sealed itself.` : `${made}; sealed in ${note.where}.`;
       findings.remark('copy-by-installation', sentence, { count: 1 });
     }
   }
@@ -96,20 +100,24 @@ function checkListed(file: BundleFile, sealed: Map<string, FileNote[]>, findings
   }
 }
 
-function sealedFiles(logs: OpenedLog[]): Map<string, FileNote[]> {
-  const sealed = new Map<string, FileNote[]>();
-  const add = (note: FileNote) => {
-    const notes = sealed.get(note.sha256);
-    if (notes === undefined) sealed.set(note.sha256, [note]);
+function sealedFiles(logs: OpenedLog[]): Map<string, SealedFile[]> {
+  const sealed = new Map<string, SealedFile[]>();
+  const add = (file: FileNote, where: string) => {
+    const note = { sha256: file.sha256, bytes: file.bytes, mediaType: file.mediaType, where };
+    const notes = sealed.get(file.sha256);
+    if (notes === undefined) sealed.set(file.sha256, [note]);
     else notes.push(note);
   };
-  for (const { opened } of logs.flatMap((log) => log.parts)) {
-    const attachments = opened.get('attachments');
-    if (!isAttachments(attachments)) continue;
-    for (const attachment of attachments) {
-      add(attachment);
-      if (attachment.copy !== undefined) add(attachment.copy);
-    }
+  for (const { source, parts } of logs) {
+    parts.forEach(({ opened }, seq) => {
+      const attachments = opened.get('attachments');
+      if (!isAttachments(attachments)) return;
+      const where = source.subject === 'machine' ? `entry ${seq}` : `line ${seq} of the shelf’s log`;
+      for (const attachment of attachments) {
+        add(attachment, where);
+        if (attachment.copy !== undefined) add(attachment.copy, where);
+      }
+    });
   }
   return sealed;
 }

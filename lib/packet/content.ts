@@ -69,7 +69,10 @@ export function nameFiles(record: RecordView): Map<string, { name: string; media
   };
   for (const { seq, attachments } of record.entries) take(String(seq), attachments);
   for (const { purchases } of record.shelves) {
-    for (const { seq, attachments } of purchases) take(`receipt-${seq}`, attachments);
+    for (const { seq, attachments, corrections } of purchases) {
+      take(`receipt-${seq}`, attachments);
+      for (const later of corrections) take(`receipt-${later.seq}`, later.attachments);
+    }
   }
   return named;
 }

@@ -6,9 +6,12 @@ import pLimit, { type LimitFunction } from 'p-limit';
 import sharp from 'sharp';
 
 /** A 50-megapixel picture is past any phone's; a bomb of 256 is refused before it is unpacked. */
-const mostPixels = 50_000_000;
+export const mostPixels = 50_000_000;
+/** How every shared copy is encoded. */
+export const copyJpeg = { quality: 78, progressive: false } as const;
 const plateEdge = 1600;
 const thumbEdge = 320;
+const fit = { fit: 'inside', withoutEnlargement: true } as const;
 const heicTimeoutMilliseconds = 20_000;
 
 sharp.concurrency(1);
@@ -20,7 +23,7 @@ sharp.unblock({
 
 /** Hashing passwords, pictures and the database share four threads: one picture at a time leaves room for a seal. */
 const shared = globalThis as typeof globalThis & { witnessmarkImageQueue?: LimitFunction };
-const oneAtATime = () => (shared.witnessmarkImageQueue ??= pLimit(1));
+export const oneAtATime = () => (shared.witnessmarkImageQueue ??= pLimit(1));
 
 export type PictureType = 'image/jpeg' | 'image/png' | 'image/webp' | 'image/heic';
 export type KnownType = PictureType | 'application/pdf';
@@ -72,15 +75,14 @@ export function readPicture(source: Buffer | (() => Promise<Buffer>), type: Pict
         : sharp(decoded.data, { raw: { width: decoded.width, height: decoded.height, channels: 4 } });
     const metadata = decoded === null ? await open().metadata() : { width: decoded.width, height: decoded.height };
     const exif = readExif('exif' in metadata ? metadata.exif : undefined);
-    const fit = { fit: 'inside', withoutEnlargement: true } as const;
     const copy = await open()
       .autoOrient()
       .flatten({ background: '#ffffff' })
       .resize(plateEdge, plateEdge, fit)
       .toColourspace('srgb')
-      .jpeg({ quality: 78, progressive: false })
+      .jpeg(copyJpeg)
       .toBuffer();
-    const thumb = await sharp(copy).resize(thumbEdge, thumbEdge, fit).webp({ quality: 70 }).toBuffer();
+    const thumb = await thumbOf(copy);
     const turned = 'orientation' in metadata && (metadata.orientation ?? 1) >= 5;
     return {
       width: turned ? metadata.height : metadata.width,
@@ -92,6 +94,10 @@ export function readPicture(source: Buffer | (() => Promise<Buffer>), type: Pict
     };
   });
 }
+
+/** The small picture for lists, made from a shared copy and from nothing else. */
+export const thumbOf = (copy: Buffer): Promise<Buffer> =>
+  sharp(copy).resize(thumbEdge, thumbEdge, fit).webp({ quality: 70 }).toBuffer();
 
 function readExif(block: Buffer | undefined): { takenAt?: CameraTime; removed: string[] } {
   if (block === undefined) return { removed: [] };

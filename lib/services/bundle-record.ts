@@ -1,5 +1,6 @@
 import 'server-only';
 import type { StoredLog } from '@/db/queries/entries';
+import { blackedOutFrom } from '@/lib/domain/blacked-out';
 import { usualScope, type Scope } from '@/lib/domain/scope';
 import { bundleText, signBundle } from '@/lib/evidence/bundle';
 import {
@@ -93,7 +94,10 @@ function signedBy(note: string, signer: NoteSigner, key: string): string {
   return isNoteOf(parsed, parseVerifierKey(key)) ? note : signNote(parsed.text, signer);
 }
 
-/** Every attachment and shared copy that an opened part names, each once. */
+/**
+ * Every attachment and shared copy that an opened part names, each once. A blacked-out picture says which copy it was
+ * made from, if that is named here too: what stays closed is not pointed at.
+ */
 function bundleFiles(entries: OpenedEntry[], included: Map<string, string>): BundleFile[] {
   const files = new Map<string, BundleFile>();
   const add = ({ sha256, bytes, mediaType }: { sha256: string; bytes: number; mediaType: string }) => {
@@ -109,9 +113,14 @@ function bundleFiles(entries: OpenedEntry[], included: Map<string, string>): Bun
       derivedFrom: null,
     });
   };
-  for (const attachment of entries.flatMap(attachmentsOf)) {
+  const attachments = entries.flatMap(attachmentsOf);
+  for (const attachment of attachments) {
     add(attachment);
     if (attachment.copy !== undefined) add(attachment.copy);
+  }
+  for (const attachment of attachments) {
+    const [from, file] = [blackedOutFrom(attachment), files.get(attachment.sha256)];
+    if (from !== null && file !== undefined && files.has(from)) file.derivedFrom = from;
   }
   const stray = [...included.keys()].find((sha256) => !files.has(sha256));
   if (stray !== undefined) throw new Error(`The file ${stray} belongs to no opened entry, so it cannot be included.`);

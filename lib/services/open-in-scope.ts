@@ -2,7 +2,8 @@ import 'server-only';
 import { readStoredLogs, type StoredLog } from '@/db/queries/entries';
 import { findLogOf } from '@/db/queries/logs';
 import { isPersonId } from '@/lib/domain/person-id';
-import { openedParts, partsOpened, type Scope, type ScopeLine } from '@/lib/domain/scope';
+import { openedParts, type Scope, type ScopeLine } from '@/lib/domain/scope';
+import { openedShelfParts } from '@/lib/domain/shelf-scope';
 import { namesAnyOf, numbersAnyOf } from '@/lib/domain/spelled-out';
 import { notFound } from '@/lib/errors';
 import type { CountersignatureBody, IdentityPart, PartName, ServiceBody } from '@/lib/evidence/format';
@@ -51,11 +52,8 @@ export async function openInScope({ machineId, scope }: { machineId: string; sco
   const shelves = wholeShelves.flatMap((shelf): ScopedShelf[] => {
     const usedBy = drawn.get(shelf.stored.log.id);
     if (usedBy === undefined) return [];
-    const parts = new Map(
-      shelf.whole
-        .filter(({ leaf, kind }) => kind === 'purchase' && usedBy.has(leaf.seq))
-        .map((entry) => [entry.leaf.seq, partsOpened(scope, scopeLine(entry, spelledOut))]),
-    );
+    const shelfLines = shelf.whole.map((entry) => scopeLine(entry, spelledOut));
+    const parts = openedShelfParts(scope, shelfLines, new Set(usedBy.keys()));
     const isShown = (part: PartName, seq: number) => parts.get(seq)?.has(part) === true;
     return [{ stored: shelf.stored, isOpen: isShown, entries: keepOpened(shelf.whole, isShown), usedBy }];
   });

@@ -1,5 +1,5 @@
 import 'server-only';
-import { lastCheckpoint, findLogOf } from '@/db/queries/logs';
+import { lastCheckpoint } from '@/db/queries/logs';
 import { usualScope, type Scope } from '@/lib/domain/scope';
 import { storeScope } from '@/lib/domain/stored-scope';
 import { notFound } from '@/lib/errors';
@@ -44,7 +44,8 @@ interface ShownFile {
   seqs: Set<number>;
 }
 interface Remembered {
-  size: number;
+  /** Of the machine's log and of those of its shelves: whatever is sealed on one may show another file. */
+  sizes: Map<string, number>;
   readAtMs: number;
   files: Map<string, ShownFile>;
 }
@@ -55,11 +56,11 @@ const mostRemembered = 20;
 const longestMemoryMs = 30_000;
 
 async function filesShown(machineId: string, scope: Scope): Promise<Map<string, ShownFile>> {
-  const log = await findLogOf(machineId);
-  const size = log === null ? 0 : ((await lastCheckpoint(log.id))?.size ?? 0);
   const key = `${machineId} ${storeScope(scope) ?? 'usual'}`;
   const known = remembered.get(key);
-  if (known?.size === size && performance.now() - known.readAtMs < longestMemoryMs) return known.files;
+  if (known !== undefined && performance.now() - known.readAtMs < longestMemoryMs && (await isNewest(known))) {
+    return known.files;
+  }
 
   const record = await readRecord({ machineId, scope });
   const files = new Map<string, ShownFile>();
@@ -72,9 +73,17 @@ async function filesShown(machineId: string, scope: Scope): Promise<Map<string, 
     }
   };
   for (const { attachments, seq } of record.entries) take(attachments, [seq]);
-  for (const { purchases } of record.shelves) for (const one of purchases) take(one.attachments, one.usedBy);
+  for (const one of record.shelves.flatMap(({ purchases }) => purchases)) {
+    take([...one.attachments, ...one.corrections.flatMap(({ attachments }) => attachments)], one.usedBy);
+  }
 
+  const sizes = new Map([record.log, ...record.shelves.map(({ log }) => log)].map(({ id, size }) => [id, size]));
   if (remembered.size >= mostRemembered) remembered.clear();
-  remembered.set(key, { size: record.log.size, readAtMs: performance.now(), files });
+  remembered.set(key, { sizes, readAtMs: performance.now(), files });
   return files;
+}
+
+async function isNewest({ sizes }: Remembered): Promise<boolean> {
+  for (const [log, size] of sizes) if ((await lastCheckpoint(log))?.size !== size) return false;
+  return true;
 }

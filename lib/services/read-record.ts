@@ -7,10 +7,7 @@ import type {
   CountersignatureBody,
   IdentityPart,
   OpeningBody,
-  PricesPart,
-  PurchaseBody,
   ShelfOpeningBody,
-  SupplierPart,
   TermsBody,
 } from '@/lib/evidence/format';
 import { entryTitle } from '@/lib/services/entry-title';
@@ -25,7 +22,8 @@ import {
   openStoredLog,
 } from '@/lib/services/open-stored-log';
 import { withOwnSignatures } from '@/lib/services/own-signatures';
-import type { BodyOf, EntryView, LogView, PurchaseView, RecordView, ShelfEntryView } from '@/lib/services/record-view';
+import type { BodyOf, EntryView, LogView, RecordView, ShelfEntryView } from '@/lib/services/record-view';
+import { purchaseViews } from '@/lib/services/purchase-view';
 import { type NameOf, nameOfPeople, withInviter, withPerformers } from '@/lib/services/names-of-people';
 
 /**
@@ -51,9 +49,7 @@ export async function readRecord({
   }
   const newestTerms = opened.findLast(({ leaf, struckBy }) => struckBy === null && termsBySeq.has(leaf.seq));
   const shelves = drawnFrom.map(({ stored: shelf, entries, usedBy }) => {
-    const purchases = entries
-      .filter(({ kind, leaf }) => kind === 'purchase' && usedBy.has(leaf.seq))
-      .flatMap((line) => purchaseView(shelf.log.id, line, usedBy.get(line.leaf.seq) ?? []) ?? []);
+    const purchases = purchaseViews(entries, usedBy).filter(({ seq }) => usedBy.has(seq));
     return { log: logView(shelf), purchases, size: shelf.entries.length, partsWithheld: partsWithheldIn(entries) };
   });
   const { make, model, modelYear, kindOfMachine } = opening;
@@ -85,6 +81,7 @@ export async function readShelf({
   const stored = await readLogOf('shelf', shelfId);
   const opened = openStoredLog(stored);
   const opening = opened[0]?.values.get('body') as ShelfOpeningBody | undefined;
+  const purchases = new Map(purchaseViews(opened).map((one) => [one.seq, one]));
   return {
     log: logView(stored),
     name: opening?.name ?? 'Shelf',
@@ -95,11 +92,11 @@ export async function readShelf({
       const base = { log: leaf.log, seq: leaf.seq, kind, sealedAt: leaf.sealedAt, leafHash, tokens, ...marks };
       if (kind === 'opening')
         return { ...base, ...(opening === undefined ? {} : { opening }), author: authorOf(entry) };
-      const purchase = kind === 'purchase' ? purchaseView(leaf.log, entry, []) : null;
+      const purchase = purchases.get(leaf.seq);
       const body = kind === 'purchase' ? undefined : values.get('body');
       return {
         ...base,
-        ...(purchase === null ? {} : { purchase }),
+        ...(purchase === undefined ? {} : { purchase }),
         ...(body === undefined ? {} : { body }),
         author: authorOf(entry),
         refersTo: leaf.refersTo,
@@ -170,27 +167,4 @@ function readableBody(sealed: BodyOf, nameOf: NameOf): BodyOf {
   if (sealed.body === null) return sealed;
   if (sealed.kind === 'service') return { ...sealed, body: withPerformers(sealed.body, nameOf) };
   return sealed.kind === 'countersignature' ? { ...sealed, body: withInviter(sealed.body, nameOf) } : sealed;
-}
-
-/** Null when the body is withheld or erased: then nothing can be said of what was bought. */
-function purchaseView(log: string, entry: OpenedEntry, usedBy: number[]): PurchaseView | null {
-  const { leaf, leafHash, values, withheld, erasures, tokens, struckBy } = entry;
-  const body = values.get('body') as PurchaseBody | undefined;
-  if (body === undefined) return null;
-  return {
-    log,
-    seq: leaf.seq,
-    leafHash,
-    sealedAt: leaf.sealedAt,
-    body,
-    supplier: (values.get('supplier') as SupplierPart | undefined) ?? null,
-    prices: (values.get('prices') as PricesPart | undefined) ?? null,
-    author: authorOf(entry),
-    attachments: attachmentsOf(entry),
-    tokens,
-    usedBy,
-    withheld,
-    erasures,
-    struckBy,
-  };
 }

@@ -134,6 +134,20 @@ export interface PurchaseView {
   erasures?: ErasureView[];
   /** A strike on the shelf's log that withdraws the purchase. */
   struckBy?: StruckView | null;
+  /** What later lines of the shelf's log say of it, ascending. */
+  corrections: CorrectionView[];
+}
+
+/** A later line of a shelf's log about a purchase: a correction, a blacked-out copy, or that a part was erased. */
+export interface CorrectionView {
+  seq: number;
+  sealedAt: string;
+  leafHash: string;
+  /** Null where it is withheld. */
+  why: string | null;
+  author: AuthorPart | null;
+  attachments: Attachment[];
+  struckBy: StruckView | null;
 }
 
 export interface ShelfEntryView {

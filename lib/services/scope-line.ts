@@ -1,4 +1,5 @@
 import 'server-only';
+import { isBlackedOutThroughout } from '@/lib/domain/blacked-out';
 import { isLocalDate } from '@/lib/domain/instants';
 import type { ScopeLine } from '@/lib/domain/scope';
 import type { AttachmentRole, PartName, ServiceBody } from '@/lib/evidence/format';
@@ -30,6 +31,8 @@ export function scopeLine(entry: OpenedEntry, { isNaming, isIdentifying }: Spell
     naming: partsThat(isNaming),
     identifying: partsThat(isIdentifying),
     hasPapers: attachmentsOf(entry).some(({ role, mediaType }) => papers.has(role) || mediaType === 'application/pdf'),
+    // A struck one may have been struck because it covers too little.
+    isBlackedOut: entry.struckBy === null && isBlackedOutThroughout(attachmentsOf(entry)),
   };
 }
 

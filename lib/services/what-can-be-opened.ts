@@ -11,6 +11,7 @@ import type { TermsBody } from '@/lib/evidence/format';
 import { entryTitle } from './entry-title';
 import { openInScope } from './open-in-scope';
 import { attachmentsOf, notesOf, type OpenedEntry } from './open-stored-log';
+import { saidOfPurchases } from './purchase-view';
 import { scopeLine } from './scope-line';
 
 /** What a rider chooses from when they decide what a packet or a link opens. */
@@ -33,20 +34,23 @@ export async function whatCanBeOpened(options: { person: PersonRow; machineId: s
     const on = line.finishedOn ?? localDateOf(entry.leaf.sealedAt, row.timeZone);
     return { ...line, title: entryTitle(entry), on: formatLocalDate(on) };
   });
-  const purchases = shelves.flatMap(({ entries, usedBy }) =>
-    entries.flatMap((entry): OpenablePurchase[] => {
+  const lineOf = (entry: OpenedEntry) => withContent(scopeLine(entry, spelledOut), entry);
+  const purchases = shelves.flatMap(({ entries, usedBy }) => {
+    const said = saidOfPurchases(entries);
+    return entries.flatMap((entry): OpenablePurchase[] => {
       const seqs = entry.kind === 'purchase' ? usedBy.get(entry.leaf.seq) : undefined;
-      return seqs === undefined ? [] : [{ line: withContent(scopeLine(entry, spelledOut), entry), usedBy: seqs }];
-    }),
-  );
+      if (seqs === undefined) return [];
+      return [{ line: lineOf(entry), usedBy: seqs, saidOfIt: (said.get(entry.leaf.seq) ?? []).map(lineOf) }];
+    });
+  });
   const titles = titlesOf(machine.entries);
   const items = [...new Set(openable.flatMap((line) => line.items))];
   return { lines: openable, purchases, items: items.map((item) => ({ item, title: titles.get(item) ?? item })) };
 }
 
 function withContent(line: ScopeLine, entry: OpenedEntry): OpenableLine {
-  const { statement, text, reason } = (entry.values.get('body') ?? {}) as Record<string, unknown>;
-  const texts = [statement, text, reason, notesOf(entry)].filter(
+  const { statement, text, reason, why } = (entry.values.get('body') ?? {}) as Record<string, unknown>;
+  const texts = [statement, text, reason, why, notesOf(entry)].filter(
     (one) => typeof one === 'string' && one !== '' && one !== defaultStatement,
   );
   return { ...line, pictures: attachmentsOf(entry).length, texts: texts.length };

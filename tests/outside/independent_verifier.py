@@ -450,7 +450,12 @@ def verify(text, roots):
     for where, body in services:
         check_draws(where, body, purchases)
     for file in bundle["files"]:
-        if file["derivedFrom"] is None and named_files.get(file["sha256"]) != (file["bytes"], file["mediaType"]):
+        named = named_files.get(file["sha256"])
+        # A copy made later need not be named itself, but what it was made from must be; and a name must fit.
+        is_made_later = file["derivedFrom"] is not None
+        if is_made_later and file["derivedFrom"] not in named_files:
+            problem(f"file {file['name']}", "no opened part names what it was made from")
+        if named != (file["bytes"], file["mediaType"]) and not (is_made_later and named is None):
             problem(f"file {file['name']}", "no opened part names it so")
     return entries, [file for file in bundle["files"] if file["included"]], bundle["packetCertificate"], proven
 

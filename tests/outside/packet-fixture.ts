@@ -140,7 +140,7 @@ function purchase(
     body: { boughtOn: { date: on, time: '10:58', zone }, lines: body },
     supplier: { name: supplier, address: '14 Mill Lane, Brandywell' }, prices: null,
     author: { person: owner, name: 'Imke Vandersloot', role: 'owner' },
-    attachments, tokens: [token(sealedAt)], usedBy,
+    attachments, tokens: [token(sealedAt)], usedBy, corrections: [],
   }; // prettier-ignore
 }
 
