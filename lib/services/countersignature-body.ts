@@ -4,10 +4,11 @@ import { findInvitation, type InvitationRow } from '@/db/queries/invitations';
 import { findShop } from '@/db/queries/shops';
 import { invalidInput } from '@/lib/errors';
 import type { CountersignatureBody, CountersignCapacity } from '@/lib/evidence/format';
+import { demandStanding } from '@/lib/services/demand-standing';
 import { refuseEnded } from '@/lib/services/open-invitation';
 import { answeredAlready } from '@/lib/services/record-answer';
 
-/** What a countersignature says, as it is at this moment. Throws `conflict` once the invitation was answered. */
+/** What a countersignature says, as it is at this moment. Throws `conflict` once the invitation was answered or its entry struck. */
 export async function countersignatureBody(options: {
   invitation: InvitationRow;
   shopId: string;
@@ -18,6 +19,8 @@ export async function countersignatureBody(options: {
   const current = await findInvitation(invitation.id, transaction === undefined ? {} : { transaction });
   if (current === null || current.answeredAt !== null) throw answeredAlready();
   refuseEnded(current);
+  const { logId: log, seq } = invitation;
+  await demandStanding({ log, seq, ...(transaction === undefined ? {} : { transaction }) });
   const shop = await findShop(shopId, transaction);
   if (shop === null) throw invalidInput({ shop: 'Name the shop you answer for first.' });
   return {

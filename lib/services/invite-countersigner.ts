@@ -14,6 +14,7 @@ import { WitnessmarkError, invalidInput, notFound } from '@/lib/errors';
 import { paths } from '@/lib/paths';
 import { now } from '@/lib/ports/clock';
 import { sendMail } from '@/lib/ports/mail';
+import { demandStanding } from '@/lib/services/demand-standing';
 import { recordMemory } from '@/lib/services/record-memory';
 
 const daysOpen = 30;
@@ -43,6 +44,7 @@ export async function inviteCountersigner(options: {
   if (entry.kind !== 'service') {
     throw new WitnessmarkError('conflict', 'Only a service can be countersigned; this entry is none.');
   }
+  await demandStanding({ log: log.id, seq });
   if (input.email === person.email) {
     throw invalidInput({ email: 'This is your own address. A countersignature must come from somebody else.' });
   }

@@ -3,6 +3,7 @@ import { findEntryByIdempotencyKey } from '@/db/queries/entries';
 import type { PersonRow } from '@/db/models/people';
 import { countAttempt, passkeyLimits } from '@/lib/auth/throttle';
 import { notFound } from '@/lib/errors';
+import { demandStanding } from '@/lib/services/demand-standing';
 import { appendStatement, statementKey } from '@/lib/services/append-statement';
 import { checkOnce } from '@/lib/services/check-once';
 import type { SignatureAnswer } from '@/lib/services/passkey-answer';
@@ -49,6 +50,7 @@ export async function signCountersignature(options: {
     checked,
     challenge: row,
     within: async (transaction, sealed) => {
+      await demandStanding({ log, seq: refersTo.seq, transaction });
       const answered = { outcome: 'countersigned', answerSeq: sealed.seq } as const;
       await markAnswered({ invitation, person, shopId, transaction, ...answered });
     },

@@ -4,6 +4,7 @@ import { findLogOf } from '@/db/queries/logs';
 import { relations } from '@/db/models/people';
 import { verifyBundle } from '@/lib/evidence/verify';
 import { bundleText } from '@/lib/evidence/bundle';
+import { answerInvitation } from '@/lib/services/answer-invitation';
 import { appendEntry } from '@/lib/services/append-entry';
 import { bundleRecord } from '@/lib/services/bundle-record';
 import { confirmReceipt } from '@/lib/services/confirm-receipt';
@@ -14,8 +15,10 @@ import { readRecord, readShelf } from '@/lib/services/read-record';
 import { readShelfLots } from '@/lib/services/read-shelf-lots';
 import { sealWorksheet } from '@/lib/services/seal-worksheet';
 import { strikeEntry, strikeInput } from '@/lib/services/strike-entry';
+import { createShop } from '@/lib/services/create-shop';
+import { inviteCountersigner } from '@/lib/services/invite-countersigner';
 import { countersignatureBody } from '../../setup/sealed-record';
-import { useTestDatabase } from '../../setup/test-database';
+import { makePerson, useTestDatabase } from '../../setup/test-database';
 import { draftWith, lendAHand, oilChange, receiptFields, riderWithMachine } from './garage-story';
 
 useTestDatabase();
@@ -38,6 +41,29 @@ async function riderWithService() {
   const left = async () => (await readShelfLots({ person, shelf })).lots.map(({ balance }) => balance.amount);
   return { ...rider, purchase, seq, serve, strike, strikeOnShelf, left };
 }
+
+describe('a shop and a struck entry', () => {
+  it('is not asked about one', async () => {
+    const { person, machine, seq, strike } = await riderWithService();
+    await strike(seq);
+    const asked = inviteCountersigner({ person, machineId: machine, seq, input: { email: 'desk@halyard.example', message: '' } }); // prettier-ignore
+    await expect(asked).rejects.toThrow(`Entry ${seq} was struck, so there is nothing left to vouch for.`);
+  });
+
+  it('cannot countersign one that was struck after the shop was asked', async () => {
+    const { person, machine, seq, strike } = await riderWithService();
+    const { id } = await inviteCountersigner({ person, machineId: machine, seq, input: { email: 'desk@halyard.example', message: '' } }); // prettier-ignore
+    await strike(seq);
+    const technician = await makePerson({ name: 'Teodora Lindqvist', email: 'desk@halyard.example' });
+    const { id: shopId } = await createShop({
+      person: technician,
+      input: { name: 'Halyard Cycle Works', address: '1 Quay Street, Halyard', registration: '' },
+    });
+    const input = { answer: 'countersign', capacity: 'inspected', statement: 'We looked at it.' } as const;
+    const answered = answerInvitation({ person: technician, invitationId: id, shopId, cameByAddress: true, input });
+    await expect(answered).rejects.toThrow(`Entry ${seq} was struck`);
+  });
+});
 
 describe('striking a service', () => {
   it('counts it as not done, takes its reading out and gives back what it drew', async () => {
