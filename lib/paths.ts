@@ -31,6 +31,9 @@ export const paths = {
   addendum: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/addendum`,
   strike: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/strike`,
   erase: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/erase`,
+  /** `picture`: SHA-256 of a shared copy; left out, the page asks which. */
+  blackOut: (machine: string, seq: number, picture?: string) =>
+    `/machines/${machine}/record/${seq}/black-out${picture === undefined ? '' : `?picture=${picture}`}`,
   inviteShop: (machine: string, seq: number) => `/machines/${machine}/record/${seq}/countersign`,
   schedule: (machine: string) => `/machines/${machine}/schedule`,
   specSheet: (machine: string) => `/machines/${machine}/spec-sheet`,
@@ -44,6 +47,9 @@ export const paths = {
   shelfEntry: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}`,
   shelfStrike: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}/strike`,
   shelfErase: (shelf: string, seq: number) => `/shelves/${shelf}/${seq}/erase`,
+
+  shelfBlackOut: (shelf: string, seq: number, picture?: string) =>
+    `/shelves/${shelf}/${seq}/black-out${picture === undefined ? '' : `?picture=${picture}`}`,
 
   /** The offline shell: one public static page; what it shows is chosen by the hash. */
   garage: '/garage',

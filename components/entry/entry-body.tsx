@@ -39,7 +39,13 @@ export function EntryBody({ entry, facts, links }: EntryBodyProps) {
       </div>
       {entry.attachments.length === 0 ? null : (
         <div className="mt-6">
-          <Plates attachments={entry.attachments} zone={zone} file={links.file} label="Plates" />
+          <Plates
+            attachments={entry.attachments}
+            zone={zone}
+            file={links.file}
+            label="Plates"
+            blackOut={(copy) => links.blackOut?.(entry.seq, copy)}
+          />
         </div>
       )}
       <Said notes={entry.notes} author={entry.author} />

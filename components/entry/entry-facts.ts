@@ -1,4 +1,4 @@
-import type { AttachmentRole, TermsBody } from '@/lib/evidence/format';
+import type { Attachment, AttachmentRole, TermsBody } from '@/lib/evidence/format';
 import type { EntryView, LogView, PurchaseView } from '@/lib/services/record-view';
 
 /** What a page knows of the record around one entry. */
@@ -21,6 +21,14 @@ export interface EntryLinks {
   file: (sha256: string, kind: FileKind) => string | undefined;
   entry?: (seq: number) => string | undefined;
   receipt?: (log: string, seq: number) => string | undefined;
+  /** Where a part of a picture of an entry can be blacked out; for owners. `copy` is the SHA-256 of its shared copy. */
+  blackOut?: (seq: number, copy: string) => string;
+}
+
+/** The pictures of a receipt that this reader gets: its own, and blacked-out copies made later that stand. */
+export function platesOfPurchase({ attachments, corrections }: PurchaseView): Attachment[] {
+  const later = corrections.filter(({ struckBy }) => struckBy === null);
+  return [...attachments, ...later.flatMap((one) => one.attachments)];
 }
 
 /** Roles shown first: what the work looked like, then papers. */

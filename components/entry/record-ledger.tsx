@@ -5,7 +5,7 @@ import { formatLocalDate, localDateOf } from '@/lib/domain/instants';
 import { formatAmount, formatDistance, sumAmounts } from '@/lib/domain/units';
 import type { Attachment, ServiceBody } from '@/lib/evidence/format';
 import type { EntryView } from '@/lib/services/record-view';
-import type { EntryFacts, EntryLinks } from './entry-facts';
+import { platesOfPurchase, type EntryFacts, type EntryLinks } from './entry-facts';
 import { roleWords } from '@/lib/domain/record-words';
 import { quietDetail } from './line-words';
 import { addedWords, counted, plateKind, stateWords } from './words';
@@ -101,7 +101,7 @@ function serviceDetail(body: ServiceBody): Pick<LedgerLineProps, 'detail' | 'det
 
 /** What was photographed for the entry, then the receipts of what it drew. */
 function thumbsOf(entry: EntryView, { purchases }: RecordLineProps['facts'], links: EntryLinks): ThumbProps[] {
-  const receipts = receiptsOf(entry, purchases).flatMap(({ attachments }) => attachments.slice(0, 1));
+  const receipts = receiptsOf(entry, purchases).flatMap((one) => platesOfPurchase(one).slice(0, 1));
   return [...receipts, ...entry.attachments].flatMap((attachment) => thumbOf(attachment, links.file));
 }
 

@@ -1,3 +1,4 @@
+import { blackedOutFrom } from '@/lib/domain/blacked-out';
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { convert, Decimal, formatAmount, units } from '@/lib/domain/units';
 import { ownAuthorityName } from '@/lib/evidence/own-authority';
@@ -33,7 +34,9 @@ export function confirmedWords(confirmedBy: string | null): string {
 }
 
 /** The camera's word and the server's clock, kept apart. */
-export function takenWords({ takenAt, receivedAt }: Attachment, zone: string): string {
+export function takenWords(attachment: Attachment, zone: string): string {
+  const { takenAt, receivedAt } = attachment;
+  if (blackedOutFrom(attachment) !== null) return `Made ${formatInstant(receivedAt, zone)}`;
   const received = `received ${formatInstant(receivedAt, zone)}`;
   if (takenAt === undefined) return `No time in the file; ${received}`;
   const [date = '', time = ''] = takenAt.local.split(/[T ]/);

@@ -1,6 +1,8 @@
 import Link from 'next/link';
 import { Plates } from '@/components/entry/plates';
+import { platesOfPurchase } from '@/components/entry/entry-facts';
 import { Said } from '@/components/entry/said';
+import { SaidOfReceipts } from '@/components/entry/said-of-receipts';
 import { ThreeTimes } from '@/components/entry/three-times';
 import { Box, Boxes } from '@/components/ui/box';
 import { Table } from '@/components/ui/table';
@@ -9,7 +11,7 @@ import { formatLocalMoment } from '@/lib/domain/instants';
 import { formatMoney, isCurrency } from '@/lib/domain/money';
 import { lotAmount } from '@/lib/domain/shelf';
 import { formatAmount } from '@/lib/domain/units';
-import type { PartName, PurchaseLine } from '@/lib/evidence/format';
+import type { Attachment, PartName, PurchaseLine } from '@/lib/evidence/format';
 import { paths } from '@/lib/paths';
 import type { ShelfLot } from '@/lib/services/read-shelf-lots';
 import type { LotUse } from '@/lib/services/read-shelf-page';
@@ -24,11 +26,14 @@ export interface ReceiptViewProps {
   lots: ShelfLot[];
   uses: LotUse[];
   zone: string;
+  /** An owner may black out parts of its pictures. */
+  canBlackOut: boolean;
 }
 
 /** A sealed receipt: its plates, what was bought, what is left, and where it was used. */
-export function ReceiptView({ purchase, shelf, lots, uses, zone }: ReceiptViewProps) {
-  const { body, supplier, attachments, sealedAt, tokens, author } = purchase;
+export function ReceiptView({ purchase, shelf, lots, uses, zone, canBlackOut }: ReceiptViewProps) {
+  const { body, supplier, sealedAt, tokens, author } = purchase;
+  const attachments = platesOfPurchase(purchase);
   return (
     <>
       <Boxes columns={3} isOneColumnOnPhone label="The purchase">
@@ -61,6 +66,7 @@ export function ReceiptView({ purchase, shelf, lots, uses, zone }: ReceiptViewPr
             zone={zone}
             file={(sha, kind) => paths.api.file(sha, kind, shelf)}
             label="Plates of the receipt"
+            blackOut={canBlackOut ? (copy) => paths.shelfBlackOut(shelf, lineWith(purchase, copy), copy) : undefined}
           />
         </div>
       )}
@@ -111,9 +117,16 @@ export function ReceiptView({ purchase, shelf, lots, uses, zone }: ReceiptViewPr
           }))}
         />
       </section>
+      <SaidOfReceipts purchases={[purchase]} zone={zone} />
       <Said notes={null} author={author} />
     </>
   );
+}
+
+/** The line of the shelf's log that holds a picture: the receipt itself, or what was sealed of it later. */
+function lineWith({ seq, corrections }: PurchaseView, copy: string): number {
+  const holds = (one: { attachments: Attachment[] }) => one.attachments.some((each) => each.copy?.sha256 === copy);
+  return corrections.find(holds)?.seq ?? seq;
 }
 
 function UseLink({ use: { machine, seq } }: { use: LotUse }) {

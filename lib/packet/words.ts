@@ -1,3 +1,4 @@
+import { blackedOutFrom } from '@/lib/domain/blacked-out';
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
 import { debrisGrades } from '@/lib/domain/procedures';
 import { convert, Decimal, formatAmount, formatDistance, groupThousands, units } from '@/lib/domain/units';
@@ -88,7 +89,9 @@ export function metricWords({ amount, unit }: Amount): string | undefined {
   return formatAmount({ amount: groupThousands(value), unit: target });
 }
 
-export function takenWords({ takenAt, receivedAt }: Attachment, zone: string): string {
+export function takenWords(attachment: Attachment, zone: string): string {
+  const { takenAt, receivedAt } = attachment;
+  if (blackedOutFrom(attachment) !== null) return `Made ${formatInstant(receivedAt, zone)}`;
   const received = `Received ${formatInstant(receivedAt, zone)}`;
   if (takenAt === undefined) return received;
   const [date = '', time = ''] = takenAt.local.split(/[T ]/);

@@ -98,6 +98,7 @@ export async function readShelf({
         ...base,
         ...(purchase === undefined ? {} : { purchase }),
         ...(body === undefined ? {} : { body }),
+        ...(kind === 'purchase' ? {} : { attachments: attachmentsOf(entry) }),
         author: authorOf(entry),
         refersTo: leaf.refersTo,
       };

@@ -168,6 +168,8 @@ export interface ShelfEntryView {
   /** Named in the leaf and kept back. */
   withheld?: PartName[];
   erasures?: ErasureView[];
+  /** Pictures of a line that is no purchase. */
+  attachments?: Attachment[];
   /** Parts the line has that are still there. */
   parts?: PartName[];
 }

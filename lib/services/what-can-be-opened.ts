@@ -40,7 +40,8 @@ export async function whatCanBeOpened(options: { person: PersonRow; machineId: s
     return entries.flatMap((entry): OpenablePurchase[] => {
       const seqs = entry.kind === 'purchase' ? usedBy.get(entry.leaf.seq) : undefined;
       if (seqs === undefined) return [];
-      return [{ line: lineOf(entry), usedBy: seqs, saidOfIt: (said.get(entry.leaf.seq) ?? []).map(lineOf) }];
+      const saidOfIt = said.get(entry.leaf.seq)?.map(lineOf);
+      return [{ line: lineOf(entry), usedBy: seqs, ...(saidOfIt === undefined ? {} : { saidOfIt }) }];
     });
   });
   const titles = titlesOf(machine.entries);

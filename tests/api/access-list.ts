@@ -7,6 +7,12 @@ export type Kind = (typeof kinds)[number];
 const everybody: readonly Kind[] = kinds;
 const signedIn: readonly Kind[] = ['stranger', 'helper', 'owner', 'technician', 'steward'];
 const ridersOfTheMachine: readonly Kind[] = ['helper', 'owner'];
+/** No entry 0 holds this picture. */
+const blackOut = {
+  picture: 'ab'.repeat(32),
+  boxes: JSON.stringify([{ left: 0, top: 0, width: 0.5, height: 0.5 }]),
+  reason: '',
+};
 const ownerOnly: readonly Kind[] = ['owner'];
 const stewardOnly: readonly Kind[] = ['steward'];
 const technicianOnly: readonly Kind[] = ['technician'];
@@ -100,6 +106,14 @@ export const pages: Record<string, Reach> = {
   '(rider)/shelves/[shelf]/[seq]/strike/page.tsx': {
     who: ownerOnly,
     at: ({ shelf }) => `/shelves/${shelf}/0/strike`,
+  },
+  '(rider)/machines/[machine]/record/[seq]/black-out/page.tsx': {
+    who: ownerOnly,
+    at: ({ machine }) => `/machines/${machine}/record/0/black-out`,
+  },
+  '(rider)/shelves/[shelf]/[seq]/black-out/page.tsx': {
+    who: ownerOnly,
+    at: ({ shelf }) => `/shelves/${shelf}/0/black-out`,
   },
   '(rider)/shelves/[shelf]/[seq]/erase/page.tsx': { who: ownerOnly, at: ({ shelf }) => `/shelves/${shelf}/0/erase` },
   '(rider)/machines/[machine]/record/[seq]/countersign/page.tsx': {
@@ -300,6 +314,16 @@ export const actions: Record<string, ActionReach> = {
     who: ownerOnly,
     on: ({ shelf }) => `/shelves/${shelf}/0/erase`,
     form: ({ shelf }) => ({ shelf, seq: '0', part: 'prices', word: 'erase', reason: '', key: crypto.randomUUID() }),
+  },
+  '(rider)/machines/[machine]/record/[seq]/black-out/actions.ts blackOutAction': {
+    who: ownerOnly,
+    on: ({ machine }) => `/machines/${machine}/record/0/black-out`,
+    form: ({ machine }) => ({ machine, seq: '0', ...blackOut, key: crypto.randomUUID() }),
+  },
+  '(rider)/shelves/[shelf]/[seq]/black-out/actions.ts blackOutLineAction': {
+    who: ownerOnly,
+    on: ({ shelf }) => `/shelves/${shelf}/0/black-out`,
+    form: ({ shelf }) => ({ shelf, seq: '0', ...blackOut, key: crypto.randomUUID() }),
   },
   // Entry 0 is no service, which the owner is told and nobody else learns.
   '(rider)/machines/[machine]/record/[seq]/countersign/actions.ts inviteAction': {

@@ -65,7 +65,7 @@ async function screens(): Promise<Record<Who, string[]>> {
       paths.machineSettings(sorrel.id), paths.proof(sorrel.id), paths.shelf(shelf.id), paths.shelfEntry(shelf.id, 1), paths.bench(wren.id),
       paths.newMachine, paths.account, paths.garage, paths.newWorksheet(sorrel.id), paths.newReceipt,
       paths.entry(sorrel.id, 15), paths.addendum(sorrel.id, 0), paths.addendum(sorrel.id, 11), paths.strike(sorrel.id, 11), paths.strike(sorrel.id, 0), paths.erase(sorrel.id, 11),
-      paths.shelfStrike(shelf.id, 1), paths.shelfErase(shelf.id, 1),
+      paths.shelfStrike(shelf.id, 1), paths.shelfErase(shelf.id, 1), paths.blackOut(sorrel.id, 11), paths.shelfBlackOut(shelf.id, 1),
     ],
     teodora: [paths.shop(shop.id), paths.invitationAnswer(open.id)],
     steward: [paths.steward, paths.stewardMail, paths.stewardShops],

@@ -1,3 +1,4 @@
+import { blackedOutFrom } from '@/lib/domain/blacked-out';
 import { groupHash } from '@/lib/domain/hash-words';
 import type { Attachment } from '@/lib/evidence/format';
 import type { PacketContent } from '../content';
@@ -10,8 +11,11 @@ export function platesOf(prefix: string, attachments: Attachment[], { files, zon
   return attachments.map((attachment, i) => {
     const { role, caption, copy, sha256, mediaType, bytes } = attachment;
     const file = copy === undefined ? undefined : files.get(copy.sha256);
-    const words = caption === '' || caption === roleWords[role] ? [] : [caption];
-    const hashes = [{ of: 'Original', hash: groupHash(sha256) }];
+    const from = blackedOutFrom(attachment);
+    const said = from === null ? caption : 'Blacked-out copy, made here';
+    const words = said === '' || said === roleWords[role] ? [] : [said];
+    const hashes = [{ of: from === null ? 'Original' : 'Blacked-out copy', hash: groupHash(sha256) }];
+    if (from !== null) hashes.push({ of: 'Made from', hash: groupHash(from) });
     if (copy !== undefined && copy.sha256 !== sha256) hashes.push({ of: 'Shared copy', hash: groupHash(copy.sha256) });
     const plate = {
       title: `${prefix}.${i + 1} ${roleWords[role]}`,

@@ -51,12 +51,27 @@ export function drawReceipt(sheet: Sheet, purchase: PurchaseView, content: Packe
     ]);
     sheet.gap(4);
     drawLines(sheet, body.lines);
-    if (purchase.attachments.length > 0) {
+    drawSaidLater(sheet, purchase, content);
+    const standing = purchase.corrections.filter(({ struckBy }) => struckBy === null);
+    const pictures = [...purchase.attachments, ...standing.flatMap(({ attachments }) => attachments)];
+    if (pictures.length > 0) {
       sheet.gap(10);
-      drawPlates(sheet, platesOf(name, purchase.attachments, content));
+      drawPlates(sheet, platesOf(name, pictures, content));
     }
     drawLeaf(sheet, purchase, content);
   });
+}
+
+/** Corrections, blacked-out copies and erasures, each with its line of the shelf's log. */
+function drawSaidLater(sheet: Sheet, { corrections }: PurchaseView, { zone }: PacketContent): void {
+  if (corrections.length === 0) return;
+  sheet.heading('Said later', { tag: 'H3', below: 44 });
+  for (const { seq, sealedAt, why, struckBy } of corrections) {
+    const struck = struckBy === null ? '' : `Struck by line ${struckBy.seq}, and still readable: `;
+    const text = why === null ? 'Its text is withheld.' : `“${why}”`;
+    sheet.paragraph(`${struck}${text} Line ${seq} of the shelf’s log, sealed ${formatInstant(sealedAt, zone)}.`);
+    sheet.gap(3);
+  }
 }
 
 function drawLines(sheet: Sheet, lines: PurchaseLine[]): void {

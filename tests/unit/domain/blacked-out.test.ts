@@ -31,7 +31,7 @@ describe('a blacked-out copy', () => {
     expect(blackedOutFrom(copy(more))).toBeNull();
   });
   it('is not what has no shared copy', () => {
-    const { copy: _none, ...paper } = copy();
+    const { copy: _, ...paper } = copy();
     expect(blackedOutFrom(paper)).toBeNull();
   });
   it('counts for a line only if it holds nothing else', () => {

@@ -1,7 +1,9 @@
 import type { Metadata } from 'next';
+import Link from 'next/link';
 import { HeldBy } from '@/components/entry/held-by';
 import { MoreAbout } from '@/components/entry/more-about';
 import { OtherEntry } from '@/components/entry/other-entry';
+import { Plates } from '@/components/entry/plates';
 import { StruckNotice } from '@/components/entry/struck-notice';
 import { ThreeTimes } from '@/components/entry/three-times';
 import { WitnessMark } from '@/components/mark/witness-mark';
@@ -57,6 +59,26 @@ export default async function ShelfEntryPage({ params }: ShelfEntryPageProps) {
           <div className="mt-4">
             <OtherEntry body={entry.body} />
           </div>
+          {entry.refersTo ? (
+            <p className="mt-4">
+              About{' '}
+              <Link className="link" href={lineHref(entry.refersTo.seq)}>
+                line {entry.refersTo.seq}
+              </Link>
+              .
+            </p>
+          ) : null}
+          {entry.attachments === undefined || entry.attachments.length === 0 ? null : (
+            <div className="mt-6">
+              <Plates
+                attachments={entry.attachments}
+                zone={zone}
+                file={(sha, kind) => paths.api.file(sha, kind, id)}
+                label="Plates"
+                blackOut={relation === 'owner' ? (copy) => paths.shelfBlackOut(id, entry.seq, copy) : undefined}
+              />
+            </div>
+          )}
         </>
       ) : (
         <ReceiptView
@@ -65,6 +87,7 @@ export default async function ShelfEntryPage({ params }: ShelfEntryPageProps) {
           lots={lots.filter((lot) => lot.seq === entry.seq)}
           uses={uses}
           zone={zone}
+          canBlackOut={relation === 'owner'}
         />
       )}
       <HeldBy

@@ -40,7 +40,7 @@ export default async function EntryPage({ params, searchParams }: EntryPageProps
       <EntryView
         entry={entry}
         facts={facts}
-        links={entryLinks(id, shelfByLog)}
+        links={entryLinks(id, shelfByLog, relation)}
         isJustSealed={query.sealed !== undefined}
         actions={<EntryActions machine={id} entry={entry} relation={relation} />}
       />
