@@ -3,6 +3,7 @@ import { Hash } from '@/components/ui/hash';
 import { UserText } from '@/components/ui/user-text';
 import { counted } from '@/components/entry/words';
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
+import { missingWord } from '@/lib/domain/record-words';
 import { formatDistance } from '@/lib/domain/units';
 import type { OpeningBody } from '@/lib/evidence/format';
 import type { Shown } from '@/lib/services/read-viewing';
@@ -43,7 +44,7 @@ export function RecordHead({ shown }: { shown: Shown }) {
       </Box>
       <Box label={identity?.vin === undefined && identity !== null ? 'Frame number' : 'VIN'} span={2}>
         <span className="font-mono text-base">
-          <UserText>{identity?.vin ?? identity?.frameNumber ?? 'withheld'}</UserText>
+          <UserText>{identity?.vin ?? identity?.frameNumber ?? missingWord('identity', record.entries[0])}</UserText>
         </span>
       </Box>
       <Box label="Odometer" isMeasure note={now === undefined ? undefined : readWords(now.on, opened)}>

@@ -1,4 +1,4 @@
-import type { AttachmentRole, CountersignCapacity } from '@/lib/evidence/format';
+import type { AttachmentRole, CountersignCapacity, PartName } from '@/lib/evidence/format';
 
 /** What a picture or paper is, on screen and on paper alike. */
 export const roleWords: Record<AttachmentRole, string> = {
@@ -23,3 +23,18 @@ export const capacityWords: Record<CountersignCapacity, string> = {
   'was-present': 'was present',
   'checked-papers': 'checked the papers only',
 };
+
+/**
+ * Why something that a part would say is not to be read: a reader must not take what was erased for what is kept back,
+ * nor what nobody ever stated for either.
+ *
+ * @param entry the entry whose part it is; undefined if it is not there
+ * @example missingWord('identity', { erased: [], withheld: ['identity'] }) // 'withheld'
+ */
+export function missingWord(
+  part: PartName,
+  entry: { erased: readonly PartName[]; withheld: readonly PartName[] } | undefined,
+): 'erased' | 'withheld' | 'not stated' {
+  if (entry?.erased.includes(part) === true) return 'erased';
+  return entry?.withheld.includes(part) === true ? 'withheld' : 'not stated';
+}

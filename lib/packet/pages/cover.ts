@@ -1,6 +1,7 @@
 import 'server-only';
 import type { AdherenceSummary } from '@/lib/domain/adherence';
 import { formatInstant, formatLocalDate } from '@/lib/domain/instants';
+import { missingWord } from '@/lib/domain/record-words';
 import { formatDistance } from '@/lib/domain/units';
 import { whatIsShown } from '@/lib/evidence/format';
 import { entryAnchor, type PacketContent } from '../content';
@@ -84,7 +85,7 @@ function machineWords(
   const at = firstUse?.odometer === undefined ? '' : ` at ${formatDistance(firstUse.odometer)}`;
   const today = now === undefined ? '' : `; last opened reading ${formatDistance(now)} on ${formatLocalDate(now.on)}`;
   const made = purpose === '' ? '' : ` Made for: ${purpose}${/[.!?]$/.test(purpose) ? '' : '.'}`;
-  return `${[name, vin ?? frame ?? 'VIN withheld'].join(', ')}. ${used}${at}${today}. ${owner === null ? 'Owner withheld' : `Owner ${owner}`}.${made}`;
+  return `${[name, vin ?? frame ?? `VIN ${missingWord('identity', record.entries[0])}`].join(', ')}. ${used}${at}${today}. ${owner === null ? 'Owner withheld' : `Owner ${owner}`}.${made}`;
 }
 
 function drawWarranty(sheet: Sheet, { warranty }: PacketSummary): void {

@@ -1,5 +1,6 @@
 import 'server-only';
 import { formatLocalDate } from '@/lib/domain/instants';
+import { missingWord } from '@/lib/domain/record-words';
 import { formatDistance, units } from '@/lib/domain/units';
 import type { TermsBody } from '@/lib/evidence/format';
 import type { PacketContent } from '../content';
@@ -39,12 +40,13 @@ export function drawTerms(sheet: Sheet, content: PacketContent): void {
 function drawMachine(sheet: Sheet, { record, owner }: PacketContent): void {
   const { machine, identity, opening } = record;
   const { firstUse, recordStarts } = opening;
+  const missing = missingWord('identity', record.entries[0]);
   drawBoxes(sheet, 4, [
     { label: 'Machine', value: [machine.modelYear, machine.make, machine.model].filter(Boolean).join(' '), span: 2 },
     { label: 'Kind', value: machine.kind },
     { label: 'Owner', value: owner ?? 'withheld' },
-    { label: 'VIN or frame number', value: identity?.vin ?? identity?.frameNumber ?? 'withheld', span: 2 },
-    { label: 'Engine number', value: identity === null ? 'withheld' : (identity.engineNumber ?? 'not stated') },
+    { label: 'VIN or frame number', value: identity?.vin ?? identity?.frameNumber ?? missing, span: 2 },
+    { label: 'Engine number', value: identity?.engineNumber ?? (identity === null ? missing : 'not stated') },
     {
       label: 'First used',
       value: firstUse?.on === undefined ? 'not stated' : formatLocalDate(firstUse.on),

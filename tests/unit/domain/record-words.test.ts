@@ -1,5 +1,5 @@
 import { describe, expect, it } from 'vitest';
-import { capacityWords, roleWords } from '@/lib/domain/record-words';
+import { capacityWords, missingWord, roleWords } from '@/lib/domain/record-words';
 import { attachmentRoles, countersignCapacities } from '@/lib/evidence/format';
 
 // The words of the product's own vocabulary; common practice, no source.
@@ -13,5 +13,12 @@ describe('words of the record', () => {
     expect(Object.keys(capacityWords).sort()).toEqual([...countersignCapacities].sort());
     expect(Object.values(capacityWords).every((words) => words === words.toLowerCase())).toBe(true);
     expect(new Set(Object.values(capacityWords)).size).toBe(countersignCapacities.length);
+  });
+
+  it('tell what was erased from what is withheld, and both from what nobody stated', () => {
+    expect(missingWord('identity', { erased: ['identity'], withheld: [] })).toBe('erased');
+    expect(missingWord('identity', { erased: [], withheld: ['identity'] })).toBe('withheld');
+    expect(missingWord('identity', { erased: ['notes'], withheld: ['author'] })).toBe('not stated');
+    expect(missingWord('identity', undefined)).toBe('not stated');
   });
 });
