@@ -1,4 +1,4 @@
-import { spawnSync } from 'node:child_process';
+import { execFileSync, spawnSync } from 'node:child_process';
 import { randomUUID } from 'node:crypto';
 import { mkdtempSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
@@ -15,6 +15,7 @@ import { verifyBundle } from '@/lib/evidence/verify';
 import { nameFiles } from '@/lib/packet/content';
 import { blobStore } from '@/lib/ports/blob-store';
 import { blackOutInput, blackOutPicture } from '@/lib/services/black-out-picture';
+import { buildPacket, packetFile } from '@/lib/services/build-packet';
 import { bundleRecord } from '@/lib/services/bundle-record';
 import { confirmReceipt } from '@/lib/services/confirm-receipt';
 import { eraseInput, erasePart } from '@/lib/services/erase-part';
@@ -23,6 +24,7 @@ import { publishedKeys } from '@/lib/services/log-keys';
 import { readFileOf } from '@/lib/services/read-file';
 import { readRecordFile } from '@/lib/services/read-record-file';
 import { readRecord, readShelf } from '@/lib/services/read-record';
+import { queuePacket } from '@/lib/services/request-packet';
 import { receiveUpload } from '@/lib/services/receive-upload';
 import { sealWorksheet } from '@/lib/services/seal-worksheet';
 import { stampingSettled } from '@/lib/services/stamp-checkpoints';
@@ -193,6 +195,23 @@ describe('what readers get of blacked-out pictures', () => {
     const { lines, purchases } = await whatCanBeOpened({ person, machineId: machine });
     const counted = record.entries.reduce((sum, one) => sum + one.attachments.length, 1);
     expect(scopeEffect(forSaleScope, lines, purchases).pictures).toBe(counted);
+  });
+
+  it('is the copy alone in a packet for sale, drawn, attached and said in words', async () => {
+    const { person, machine, shelf, purchase, oldReceipt, black } = await riderWithPictures();
+    await black({ shelf }, purchase.seq, oldReceipt, { reason: 'What it cost.' });
+    await stampingSettled();
+    const queued = await queuePacket({ machineId: machine, by: person.id, purpose: '', scope: forSaleScope });
+    await buildPacket(queued);
+    // poppler reads the words and lists the attached files.
+    const file = packetFile(queued.number);
+    const words = execFileSync('pdftotext', ['-layout', file, '-'], { encoding: 'utf8' }).replaceAll(/\s+/g, ' ');
+    expect(words).toContain('“Blacked-out copy of Receipt, front of line 1. What it cost.” Line 2 of the shelf’s log');
+    expect(words).toContain('Blacked-out copy, made here');
+    const attached = execFileSync('pdfdetach', ['-list', file], { encoding: 'utf8' });
+    expect(attached).toMatch(/receipt-2-1-receipt-front-[0-9a-f]{8}\.jpg/);
+    expect(attached).not.toContain(oldReceipt.slice(0, 8));
+    expect(spawnSync('node', ['scripts/verify.mjs', file]).status).toBe(0);
   });
 
   it('is the copy alone where the pictures of the work are closed, and nothing once it is struck', async () => {
