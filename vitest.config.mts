@@ -29,6 +29,8 @@ export default defineConfig({
           include: ['tests/browser/**/*.test.ts'],
           testTimeout: 120_000,
           hookTimeout: 240_000,
+          // A page may take its time on a busy machine; what it must come to show is asserted all the same.
+          expect: { poll: { timeout: 20_000 } },
           fileParallelism: false,
         },
       },
