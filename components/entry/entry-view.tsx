@@ -4,6 +4,7 @@ import { WitnessMark } from '@/components/mark/witness-mark';
 import { PageHead } from '@/components/ui/page-head';
 import { UserText } from '@/components/ui/user-text';
 import { describeDelay, formatInstant } from '@/lib/domain/instants';
+import { mayBeStruck } from '@/lib/domain/standing';
 import type { EntryView as Entry } from '@/lib/services/record-view';
 import { Addenda } from './addenda';
 import { Countersignature } from './countersignature';
@@ -84,7 +85,11 @@ function StruckTitle({ children }: { children: string }) {
 function StateWords({ entry, links }: { entry: Entry; links: EntryLinks }) {
   if (entry.state === 'struck') return 'Withdrawn; it stays readable.';
   if (entry.state === 'waiting') return 'Sealed. Its time stamp is still to come.';
-  if (entry.state === 'sealed') return 'Sealed. It can be added to or struck, never edited.';
+  if (entry.state === 'sealed') {
+    return mayBeStruck(entry.kind)
+      ? 'Sealed. It can be added to or struck, never edited.'
+      : 'Sealed. It can be added to, never edited.';
+  }
   return (
     <>
       Sealed, and countersigned

@@ -81,7 +81,10 @@ export function KeyEntry({ fingerprint, name }: { fingerprint: string; name: str
       <Box label="Key" note="Statements that are signed with it later are checked by this entry.">
         {name === null ? 'A key of a person not named here' : <UserText>{`A key of ${name}`}</UserText>}
       </Box>
-      <Box label="SHA-256 of the public key">
+      <Box
+        label="SHA-256 of the public key"
+        note="Whose key it is, is this installation’s word: compare this with one you have from its holder."
+      >
         <Hash value={fingerprint} what="fingerprint of the key" />
       </Box>
     </Boxes>

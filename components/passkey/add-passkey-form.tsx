@@ -1,5 +1,6 @@
 'use client';
 
+import { useState } from 'react';
 import { FormShell, type FormAction } from '@/components/account/form-shell';
 import { PasswordInput } from '@/components/account/password-input';
 import { TextInput } from '@/components/ui/text-input';
@@ -14,6 +15,7 @@ export interface AddPasskeyFormProps {
 
 /** Adds a key in one step: name it, give the password, answer the browser's prompt. */
 export function AddPasskeyForm({ begin, finish, email }: AddPasskeyFormProps) {
+  const [added, setAdded] = useState<string | null>(null);
   return (
     <FormShell action={begin} submit="Add a key" busy="Asking" look="plain" label="Add a key">
       {({ fields, typed, question }) => (
@@ -24,7 +26,9 @@ export function AddPasskeyForm({ begin, finish, email }: AddPasskeyFormProps) {
             name="name"
             required
             maxLength={60}
-            defaultValue={typed.name}
+            // Once its key is added the name is that key’s; the field is for the next one.
+            key={added}
+            defaultValue={added !== null && question?.id === added ? '' : typed.name}
             error={fields.name}
             hint="Where you will find it again: “Phone”, “Key on my ring”."
           />
@@ -40,6 +44,7 @@ export function AddPasskeyForm({ begin, finish, email }: AddPasskeyFormProps) {
             finish={finish}
             fields={{ name: typed.name ?? '' }}
             ifRefused="No key was added."
+            onDone={({ id }) => setAdded(id)}
           />
         </>
       )}

@@ -23,12 +23,12 @@ export function PasskeyPart({ keys, refusal, begin, finish, remove, email }: Pas
   return (
     <div className="grid gap-5">
       <p>
-        A key (a passkey) lives in your phone, computer or security key and never leaves it. With one you can sign what
-        you seal or countersign yourself, outside this server, so that not even whoever runs it could have written it in
-        your name. {ownSignatureLimit}
+        A key (a passkey) lives in your phone, computer or security key, not on this server. With one you sign yourself
+        what you seal or countersign. Whoever has your key’s fingerprint from you can tell that a statement was signed
+        with it; that a key is yours, a record alone says by this installation’s word. {ownSignatureLimit}
       </p>
       {keys.length === 0 ? null : (
-        <ul className="-my-3">
+        <ul className="border-t border-line">
           {keys.map((key) => (
             <KeyLine key={key.id} line={key} remove={remove} />
           ))}
@@ -59,7 +59,7 @@ function KeyLine({ line, remove }: { line: PasskeyPartProps['keys'][number]; rem
         {madeFor === null ? null : (
           <p className="tone-warn text-[0.9375rem]">Made for {madeFor}: it does not work here.</p>
         )}
-        <Hash value={fingerprint} isShort />
+        <Hash value={fingerprint} what="fingerprint of the key" />
       </div>
       <ConfirmButton
         action={remove}

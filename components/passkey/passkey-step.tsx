@@ -17,26 +17,31 @@ export interface PasskeyStepProps {
   fields?: Record<string, string>;
   /** What stands when the person cancels: "The entry is sealed and stays so." */
   ifRefused?: string;
+  /** The answer was taken. */
+  onDone?: (question: PasskeyQuestion) => void;
 }
 
 /** The second half of a form that needs the person's authenticator: asks it, sends the answer, says how it went. */
-export function PasskeyStep({ question, finish, fields = {}, ifRefused = '' }: PasskeyStepProps) {
+export function PasskeyStep({ question, finish, fields = {}, ifRefused = '', onDone }: PasskeyStepProps) {
   const router = useRouter();
   const [settled, settle] = useState<{ id: string; words: string; isDone: boolean } | null>(null);
 
-  const send = useEffectEvent(async (id: string, response: string) => {
+  const send = useEffectEvent(async (asked: PasskeyQuestion, response: string) => {
+    const { id } = asked;
     const form = new FormData();
     for (const [name, value] of Object.entries({ ...fields, challenge: id, response })) form.append(name, value);
     const lost = 'The answer of your key did not reach the server. Press the button again.';
     const state = await finish(emptyForm, form).catch(() => ({ ...emptyForm, message: lost }));
     settle({ id, words: state.message ?? '', isDone: state.ok });
-    if (state.ok) router.refresh();
+    if (!state.ok) return;
+    onDone?.(asked);
+    router.refresh();
   });
   useEffect(() => {
     if (question === undefined) return;
     const { id } = question;
     void askPasskey(question).then((answer) => {
-      if ('response' in answer) return send(id, answer.response);
+      if ('response' in answer) return send(question, answer.response);
       settle({ id, words: answer.refusal, isDone: false });
     });
   }, [question]);

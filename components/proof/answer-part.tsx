@@ -113,8 +113,8 @@ function Result({ invited: { invitation, zone } }: { invited: InvitedEntry }) {
   }
   return (
     <Notice title={`Countersigned ${at}`}>
-      The statement of <UserText>{answer.shop}</UserText> is entry {answer.seq} of the record. It can be withdrawn only
-      by a strike, which stays readable. Keep the mail of the invitation: it remembers the record as it stood.
+      The statement of <UserText>{answer.shop}</UserText> is entry {answer.seq} of the record. The owner can neither
+      edit nor strike it. Keep the mail of the invitation: it remembers the record as it stood.
     </Notice>
   );
 }

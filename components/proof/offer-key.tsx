@@ -15,8 +15,8 @@ export function OfferKey({ refusal, begin, finish, email }: OfferKeyProps) {
       </summary>
       <div className="grid gap-4 border-t border-line p-4">
         <p>
-          A key (a passkey) lives in your phone, computer or security key. With it you sign your statement outside this
-          server, so that nobody else could have written it in your name. {ownSignatureLimit}
+          A key (a passkey) lives in your phone, computer or security key. With it you sign your statement yourself,
+          outside this server. {ownSignatureLimit}
         </p>
         {refusal === null ? (
           <AddPasskeyForm {...{ begin, finish, email }} />

@@ -34,7 +34,13 @@ export function ownSignatureCells(entry: EntryView): Cell[] {
   const note = 'Statements that are signed with it later are checked by this entry.';
   return [
     { label: 'Key of', value: entry.author?.name ?? 'name withheld', note, span: 4 },
-    { label: 'SHA-256 of the public key', value: groupHash(fingerprint), kind: 'hash', span: 4 },
+    {
+      label: 'SHA-256 of the public key',
+      value: groupHash(fingerprint),
+      kind: 'hash',
+      note: 'Whose key it is, is this installation’s word: compare this with one you have from its holder.',
+      span: 4,
+    },
   ];
 }
 
@@ -65,6 +71,7 @@ export function drawOwnSignatures(sheet: Sheet, { record }: PacketContent): void
   });
   sheet.paragraph(
     `Carried by ${words.join('; ')}. Each was made with the signer’s own key (WebAuthn, ES256) over the statement at ` +
-      `its place; the program checks it without asking this server. ${ownSignatureLimit}`,
+      `its place; the program checks it without asking this server. Whose key it is, is this installation’s word until you compare ` +
+      `its fingerprint with its holder. ${ownSignatureLimit}`,
   );
 }
