@@ -25,6 +25,9 @@ interface Within {
 }
 
 export const findPerson = (id: string, within: In = {}) => people.find({ id }, within);
+/** What those of these ids who have an account are called. */
+export const namesOfIds = async (ids: Iterable<string>): Promise<string[]> =>
+  (await people.all({ id: [...new Set(ids)] })).map(({ name }) => name);
 /** `email` in the one spelling kept, lower case. */
 export const findPersonByEmail = (email: string, within: In = {}) => people.find({ email }, within);
 export const insertPerson = (row: PersonRow, within: Within) => people.insert(row, within);

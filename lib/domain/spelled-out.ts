@@ -41,3 +41,16 @@ export function numbersAnyOf(numbers: Iterable<string>): (value: unknown) => boo
       return wanted.some((number) => letters.includes(number));
     });
 }
+
+/** 17 letters and digits without I, O and Q, the last four digits (ISO 3779; 49 CFR 565.15 for the four). */
+const vinShape = /(?<![\p{L}\p{N}])[A-HJ-NPR-Z0-9]{13}[0-9]{4}(?![\p{L}\p{N}])/iu;
+
+/**
+ * Whether a value spells out what looks like a VIN, for a record whose own number was erased: nobody knows it any more,
+ * and a text may still say it.
+ *
+ * @example looksIdentifying({ text: 'VIN AAACRVSR3NA000417' }) // true
+ */
+export function looksIdentifying(value: unknown): boolean {
+  return [...textsIn(value)].some((text) => vinShape.test(text));
+}

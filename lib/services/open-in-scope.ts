@@ -1,10 +1,11 @@
 import 'server-only';
 import { readStoredLogs, type StoredLog } from '@/db/queries/entries';
 import { findLogOf } from '@/db/queries/logs';
+import { namesOfIds } from '@/db/queries/people';
 import { isPersonId } from '@/lib/domain/person-id';
 import { openedParts, type Scope, type ScopeLine } from '@/lib/domain/scope';
 import { openedShelfParts } from '@/lib/domain/shelf-scope';
-import { namesAnyOf, numbersAnyOf } from '@/lib/domain/spelled-out';
+import { looksIdentifying, namesAnyOf, numbersAnyOf } from '@/lib/domain/spelled-out';
 import { notFound } from '@/lib/errors';
 import type { CountersignatureBody, IdentityPart, PartName, ServiceBody } from '@/lib/evidence/format';
 import { authorOf, keepOpened, type OpenedEntry, openStoredLog } from '@/lib/services/open-stored-log';
@@ -42,7 +43,10 @@ export async function openInScope({ machineId, scope }: { machineId: string; sco
   const storedShelves = await readShelvesDrawn(purchasesDrawn(whole));
   const wholeShelves = storedShelves.map((shelf) => ({ stored: shelf, whole: openStoredLog(shelf) }));
 
-  const spelledOut = spelledOutIn([...whole, ...wholeShelves.flatMap((shelf) => shelf.whole)]);
+  const everything = [...whole, ...wholeShelves.flatMap((shelf) => shelf.whole)];
+  const sealers = [stored, ...storedShelves].flatMap(({ entries }) => entries.map(({ sealedBy }) => sealedBy));
+  const accounts = await namesOfIds([...sealers, ...everything.flatMap(idsInBody)]);
+  const spelledOut = spelledOutIn(everything, accounts);
   const lines = whole.map((entry) => scopeLine(entry, spelledOut));
   const opened = openedParts(scope, lines);
   const isOpen = (part: PartName, seq: number) => opened.get(seq)?.has(part) === true;
@@ -61,23 +65,30 @@ export async function openInScope({ machineId, scope }: { machineId: string; sco
 }
 
 /** Entries of earlier versions hold names in their body: of whoever invited a shop, and of whoever did the work. */
-function namesInBody({ kind, values }: OpenedEntry): string[] {
+function namesInBody(entry: OpenedEntry): string[] {
+  return peopleInBody(entry).filter((name) => !isPersonId(name));
+}
+
+const idsInBody = (entry: OpenedEntry): string[] => peopleInBody(entry).filter(isPersonId);
+
+function peopleInBody({ kind, values }: OpenedEntry): string[] {
   const body = values.get('body');
   if (body === undefined) return [];
-  const names =
-    kind === 'countersignature'
-      ? [(body as CountersignatureBody).invitedBy]
-      : kind === 'service'
-        ? (body as ServiceBody).performedBy.filter(({ capacity }) => isPerson(capacity)).map(({ person }) => person)
-        : [];
-  return names.filter((name) => !isPersonId(name));
+  if (kind === 'countersignature') return [(body as CountersignatureBody).invitedBy];
+  if (kind !== 'service') return [];
+  return (body as ServiceBody).performedBy.filter(({ capacity }) => isPerson(capacity)).map(({ person }) => person);
 }
 
 const isPerson = (capacity: ServiceBody['performedBy'][number]['capacity']) =>
   capacity === 'owner' || capacity === 'helper';
 
-/** Whose names and which numbers the record itself knows, wherever they are spelled out in it. */
-function spelledOutIn(entries: OpenedEntry[]): SpelledOut {
+/**
+ * Whose names and which numbers the record itself knows, wherever they are spelled out in it. What was erased is known
+ * to it no more, and a text that says it stays closed all the same.
+ *
+ * @param accounts names of those who have sealed or worked here, whose author parts may be erased
+ */
+function spelledOutIn(entries: OpenedEntry[], accounts: string[]): SpelledOut {
   const names = entries.flatMap((entry) => {
     const { name, sealedBy, people = [] } = authorOf(entry) ?? {};
     const names = [name, sealedBy, ...people.map((one) => one.name), ...namesInBody(entry)];
@@ -86,5 +97,8 @@ function spelledOutIn(entries: OpenedEntry[]): SpelledOut {
   const numbers = entries.flatMap(({ values }) =>
     Object.values((values.get('identity') as IdentityPart | undefined) ?? {}).filter((one) => typeof one === 'string'),
   );
-  return { isNaming: namesAnyOf(names), isIdentifying: numbersAnyOf(numbers) };
+  const isKnown = numbersAnyOf(numbers);
+  const isErased = entries.some(({ erasures }) => erasures.some(({ name }) => name === 'identity'));
+  const isIdentifying = (value: unknown) => isKnown(value) || (isErased && looksIdentifying(value));
+  return { isNaming: namesAnyOf([...names, ...accounts]), isIdentifying };
 }

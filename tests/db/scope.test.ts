@@ -1,4 +1,6 @@
 import { describe, expect, it } from 'vitest';
+import { write } from '@/db/index';
+import { eraseEntryPart } from '@/db/queries/erasures';
 import { forSaleScope, narrowestScope, type Scope } from '@/lib/domain/scope';
 import { openDisclosure } from '@/lib/evidence/disclosure';
 import type { Bundle } from '@/lib/evidence/format';
@@ -10,7 +12,7 @@ import { publishedKeys } from '@/lib/services/log-keys';
 import { readRecord } from '@/lib/services/read-record';
 import { requestPacket } from '@/lib/services/request-packet';
 import { countersignatureBody, sealRecord } from '../setup/sealed-record';
-import { useTestDatabase } from '../setup/test-database';
+import { makePerson, useTestDatabase } from '../setup/test-database';
 
 useTestDatabase();
 
@@ -23,6 +25,7 @@ const wordsIn = ({ logs }: Bundle) =>
     .flatMap(({ entries }) => entries.flatMap(({ parts }) => parts))
     .map((disclosure) => JSON.stringify(openDisclosure(disclosure).value))
     .join('\n');
+const openedBody = ({ entries }: Awaited<ReturnType<typeof readRecord>>, seq: number) => ({ ...entries[seq]?.body });
 const only = (...seqs: number[]): Scope => ({ entries: { seqs }, closed: ['prices'] });
 
 describe('a bundle of a scope', () => {
@@ -63,6 +66,34 @@ describe('a bundle of a scope', () => {
     const everything = wordsIn((await bundleOf(machineId, { closed: [] })).bundle);
     expect(everything).toContain('"7194"');
     expect(check(text).outcome).toBe('unchanged');
+  });
+
+  it('for sale keeps a text closed that says what was erased: whose name, or the VIN', async () => {
+    const { machineId, machine, service, seal, rider } = await sealRecord();
+    const joost = await makePerson({ name: 'Joost Vandersloot', email: 'joost@witnessmark.example' });
+    const performedBy = [{ person: joost.id, capacity: 'helper' as const }];
+    const body = { ...openedBody(await readRecord({ machineId }), service.seq), performedBy };
+    const people = [{ person: joost.id, name: joost.name }];
+    const helped = await seal(machine.log, 'service', {
+      author: { person: rider.id, name: rider.name, role: 'owner', people },
+      body,
+    });
+    for (const text of ['Joost Vandersloot held the lamp.', 'The plate reads AAACRVSR3NA000417.']) {
+      await seal(machine.log, 'addendum', { body: { text } }, helped);
+    }
+    const said = async () => wordsIn((await bundleOf(machineId, forSaleScope)).bundle);
+    expect(await said()).not.toMatch(/held the lamp|AAACRVSR3NA000417/);
+    const erased = {
+      logId: machine.log,
+      erasedAt: '2026-06-01T00:00:00.000Z',
+      erasedBy: rider.id,
+      recordedSeq: helped.seq + 1,
+    };
+    await write(async (transaction) => {
+      await eraseEntryPart({ ...erased, seq: helped.seq, name: 'author' }, transaction);
+      await eraseEntryPart({ ...erased, seq: 0, name: 'identity' }, transaction);
+    });
+    expect(await said()).not.toMatch(/held the lamp|AAACRVSR3NA000417/);
   });
 
   it('keeps a countersignature of an earlier version closed where names are: it has one in its body', async () => {
