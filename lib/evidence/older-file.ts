@@ -104,7 +104,8 @@ export function stoodIn(olderText: string, newerText: string, { log, seq }: { lo
 
 function ofNotes(text: string): OlderFile {
   // Mail programs end lines in their own way, and leave space around what was marked.
-  const plain = text.replaceAll('\r\n', '\n').replace(/[ \t]+(?=\n|$)/g, '');
+  // Only from the first blank of a run: tried from each of them, a megabyte of blanks would take hours.
+  const plain = text.replaceAll('\r\n', '\n').replace(/(?<![ \t])[ \t]+(?=\n|$)/g, '');
   const found = [...new Set(plain.match(noteInText) ?? [])];
   if (found.length > maxNotes) throw new Error(`it holds more than ${maxNotes} signed checkpoints`);
   // Nothing like one: what stands there is read as one, so that the reason is named.

@@ -95,6 +95,9 @@ function judge(log: string, line: StatementLine, carried: unknown, keys: readonl
     const body = kind === 'countersignature' && isJsonObject(line.body) ? line.body : {};
     const { site, publicKey } = checkStatementSignature(carried, statementChallenge({ log, refersTo, body }));
     if (refersTo === null) return { result: 'fails', reason: 'it names no entry that it signs' };
+    // Over no words, it would be what a `signature` entry carries, taken from there and called a countersignature.
+    const isBare = kind === 'countersignature' && Object.keys(body).every((name) => name === 'signature');
+    if (isBare) return { result: 'fails', reason: 'the countersignature says nothing that was signed' };
     // The newest: a key may have been named again after a strike.
     const key = keys.findLast((one) => isKeyBody(one.body) && one.body.publicKey === publicKey);
     if (key === undefined || !isKeyBody(key.body)) {

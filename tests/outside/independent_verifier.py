@@ -308,6 +308,8 @@ def check_statements(log, lines):
         try:
             if line["refersTo"] is None:
                 raise ValueError("names no entry")
+            if line["kind"] == "countersignature" and not unsigned:
+                raise ValueError("says nothing")
             key = check_statement(signature, log["id"], line["refersTo"], unsigned)
             keys = [other for other in lines if other["kind"] == "key" and other["seq"] < line["seq"]
                     and not is_struck(other["seq"], line["seq"], lines)]

@@ -225,6 +225,17 @@ it('another machine’s file that shares only the shelf is not called a beginnin
   expect(finding.against?.sentence).toContain('about another machine');
 });
 
+it('a long run of blanks in an older file costs no more than as much text', () => {
+  const record = buildRecord();
+  // Tried anew from each of its blanks, this run alone would take longer than the test may.
+  const { against } = verifyBundle({
+    bundleText: signedText(unsignedBundle(record)),
+    key,
+    against: `a${' '.repeat(200_000)}b`,
+  });
+  expect(against?.result).toBe('not-comparable');
+});
+
 it('checkpoints are found within the text of a mail, one for each log', () => {
   const record = buildRecord();
   const seals = [record.machine.seals[1], record.shelf.seals[0]].join('\n');

@@ -91,6 +91,17 @@ describe('a countersignature that the shop signed with its own key', () => {
     expect(finding.entries[seq]).toMatchObject({ deviceSignature: null, problems: ['statement-signature-invalid'] });
   });
 
+  it('is altered when it says nothing and carries what its signer gave as the signature of an entry', () => {
+    goOn();
+    named(ownKey, author);
+    signEntry(service);
+    const signature = signStatement(ownKey, { log: machine.id, refersTo: service, body: {} });
+    const { seq } = countersign({ signature }, service, author);
+    expect(codesOf(verified())).toEqual([
+      expect.stringMatching(`^statement-signature-invalid at ${seq}: .*says nothing`),
+    ]);
+  });
+
   it('is altered when it stands for another entry than the one that was signed', () => {
     goOn();
     const key = named(shopKey);
