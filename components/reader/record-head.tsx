@@ -29,6 +29,10 @@ function withheldWords({ partsWithheld, partsErased }: Opened): string {
   return `${counted(partsWithheld, 'part', 'parts')} withheld${erased}`;
 }
 
+/** Of a partial view nobody may take “1 of 1” for the whole record. */
+const servicesWords = ({ unjudged }: Opened): string =>
+  unjudged === 0 ? 'services that stand' : 'services opened here';
+
 const readWords = (on: string, { unjudged }: Opened): string =>
   `read ${formatLocalDate(on)}${unjudged === 0 ? '' : '; later ones may be withheld'}`;
 
@@ -53,10 +57,10 @@ export function RecordHead({ shown }: { shown: Shown }) {
       <Box label="Entries opened" isMeasure note={withheldWords(opened)}>
         {counts.entries}
       </Box>
-      <Box label="Sealed within 7 days" isMeasure note="of the work, services that stand">
+      <Box label="Sealed within 7 days" isMeasure note={`of the work, ${servicesWords(opened)}`}>
         {counts.prompt}
       </Box>
-      <Box label="Countersigned" isMeasure note="by a shop, services that stand">
+      <Box label="Countersigned" isMeasure note={`by a shop, ${servicesWords(opened)}`}>
         {counts.countersigned}
       </Box>
       <Box label="Where the record starts" span={2}>

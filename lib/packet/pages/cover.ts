@@ -11,6 +11,7 @@ import { drawMark } from '../sheet/mark';
 import { contentWidth, edges, types, type Sheet } from '../sheet/sheet';
 import { drawTable } from '../sheet/table';
 import type { PacketSummary } from '../summary';
+import { servicesWords } from '../summary/opened';
 import { counted, limitWords, lowered, roundedOf } from '../words';
 import { drawDoneInTime } from './done-in-time';
 
@@ -22,12 +23,12 @@ export function drawCover(sheet: Sheet, content: PacketContent, summary: PacketS
     sheet.newPage();
     sheet.layer.bookmark('Cover', 0, 0);
     drawHead(sheet, content, summary);
-    const { counts, gaps } = summary;
+    const { counts, gaps, opened } = summary;
     drawBoxes(sheet, 5, [
       { label: 'Entries opened', value: counts.entries, kind: 'number', note: withheldWords(summary) },
-      { label: 'Sealed within 7 days', value: counts.prompt, kind: 'number' },
+      { label: 'Sealed within 7 days', value: counts.prompt, kind: 'number', note: servicesWords(opened) },
       { label: 'Time proven independently', value: counts.proven, kind: 'number', isGap: counts.proven === 'none' },
-      { label: 'Countersigned', value: counts.countersigned, kind: 'number' },
+      { label: 'Countersigned', value: counts.countersigned, kind: 'number', note: servicesWords(opened) },
       {
         label: 'Gaps',
         value: gaps.length === 0 ? 'none found' : `${gaps.length}, below`,

@@ -1,4 +1,5 @@
 import 'server-only';
+import { checkTitle } from '@/lib/domain/checks';
 import { formatLocalDate, localDateOf } from '@/lib/domain/instants';
 import type { EntryView } from '@/lib/services/record-view';
 import { entryAnchor, isService, type PacketContent } from '../content';
@@ -36,7 +37,10 @@ function drawLine(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void
   const about = entry.refersTo === null ? '' : `about entry ${entry.refersTo.seq}; `;
   const added = entry.addenda.length === 0 ? '' : `; added to in ${entry.addenda.join(', ')}`;
   const details = `${about}sealed ${formatLocalDate(localDateOf(entry.sealedAt, zone))}${added}`;
-  const height = Math.max(58, lines.length * types.value.leading + types.small.leading + 14);
+  const remarks = remarksOf(entry).flatMap((remark) => breakLines(remark, types.small.face, types.small.size, width));
+  const said =
+    remarks.length > mostLines ? [...remarks.slice(0, mostLines - 1), `${remarks[mostLines - 1]} …`] : remarks;
+  const height = Math.max(58, lines.length * types.value.leading + (1 + said.length) * types.small.leading + 14);
   sheet.room(height);
   const { layer, y } = sheet;
   const odometer = odometerOf(entry);
@@ -51,7 +55,9 @@ function drawLine(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void
       if (entry.struckBy !== null)
         layer.line(at.what, middle, at.what + drawn, middle, { stroke: colours.ink, width: 0.9 });
     });
-    sheet.lineAt(details, at.what, y + 9 + lines.length * types.value.leading, types.small);
+    const below = y + 9 + lines.length * types.value.leading;
+    sheet.lineAt(details, at.what, below, types.small);
+    sheet.block(said, at.what, below + types.small.leading, { ...types.small, colour: colours.gap });
   });
   drawMark(sheet, entry.state, entry.leafHash, markRight - markSize / 2, y + 4, markSize);
   layer.tag('LBody', () => {
@@ -61,6 +67,17 @@ function drawLine(sheet: Sheet, entry: EntryView, { zone }: PacketContent): void
   });
   sheet.y += height;
   layer.line(edges.left, sheet.y, edges.right, sheet.y, { stroke: colours.hair, width: 0.6 });
+}
+
+/** What nobody may pass over: that it was withdrawn and why, or what its checks name as gaps. */
+function remarksOf(entry: EntryView): string[] {
+  if (entry.struckBy !== null) {
+    const { seq, reason } = entry.struckBy;
+    return [`Struck by entry ${seq}${reason === '' ? '.' : `: ${reason}`}`];
+  }
+  if (!isService(entry) || entry.body === null) return [];
+  const gaps = entry.body.checks.filter(({ result }) => result === 'gap');
+  return gaps.map(({ key, detail }) => `Gap: ${detail === '' ? checkTitle(key) : detail}`);
 }
 
 function dateOf(entry: EntryView, zone: string): string {

@@ -28,7 +28,7 @@ export function drawTask(sheet: Sheet, task: Partial<Task> & { title: string }, 
   }
   if (steps.length > 0) {
     sheet.gap(3);
-    sheet.paragraph(`Steps done: ${steps.join('; ')}.`, types.small);
+    sheet.paragraph(`Hold points ticked: ${steps.join('; ')}.`, types.small);
   }
   drawDraws(sheet, task, record);
 }

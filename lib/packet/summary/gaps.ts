@@ -43,11 +43,13 @@ function withheldWords({ unjudged }: Opened): string {
   return `${what} withheld: no interval, warranty or due date is judged by the rest.`;
 }
 
+/** A figure with no manual or paper behind it is the owner’s own. */
+export const isUnnamed = ({ source: { kind, title } }: { source: Source }): boolean =>
+  kind === 'common-practice' || title === undefined;
+
 function sourceGaps(terms: RecordView['terms']): string[] {
   if (terms === null) return ['No terms are opened, so nothing is said of what was due.'];
   const { schedule, fluidPoints, fasteners, parts, warranty } = terms;
-  const isUnnamed = ({ source: { kind, title } }: { source: Source }) =>
-    kind === 'common-practice' || title === undefined;
   const limits = schedule.filter(isUnnamed).length;
   const lines = [...fluidPoints, ...fasteners, ...parts];
   const figures = lines.filter(isUnnamed).length;

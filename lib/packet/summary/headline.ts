@@ -1,4 +1,5 @@
 import { counted, lowered } from '../words';
+import { isUnnamed } from './gaps';
 import type { ItemSummary } from './items';
 import { listed } from './listed';
 import type { Opened } from './opened';
@@ -13,13 +14,14 @@ export function headlineOf(items: ItemSummary[], services: number, opened: Opene
     const isJudged = intervals.some(({ result }) => result === 'in-time');
     return summary.late === 0 && summary.withinGrace === 0 && summary.notKnown === 0 && isJudged;
   });
+  const whose = kept.some(({ item }) => isUnnamed(item)) ? ' by the owner’s terms' : '';
   const keptWords =
     kept.length === 0
       ? ''
       : `${listed(
           kept.map(({ item }) => lowered(item.title)),
           'other items',
-        )} always in time`;
+        )} always in time${whose}`;
   if (late.length === 0) {
     if (kept.length === 0) return `${counted(services, 'service is', 'services are')} in this record.`;
     return `${keptWords.charAt(0).toUpperCase()}${keptWords.slice(1)}.`;

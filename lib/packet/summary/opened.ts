@@ -35,6 +35,10 @@ export function openedOf({ entries, shelves, log }: RecordView): Opened {
 export const notJudged = ({ unjudged }: Opened): string =>
   `not judged: ${counted(unjudged, 'entry', 'entries')} withheld`;
 
+/** Of which services a figure is a share: of a partial view nobody may take "1 of 1" for the whole record. */
+export const servicesWords = ({ unjudged }: Opened): string =>
+  unjudged === 0 ? 'services that stand' : 'services opened here';
+
 /** "14 of 35 entries opened, 98 parts withheld" */
 export function openedWords({ entries, of, partsWithheld, partsErased }: Opened): string {
   const erased = partsErased === 0 ? '' : `, ${counted(partsErased, 'part', 'parts')} erased`;
