@@ -1,14 +1,19 @@
 import 'server-only';
-import { findViewingLink, readyPacketsOf, type PacketRow, type ViewingLinkRow } from '@/db/queries/viewing-links';
+import {
+  findViewingLink, lastTakenBack, readyPacketsOf, type PacketRow, type ViewingLinkRow,
+} from '@/db/queries/viewing-links'; // prettier-ignore
 import { notFound } from '@/lib/errors';
 import { openPacketFile } from '@/lib/services/read-packet';
 
 /**
  * The newest packet that a viewing link may hand out: built for exactly what the link opens, and carrying no link of
- * its own that would stay open longer than this one. Anything else would give its reader more than the owner chose.
+ * its own that would stay open longer than this one. Anything else would give its reader more than the owner chose. So
+ * would one from before something was erased, or a blacked-out copy struck.
  */
 export async function offeredPacket(link: ViewingLinkRow): Promise<PacketRow | null> {
+  const takenBack = await lastTakenBack(link.machineId);
   for (const packet of await readyPacketsOf(link.machineId, link.scope)) {
+    if (takenBack !== null && packet.createdAt <= takenBack) continue;
     const own = packet.linkId === null ? null : await findViewingLink(packet.linkId);
     if (own === null || endsWithin(own, link)) return packet;
   }

@@ -34,7 +34,18 @@ export async function buildProofWorld() {
     person: technician,
     input: { name: 'Halyard Cycle Works', address: '1 Quay Street, Halyard', registration: '' },
   });
-  return { person, machine, seq, odometer, receiptPdf, unsealed, technician, shop: shop.id };
+  return {
+    person,
+    machine,
+    shelf,
+    purchase: purchase.seq,
+    seq,
+    odometer,
+    receiptPdf,
+    unsealed,
+    technician,
+    shop: shop.id,
+  };
 }
 
 async function picture(background: string): Promise<Buffer> {

@@ -5,6 +5,7 @@ import { findViewingLink, updateViewingLink } from '@/db/queries/viewing-links';
 import { forSaleScope, type Scope } from '@/lib/domain/scope';
 import { buildPacket, packetFile } from '@/lib/services/build-packet';
 import { createViewingLink } from '@/lib/services/create-viewing-link';
+import { eraseInput, erasePart } from '@/lib/services/erase-part';
 import { listProof } from '@/lib/services/list-proof';
 import { offeredPacket } from '@/lib/services/offered-packet';
 import { readRecordFile } from '@/lib/services/read-record-file';
@@ -102,5 +103,23 @@ describe('what can be opened', () => {
     await expect(whatCanBeOpened({ person: technician, machineId: machine })).rejects.toMatchObject({
       code: 'not-found',
     });
+  });
+});
+
+describe('a packet from before an erasure', () => {
+  it('is offered by no link any more, whether something went from the machine or from its shelf', async () => {
+    const { person, machine, shelf, purchase, seq } = world;
+    const { id: linkId } = await createViewingLink({ machineId: machine, by: person.id, label: 'a', expiresAt: null });
+    const link = (await findViewingLink(linkId))!;
+    for (const { part, ...place } of [
+      { subject: { machine }, seq, part: 'attachments' },
+      { subject: { shelf }, seq: purchase, part: 'supplier' },
+    ]) {
+      const { id } = await queuePacket({ machineId: machine, by: person.id, purpose: '' });
+      await write((transaction) => updatePacket(id, { state: 'ready' }, transaction));
+      expect((await offeredPacket(link))?.id).toBe(id);
+      await erasePart({ person, ...place, input: eraseInput.parse({ part, word: 'erase', key: crypto.randomUUID() }) });
+      expect(await offeredPacket(link)).toBeNull();
+    }
   });
 });
