@@ -32,6 +32,10 @@ export async function keepsAnybody(logId: string | null): Promise<boolean> {
 export const countAsked = (machineId: string, email: string, since: string, within: Within = {}) =>
   checkpointKeepers.count({ machineId, email, addedAt: { [Op.gt]: since } }, within);
 
+/** How often an address was asked since an instant, about whatever machine and by whomever. */
+export const countAskedOf = (email: string, since: string, within: Within = {}) =>
+  checkpointKeepers.count({ email, addedAt: { [Op.gt]: since } }, within);
+
 /** How many addresses a person has asked since an instant. */
 export const countAskedBy = (personId: string, since: string, within: Within = {}) =>
   checkpointKeepers.count({ addedBy: personId, addedAt: { [Op.gt]: since } }, within);

@@ -3,7 +3,13 @@ import { randomUUID } from 'node:crypto';
 import { z } from 'zod';
 import { write } from '@/db/index';
 import type { PersonRow } from '@/db/models/people';
-import { countAsked, countAskedBy, insertKeeper, keepersOfMachine } from '@/db/queries/checkpoint-keepers';
+import {
+  countAsked,
+  countAskedBy,
+  countAskedOf,
+  insertKeeper,
+  keepersOfMachine,
+} from '@/db/queries/checkpoint-keepers';
 import { findLogOf } from '@/db/queries/logs';
 import { authorise } from '@/lib/auth/guard';
 import { env } from '@/lib/env';
@@ -18,6 +24,8 @@ export const mostKeepersOfAMachine = 5;
 /** Whoever does not answer, or has stopped it, is not asked about the same machine again and again. */
 const mostAskedInAQuarter = 2;
 const mostAskedADay = 10;
+/** By everybody together, about all machines: nobody's mailbox is to be filled from here. */
+const mostAskedOfAnAddressAWeek = 3;
 const millisecondsInDay = 24 * 60 * 60 * 1000;
 
 export const keeperInput = z.object({
@@ -54,6 +62,9 @@ export async function askCheckpointKeeper(options: {
     }
     if ((await countAsked(machineId, input.email, since(90), { transaction })) >= mostAskedInAQuarter) {
       throw invalidInput({ email: 'This address was asked twice within three months. Choose another.' });
+    }
+    if ((await countAskedOf(input.email, since(7), { transaction })) >= mostAskedOfAnAddressAWeek) {
+      throw invalidInput({ email: 'This address cannot be asked now. Choose another, or try again in a week.' });
     }
     if ((await countAskedBy(person.id, since(1), { transaction })) >= mostAskedADay) {
       throw new WitnessmarkError('too-many-attempts', `${mostAskedADay} addresses were asked within a day. Try again tomorrow.`); // prettier-ignore

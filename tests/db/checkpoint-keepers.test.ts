@@ -106,6 +106,17 @@ describe('an address that is asked to keep checkpoints', () => {
     await expect(ask('one@more.example')).rejects.toMatchObject({ fields: { email: expect.stringContaining('at most 5') as string } }); // prettier-ignore
   });
 
+  it('is asked three times a week at most, about however many machines and by whomever', async () => {
+    const askAnew = async () => {
+      const { machine: machineId, person: owner } = await riderWithMachine();
+      await askCheckpointKeeper({ person: owner, machineId, input: { email: address } });
+    };
+    for (let asked = 0; asked < 3; asked += 1) await askAnew();
+    const before = mails().length;
+    await expect(askAnew()).rejects.toMatchObject({ fields: { email: expect.stringContaining('a week') as string } });
+    expect(mails()).toHaveLength(before);
+  });
+
   it('is asked and taken away by an owner alone, and only the owner sees it', async () => {
     await keeping();
     const stranger = await makePerson();
