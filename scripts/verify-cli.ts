@@ -1,6 +1,7 @@
 import { readdir, readFile, realpath } from 'node:fs/promises';
 import path from 'node:path';
 import { parseArgs } from 'node:util';
+import { aboutLines } from '@/lib/evidence/about-lines';
 import { readContainer } from '@/lib/evidence/container';
 import type { Finding, Outcome } from '@/lib/evidence/finding';
 import { givenKey } from '@/lib/evidence/given-key';
@@ -42,9 +43,11 @@ async function run(argumentsGiven: string[]): Promise<number> {
     process.stderr.write(usage);
     return exitCodes.unreadable;
   }
-  const finding = await check(file, values);
+  const { finding, bundleText } = await check(file, values);
   process.stdout.write(
-    values.json === true ? `${printable(JSON.stringify(finding, null, 2))}\n` : reportText(file, finding),
+    values.json === true
+      ? `${printable(JSON.stringify(finding, null, 2))}\n`
+      : reportText(file, finding, aboutLines(bundleText)),
   );
   return exitCodes[finding.outcome];
 }
@@ -56,7 +59,10 @@ interface Options {
   'tsa-roots'?: string | undefined;
 }
 
-async function check(file: string, { key, files: folder, against, 'tsa-roots': rootsFile }: Options): Promise<Finding> {
+async function check(
+  file: string,
+  { key, files: folder, against, 'tsa-roots': rootsFile }: Options,
+): Promise<{ finding: Finding; bundleText: string }> {
   const bytes = await readGiven(file);
   const roots = rootsFile === undefined ? [] : await readGivenRoots(rootsFile);
   let container: Awaited<ReturnType<typeof readContainer>>;
@@ -64,14 +70,15 @@ async function check(file: string, { key, files: folder, against, 'tsa-roots': r
     container = await readContainer(bytes);
   } catch (error) {
     // The empty text is no record either: the finding keeps its shape, the sentence says why.
-    return { ...verifyBundle({ bundleText: '' }), sentence: error instanceof Error ? error.message : String(error) };
+    const sentence = error instanceof Error ? error.message : String(error);
+    return { finding: { ...verifyBundle({ bundleText: '' }), sentence }, bundleText: '' };
   }
   const given = givenKey(key ?? '', container.bundleText);
   if (given.refusal !== undefined) throw new Error(`Nothing was checked. The key you gave: ${given.refusal}`);
   const beside = folder === undefined ? undefined : await filesIn(folder, await realpath(file));
   const files =
     container.files === undefined && beside === undefined ? undefined : [...(container.files ?? []), ...(beside ?? [])];
-  return verifyBundle({
+  const finding = verifyBundle({
     bundleText: container.bundleText,
     at: new Date().toISOString(),
     roots,
@@ -80,6 +87,7 @@ async function check(file: string, { key, files: folder, against, 'tsa-roots': r
     ...(against !== undefined && { against: await readOlder(against) }),
     ...(container.pages && { pages: container.pages }),
   });
+  return { finding, bundleText: container.bundleText };
 }
 
 async function readGiven(file: string): Promise<Buffer> {

@@ -1,3 +1,5 @@
+import { struckLines } from '@/lib/domain/standing';
+import type { AboutLines } from '@/lib/evidence/about-lines';
 import { whatIsShown } from '@/lib/evidence/format';
 import { signedRoot, type EntryFinding, type Finding, type Stamp } from '@/lib/evidence/finding';
 
@@ -10,10 +12,10 @@ export function printable(text: string): string {
 }
 
 /** The finding as plain text: the outcome first, then what it rests on, then every entry. */
-export function reportText(file: string, finding: Finding): string {
+export function reportText(file: string, finding: Finding, about: AboutLines): string {
   const { bundle, counts, key } = finding;
   const lines = [`${finding.outcome.toUpperCase()}  ${file}`, finding.sentence, ''];
-  if (bundle !== null) lines.push(`Record ${bundle.number}, made at ${bundle.madeAt}, for: ${bundle.purpose}`);
+  if (bundle !== null) lines.push(`Record ${bundle.number}, made at ${bundle.madeAt}${bundle.purpose === '' ? '' : `, for: ${bundle.purpose}`}`);
   for (const log of finding.logs) {
     const signed = log.checkpoint === null ? 'no readable checkpoint' : `${log.checkpoint.size} entries, root ${signedRoot(log.checkpoint)}`;
     const lined = finding.entries.filter((entry) => entry.log === log.id);
@@ -36,7 +38,8 @@ export function reportText(file: string, finding: Finding): string {
   section(lines, 'To know', finding.remarks.map((item) => `${item.sentence} [${item.code}]`));
   section(lines, 'Not checked', finding.notChecked);
   section(lines, 'Time stamps', authorityLines(finding.entries));
-  section(lines, 'Entries', finding.entries.map(entryLine));
+  const struck = new Map(finding.logs.map(({ id }) => [id, struckIn(finding.entries, id, about)]));
+  section(lines, 'Entries', finding.entries.map((entry) => entryLine(entry, about[placeOf(entry)], struck.get(entry.log)?.get(entry.seq))));
   if (bundle !== null) lines.push('', whatIsShown);
   return `${printable(lines.join('\n'))}\n`;
 } // prettier-ignore
@@ -90,12 +93,23 @@ function authorityWords({ signer, trust, root }: Stamp): string {
   return `${name}: independent, under your root “${root.name.replace(/\s+/g, ' ')}”\n      root fingerprint ${fingerprint}`;
 }
 
-function entryLine(entry: EntryFinding): string {
+const placeOf = ({ log, seq }: EntryFinding) => `${log}/${seq}`;
+
+/** By seq: the strike that withdraws a line. A line with a problem strikes nothing. */
+function struckIn(entries: EntryFinding[], log: string, about: AboutLines): Map<number, number> {
+  const sound = entries.filter((entry) => entry.log === log && entry.problems.length === 0);
+  return struckLines(
+    sound.map((entry) => ({ seq: entry.seq, kind: entry.kind ?? '', refersToSeq: about[placeOf(entry)] ?? null })),
+  );
+}
+
+function entryLine(entry: EntryFinding, about: number | undefined, struckBy: number | undefined): string {
   const { claimed } = entry;
   const moment = claimed?.finishedAt ?? claimed?.startedAt;
   const said = moment === undefined ? '' : `, claimed ${moment.date}${moment.time === undefined ? '' : ` ${moment.time}`} ${moment.zone}`;
   const closed = entry.withheldParts.length === 0 ? '' : `, withheld: ${entry.withheldParts.join(' ')}`;
   const wrong = entry.problems.length === 0 ? '' : ` !! ${entry.problems.join(' ')}`;
   const own = entry.deviceSignature === null ? '' : `, signed with the signer’s own key, outside the server, on ${entry.deviceSignature.site} (key named in entry ${entry.deviceSignature.keySeq})`;
-  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${titleOf(entry)}${said}, sealed ${entry.sealedAt ?? 'unknown'}, ${provenWords(entry)}${own}${closed}${wrong}`;
+  const later = `${about === undefined ? '' : ` about entry ${about}`}${struckBy === undefined ? '' : `, STRUCK by entry ${struckBy}`}`;
+  return `${entry.log.slice(0, 8)} ${entry.seq} ${entry.kind ?? 'unreadable'}${titleOf(entry)}${later}${said}, sealed ${entry.sealedAt ?? 'unknown'}, ${provenWords(entry)}${own}${closed}${wrong}`;
 } // prettier-ignore

@@ -1,27 +1,6 @@
 import { struckLines } from '@/lib/domain/standing';
-import { isJsonObject, parseJson } from '@/lib/evidence/canonical';
+import type { AboutLines } from '@/lib/evidence/about-lines';
 import type { EntryFinding } from '@/lib/evidence/finding';
-import { parseLeaf } from '@/lib/evidence/leaf';
-
-/** `<log>/<seq>` of a line → the earlier line of the same log that it is about. */
-export type AboutLines = Record<string, number>;
-
-/** What each line of a record is about. Lines that cannot be read are about nothing. Never throws. */
-export function aboutLines(bundleText: string): AboutLines {
-  const about: AboutLines = {};
-  try {
-    const bundle = parseJson(bundleText);
-    for (const log of isJsonObject(bundle) && Array.isArray(bundle.logs) ? bundle.logs : []) {
-      for (const entry of log.entries) {
-        const { seq, refersTo } = parseLeaf(entry.leaf);
-        if (refersTo !== null && refersTo.seq < seq) about[`${log.id}/${seq}`] = refersTo.seq;
-      }
-    }
-  } catch {
-    // What stands before the line that cannot be read counts; the check names that line.
-  }
-  return about;
-}
 
 /** What later lines did to a line. */
 export interface LaterLines {

@@ -1,3 +1,4 @@
+import { type AboutLines, aboutLines } from '@/lib/evidence/about-lines';
 import { type Container, readContainer } from '@/lib/evidence/container';
 import type { Finding } from '@/lib/evidence/finding';
 import { givenKey, listedKeys } from '@/lib/evidence/given-key';
@@ -6,7 +7,6 @@ import { kindOfFile, whyNoRecord } from '@/lib/evidence/kind-of-file';
 import { stoodIn } from '@/lib/evidence/older-file';
 import { readRoots } from '@/lib/evidence/roots';
 import { verifyBundle } from '@/lib/evidence/verify';
-import { type AboutLines, aboutLines } from './about-lines';
 
 export interface CheckRequest {
   file: ArrayBuffer;

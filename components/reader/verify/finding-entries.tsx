@@ -2,8 +2,9 @@
 
 import { useState } from 'react';
 import { Button } from '@/components/ui/button';
+import type { AboutLines } from '@/lib/evidence/about-lines';
 import type { Finding, LogFinding } from '@/lib/evidence/finding';
-import { type AboutLines, laterLines } from './about-lines';
+import { laterLines } from './about-lines';
 import { EntryLine } from './entry-line';
 import { linesAtOnce } from './limits';
 

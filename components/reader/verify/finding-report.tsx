@@ -7,7 +7,7 @@ import { AlterationList } from './alteration-list';
 import type { Checked } from './check-file';
 import { ComparisonPart } from './comparison-part';
 import { FindingEntries } from './finding-entries';
-import { gapItems } from './gap-items';
+import { gapItems, struckItems } from './gap-items';
 import { KeyAlarm, KeyPart } from './key-part';
 import { keyVerdict } from './key-verdict';
 import { OutcomeHead } from './outcome-head';
@@ -48,6 +48,7 @@ export function FindingReport({ name, checked, checkedAt, published, checkedWith
       <AlterationList finding={finding} />
       {against === null ? null : <ComparisonPart comparison={against} />}
       <PlainList title="Gaps that the record names itself" items={gapItems(finding, about)} />
+      <PlainList title="Struck: withdrawn, and still readable" items={struckItems(finding, about)} />
       <PlainList
         title="Know this, too"
         items={remarks

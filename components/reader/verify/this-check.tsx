@@ -34,7 +34,7 @@ export function ThisCheck({ name, checked, checkedAt, checkedWith }: ThisCheckPr
           { term: 'SHA-256 of the file', detail: <Hash value={sha256} what="SHA-256 of the file" /> },
           ...(bundle === null
             ? []
-            : [{ term: 'It says of itself', detail: <UserText>{cut(`${bundle.number}, made ${bundle.madeAt}, for: ${bundle.purpose}`)}</UserText> }]),
+            : [{ term: 'It says of itself', detail: <UserText>{cut(`${bundle.number}, made ${bundle.madeAt}${bundle.purpose === '' ? '' : `, for: ${bundle.purpose}`}`)}</UserText> }]),
           ...logs.map(({ id, subject, checkpoint }) => ({
             term: subject === 'machine' ? 'The machine’s log' : 'A shelf’s log',
             detail: (

@@ -25,11 +25,14 @@ export function VerifyTool({ load, published, checkedWith }: VerifyToolProps) {
   const { state, check, cancel } = useCheck(load);
   const [file, setFile] = useState<File | null>(null);
   const [further, setFurther] = useState(nothingFurther);
+  const [asked, setAsked] = useState(nothingFurther);
   const take = (given: File | null) => {
     setFile(given);
+    setAsked(further);
     if (given !== null) check({ file: given, ...further });
   };
   const answer = state.at === 'done' ? state.answer : null;
+  const isBehind = answer?.kind === 'found' && (['key', 'against', 'roots'] as const).some((one) => further[one] !== asked[one]);
   const refused = answer?.kind === 'refused' ? answer : null;
   return (
     <>
@@ -58,6 +61,11 @@ export function VerifyTool({ load, published, checkedWith }: VerifyToolProps) {
           </div>
         ) : null}
         {state.at === 'failed' ? <Notice tone="gap" title={state.sentence} /> : null}
+        {isBehind ? (
+          <Notice tone="warn" title="What you added or changed above is not in the report below yet">
+            Press “Check again with these”.
+          </Notice>
+        ) : null}
         {refused === null ? null : (
           <Notice tone="gap" title={refused.isOtherKey ? 'This file was not signed with your key' : 'Nothing was checked yet'}>
             {refused.sentence}

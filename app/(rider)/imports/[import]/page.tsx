@@ -5,7 +5,7 @@ import { ImportPictures } from '@/components/imports/import-pictures';
 import { WitnessMark } from '@/components/mark/witness-mark';
 import { bytesWords } from '@/components/entry/words';
 import { ConfirmButton } from '@/components/proof/confirm-button';
-import { aboutLines } from '@/components/reader/verify/about-lines';
+import { aboutLines } from '@/lib/evidence/about-lines';
 import { FindingEntries } from '@/components/reader/verify/finding-entries';
 import { outcomeTitle } from '@/components/reader/verify/outcome-words';
 import { AnchorButton } from '@/components/ui/button';
