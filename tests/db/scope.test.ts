@@ -25,7 +25,9 @@ const wordsIn = ({ logs }: Bundle) =>
     .flatMap(({ entries }) => entries.flatMap(({ parts }) => parts))
     .map((disclosure) => JSON.stringify(openDisclosure(disclosure).value))
     .join('\n');
-const openedBody = ({ entries }: Awaited<ReturnType<typeof readRecord>>, seq: number) => ({ ...entries[seq]?.body });
+const openedBody = ({ entries }: Awaited<ReturnType<typeof readRecord>>, seq: number) => ({
+  ...(entries[seq]?.body as object),
+});
 const only = (...seqs: number[]): Scope => ({ entries: { seqs }, closed: ['prices'] });
 
 describe('a bundle of a scope', () => {
