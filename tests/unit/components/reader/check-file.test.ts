@@ -1,7 +1,7 @@
 import { expect, it } from 'vitest';
 import { checkFile, type Checked } from '@/components/reader/verify/check-file';
 import { laterLines } from '@/components/reader/verify/about-lines';
-import { gapItems } from '@/components/reader/verify/gap-items';
+import { gapItems, struckItems } from '@/components/reader/verify/gap-items';
 import { utf8 } from '@/lib/evidence/bytes';
 import { fingerprint, parseVerifierKey } from '@/lib/evidence/checkpoint';
 import { sha256Hex } from '@/lib/evidence/hash';
@@ -68,4 +68,7 @@ it('a struck entry is known as struck, and its gaps are not listed as the record
   const own = finding.entries.filter(({ log }) => log === machineLog);
   expect(laterLines(own, about).get(2)).toEqual({ struckBy: 3, countersignedBy: [] });
   expect(gapItems(finding, about)).toEqual([]);
+  expect(struckItems(finding, about)).toEqual([
+    { where: expect.stringMatching(/^Entry 2, /), text: 'Struck by entry 3: withdrawn' },
+  ]);
 });
