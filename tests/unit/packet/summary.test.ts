@@ -58,6 +58,18 @@ describe('summarise', () => {
     );
   });
 
+  it('says by whose terms an item was in time, where its limit names no source', () => {
+    const { terms } = content.record;
+    if (terms === null) throw new Error('The fixture has no terms.');
+    const headlineBy = (source: (typeof terms.schedule)[number]['source']) => {
+      const interval = { distances: [{ amount: '6000', unit: '[mi_i]' as const }] };
+      const item = { item: 'engine-oil', title: 'Engine oil', action: 'replace' as const, source, interval };
+      return summaryOf({ terms: { ...terms, schedule: [item] } }).headline;
+    };
+    expect(headlineBy({ kind: 'manual', title: 'Owner’s manual' })).toBe('Engine oil always in time.');
+    expect(headlineBy({ kind: 'common-practice' })).toBe('Engine oil always in time by the owner’s terms.');
+  });
+
   it('never calls an item always in time that was kept only within its grace', () => {
     const { terms } = content.record;
     if (terms === null) throw new Error('The fixture has no terms.');
